@@ -1,0 +1,5 @@
+import type { AnyEndpoint } from './http/endpoint';
+import { accountsEndpoints } from './features/accounts/accounts.contract';
+
+/** Every operation of the API: the documentation and the tests walk this list. One line per feature. */
+export const contracts: AnyEndpoint[] = [...accountsEndpoints];
