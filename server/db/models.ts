@@ -1,0 +1,11 @@
+import { sequelize } from './connection';
+import { initialiseJobs } from '../jobs/job';
+import { initialiseAccounts } from '../features/accounts/accounts.model';
+
+/** All models and their associations: one line per feature, lower features first. */
+export function initialiseModels(): void {
+  initialiseJobs(sequelize);
+  initialiseAccounts(sequelize);
+}
+
+initialiseModels();
