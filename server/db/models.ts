@@ -1,10 +1,12 @@
 import { sequelize } from './connection';
 import { initialiseJobs } from '../jobs/job';
+import { initialiseMessages } from '../mail/message.model';
 import { initialiseAccounts } from '../features/accounts/accounts.model';
 
 /** All models and their associations: one line per feature, lower features first. */
 export function initialiseModels(): void {
   initialiseJobs(sequelize);
+  initialiseMessages(sequelize);
   initialiseAccounts(sequelize);
 }
 

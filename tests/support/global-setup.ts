@@ -15,6 +15,7 @@ export default async function setup(project: TestProject): Promise<() => Promise
   const file = path.join(folder, 'template.sqlite');
   process.env.NODE_ENV = 'test';
   process.env.DATABASE_FILE = file;
+  process.env.BASE_URL = 'http://analemma.test'; // vitest sets its own, which is a path
   const { migrate } = await import('../../server/db/migrate');
   const { sequelize, closeDatabase } = await import('../../server/db/connection');
   await migrate();

@@ -46,7 +46,6 @@ export interface Client {
 /** A browser-like client with its own cookies. */
 export function clientOf(app: Express): Client {
   const agent = request.agent(app);
-  let token: string | undefined;
   const fetchToken = async (): Promise<string> => {
     const response = await agent.get('/api/session');
     return (response.body as { csrfToken: string }).csrfToken;
@@ -56,9 +55,10 @@ export function clientOf(app: Express): Client {
     async call(endpoint, input = {}) {
       const path = fillPath(endpoint.path, (input.params ?? {}) as Record<string, unknown>);
       const method = endpoint.method.toLowerCase() as 'get' | 'post' | 'put' | 'patch' | 'delete';
+      // The agent attaches its cookies when a request is made, so the token's cookie must be there before.
+      const token = method === 'get' ? undefined : await fetchToken();
       let test = agent[method](path).query((input.query ?? {}) as object);
-      if (method !== 'get') {
-        token = await fetchToken();
+      if (token) {
         test = test.set('Sec-Fetch-Site', 'same-origin').set('X-CSRF-Token', token);
       }
       if (input.version !== undefined) test = test.set('If-Match', `"v${input.version}"`);

@@ -7,8 +7,8 @@ export const up: Migration['up'] = ({ context }) =>
       id TEXT PRIMARY KEY,
       email TEXT NOT NULL UNIQUE CHECK (email = lower(email)),
       password_hash TEXT,
-      email_verified_at TEXT,
-      disabled_at TEXT,
+      email_verified_at DATETIME,
+      disabled_at DATETIME,
       given_name TEXT NOT NULL,
       family_name TEXT NOT NULL,
       printed_name TEXT NOT NULL CHECK (length(printed_name) > 0),
@@ -19,8 +19,8 @@ export const up: Migration['up'] = ({ context }) =>
       orcid TEXT,
       time_zone TEXT NOT NULL DEFAULT 'UTC',
       version INTEGER NOT NULL DEFAULT 0,
-      created_at TEXT NOT NULL,
-      updated_at TEXT NOT NULL
+      created_at DATETIME NOT NULL,
+      updated_at DATETIME NOT NULL
     )`,
     `CREATE INDEX accounts_by_name ON accounts (sort_name, id)`,
     `CREATE TABLE role_grants (
@@ -30,9 +30,9 @@ export const up: Migration['up'] = ({ context }) =>
       scope TEXT NOT NULL CHECK (scope IN ('institute','event','fund')),
       scope_id TEXT CHECK ((scope = 'institute') = (scope_id IS NULL)),
       granted_by TEXT,
-      ended_at TEXT,
-      created_at TEXT NOT NULL,
-      updated_at TEXT NOT NULL
+      ended_at DATETIME,
+      created_at DATETIME NOT NULL,
+      updated_at DATETIME NOT NULL
     )`,
     `CREATE UNIQUE INDEX role_grants_open ON role_grants (account_id, role, scope, ifnull(scope_id, '')) WHERE ended_at IS NULL`,
     `CREATE INDEX role_grants_by_scope ON role_grants (scope_id, role) WHERE ended_at IS NULL`,
@@ -43,36 +43,36 @@ export const up: Migration['up'] = ({ context }) =>
       account_id TEXT REFERENCES accounts (id),
       email TEXT,
       subject_id TEXT,
-      data TEXT,
-      expires_at TEXT NOT NULL,
-      used_at TEXT,
-      created_at TEXT NOT NULL,
-      updated_at TEXT NOT NULL
+      data JSON,
+      expires_at DATETIME NOT NULL,
+      used_at DATETIME,
+      created_at DATETIME NOT NULL,
+      updated_at DATETIME NOT NULL
     )`,
     `CREATE TABLE sessions (
       id TEXT PRIMARY KEY,
       account_id TEXT NOT NULL REFERENCES accounts (id),
       device TEXT NOT NULL,
-      started_at TEXT NOT NULL,
-      last_seen_at TEXT NOT NULL,
+      started_at DATETIME NOT NULL,
+      last_seen_at DATETIME NOT NULL,
       idle_seconds INTEGER NOT NULL,
-      expires_at TEXT NOT NULL,
-      ended_at TEXT,
-      created_at TEXT NOT NULL,
-      updated_at TEXT NOT NULL
+      expires_at DATETIME NOT NULL,
+      ended_at DATETIME,
+      created_at DATETIME NOT NULL,
+      updated_at DATETIME NOT NULL
     )`,
     `CREATE INDEX sessions_by_account ON sessions (account_id) WHERE ended_at IS NULL`,
     `CREATE TABLE audit_entries (
       id TEXT PRIMARY KEY,
-      at TEXT NOT NULL,
+      at DATETIME NOT NULL,
       actor_id TEXT,
       actor_name TEXT NOT NULL,
       action TEXT NOT NULL,
       subject TEXT NOT NULL,
       subject_id TEXT NOT NULL,
       event_id TEXT,
-      before TEXT,
-      after TEXT
+      before JSON,
+      after JSON
     )`,
     `CREATE INDEX audit_by_event ON audit_entries (event_id, id)`,
     `CREATE TRIGGER audit_no_update BEFORE UPDATE ON audit_entries BEGIN SELECT RAISE(ABORT, 'the audit trail is insert only'); END`,
@@ -80,14 +80,14 @@ export const up: Migration['up'] = ({ context }) =>
     `CREATE TABLE jobs (
       id TEXT PRIMARY KEY,
       name TEXT NOT NULL,
-      payload TEXT NOT NULL,
+      payload JSON NOT NULL,
       key TEXT NOT NULL UNIQUE,
       state TEXT NOT NULL CHECK (state IN ('queued','running','done','failed')),
       attempts INTEGER NOT NULL DEFAULT 0,
-      run_at TEXT NOT NULL,
+      run_at DATETIME NOT NULL,
       last_error TEXT,
-      created_at TEXT NOT NULL,
-      updated_at TEXT NOT NULL
+      created_at DATETIME NOT NULL,
+      updated_at DATETIME NOT NULL
     )`,
     `CREATE INDEX jobs_due ON jobs (run_at, id) WHERE state = 'queued'`,
   ]);

@@ -1,4 +1,5 @@
-import { DataTypes, Model, type Sequelize } from 'sequelize';
+import { Model, type Sequelize } from 'sequelize';
+import { at, integer, key, optionalAt, optionalJson, optionalText, text, version } from '@server/db/columns';
 
 export class AccountRow extends Model {
   declare id: string;
@@ -74,76 +75,70 @@ export class AuditRow extends Model {
   declare after: unknown;
 }
 
-const text = { type: DataTypes.TEXT, allowNull: false };
-const optionalText = { type: DataTypes.TEXT };
-const date = { type: DataTypes.DATE, allowNull: false };
-const optionalDate = { type: DataTypes.DATE };
-const key = { type: DataTypes.TEXT, primaryKey: true };
-
 export function initialiseAccounts(sequelize: Sequelize): void {
   AccountRow.init(
     {
-      id: key,
-      email: text,
-      passwordHash: optionalText,
-      emailVerifiedAt: optionalDate,
-      disabledAt: optionalDate,
-      givenName: text,
-      familyName: text,
-      printedName: text,
-      sortName: text,
-      affiliation: { ...text, defaultValue: '' },
-      country: optionalText,
-      careerStage: optionalText,
-      orcid: optionalText,
-      timeZone: { ...text, defaultValue: 'UTC' },
-      version: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
+      id: key(),
+      email: text(),
+      passwordHash: optionalText(),
+      emailVerifiedAt: optionalAt(),
+      disabledAt: optionalAt(),
+      givenName: text(),
+      familyName: text(),
+      printedName: text(),
+      sortName: text(),
+      affiliation: text(''),
+      country: optionalText(),
+      careerStage: optionalText(),
+      orcid: optionalText(),
+      timeZone: text('UTC'),
+      version: version(),
     },
     { sequelize, modelName: 'accounts', version: true },
   );
   RoleGrantRow.init(
-    { id: key, accountId: text, role: text, scope: text, scopeId: optionalText, grantedBy: optionalText, endedAt: optionalDate },
+    { id: key(), accountId: text(), role: text(), scope: text(), scopeId: optionalText(), grantedBy: optionalText(), endedAt: optionalAt() },
     { sequelize, modelName: 'role_grants' },
   );
   TokenRow.init(
     {
-      id: key,
-      purpose: text,
-      hash: text,
-      accountId: optionalText,
-      email: optionalText,
-      subjectId: optionalText,
-      data: { type: DataTypes.JSON },
-      expiresAt: date,
-      usedAt: optionalDate,
+      id: key(),
+      purpose: text(),
+      hash: text(),
+      accountId: optionalText(),
+      email: optionalText(),
+      subjectId: optionalText(),
+      data: optionalJson(),
+      expiresAt: at(),
+      usedAt: optionalAt(),
     },
     { sequelize, modelName: 'tokens' },
   );
   SessionRow.init(
     {
-      id: key,
-      accountId: text,
-      device: text,
-      startedAt: date,
-      lastSeenAt: date,
-      idleSeconds: { type: DataTypes.INTEGER, allowNull: false },
-      expiresAt: date,
-      endedAt: optionalDate,
+      id: key(),
+      accountId: text(),
+      device: text(),
+      startedAt: at(),
+      lastSeenAt: at(),
+      idleSeconds: integer(),
+      expiresAt: at(),
+      endedAt: optionalAt(),
     },
     { sequelize, modelName: 'sessions' },
   );
   AuditRow.init(
     {
-      id: key,
-      at: date,
-      actorId: optionalText,
-      actorName: text,
-      action: text,
-      subject: text,
-      subjectId: text,
-      eventId: optionalText,
-      before: { type: DataTypes.JSON },
-      after: { type: DataTypes.JSON },
+      id: key(),
+      at: at(),
+      actorId: optionalText(),
+      actorName: text(),
+      action: text(),
+      subject: text(),
+      subjectId: text(),
+      eventId: optionalText(),
+      before: optionalJson(),
+      after: optionalJson(),
     },
     { sequelize, modelName: 'audit_entries', timestamps: false },
   );

@@ -23,7 +23,7 @@ export function presentAccount(row: AccountRow, grants: RoleGrantRow[], names: M
   return {
     id: row.id,
     email: row.email,
-    emailVerified: row.emailVerifiedAt !== null,
+    emailVerified: Boolean(row.emailVerifiedAt),
     givenName: row.givenName,
     familyName: row.familyName,
     printedName: row.printedName,
@@ -44,8 +44,8 @@ export function presentAccountRow(row: AccountRow, grants: RoleGrantRow[], names
     printedName: row.printedName,
     affiliation: row.affiliation,
     country: row.country,
-    emailVerified: row.emailVerifiedAt !== null,
-    disabled: row.disabledAt !== null,
+    emailVerified: Boolean(row.emailVerifiedAt),
+    disabled: Boolean(row.disabledAt),
     grants: grants.map((grant) => presentGrant(grant, names)),
   };
 }

@@ -37,8 +37,8 @@ export const systemActor: Actor = {
 export const personView = (row: AccountRow): PersonView => ({
   id: row.id,
   email: row.email,
-  emailVerified: row.emailVerifiedAt !== null,
-  hasPassword: row.passwordHash !== null,
+  emailVerified: Boolean(row.emailVerifiedAt),
+  hasPassword: Boolean(row.passwordHash),
   givenName: row.givenName,
   familyName: row.familyName,
   printedName: row.printedName,

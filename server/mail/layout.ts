@@ -1,0 +1,60 @@
+import { env } from '../env';
+
+export interface LetterParts {
+  heading: string;
+  /** Plain sentences; everything is escaped. */
+  paragraphs: string[];
+  /** The one thing to do. */
+  action?: { label: string; url: string };
+  /** Label and value, set as a small table before the action. */
+  facts?: [label: string, value: string][];
+  /** Further sentences after the action. */
+  after?: string[];
+  footer?: string;
+}
+
+export const escapeHtml = (text: string): string =>
+  text.replace(/[&<>"']/g, (c) => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', "'": '&#39;' })[c] as string);
+
+/** Plain text and HTML of a letter from one source: one column, serif title, the house's colours, nothing loaded from anywhere. */
+export function layoutLetter(parts: LetterParts): { text: string; html: string } {
+  return { text: plain(parts), html: html(parts) };
+}
+
+function plain({ heading, paragraphs, action, facts, after, footer }: LetterParts): string {
+  const width = Math.max(0, ...(facts ?? []).map(([label]) => label.length));
+  const blocks = [
+    heading,
+    ...paragraphs,
+    ...(facts?.length ? [facts.map(([label, value]) => `${`${label}:`.padEnd(width + 2)}${value}`).join('\n')] : []),
+    ...(action ? [`${action.label}:\n${action.url}`] : []),
+    ...(after ?? []),
+    `-- \n${footer ?? env.INSTITUTE_NAME}\n${env.OFFICE_EMAIL}`,
+  ];
+  return `${blocks.join('\n\n')}\n`;
+}
+
+const SERIF = "'STIX Two Text',Georgia,'Times New Roman',serif";
+const SANS = "'IBM Plex Sans',system-ui,-apple-system,'Segoe UI',sans-serif";
+
+function html({ heading, paragraphs, action, facts, after, footer }: LetterParts): string {
+  const p = (text: string): string =>
+    `<p style="margin:0 0 14px">${escapeHtml(text).replace(/\n/g, '<br>')}</p>`;
+  const rows = (facts ?? []).map(
+    ([label, value]) =>
+      `<tr><td style="padding:6px 16px 6px 0;border-bottom:1px solid #cfd6ce;color:#586660;vertical-align:top">${escapeHtml(label)}</td><td style="padding:6px 0;border-bottom:1px solid #cfd6ce">${escapeHtml(value)}</td></tr>`,
+  );
+  const table = rows.length
+    ? `<table role="presentation" cellspacing="0" style="border-top:2px solid #13201b;border-bottom:2px solid #13201b;border-collapse:collapse;width:100%;margin:0 0 18px;font-size:14px">${rows.join('')}</table>`
+    : '';
+  const button = action
+    ? `<p style="margin:6px 0 20px"><a href="${escapeHtml(action.url)}" style="display:inline-block;background:#0e4f5e;color:#ffffff;font-weight:600;text-decoration:none;padding:11px 18px;border-radius:3px">${escapeHtml(action.label)}</a></p><p style="margin:0 0 16px;font-size:12px;color:#586660;word-break:break-all">${escapeHtml(action.url)}</p>`
+    : '';
+  return `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width,initial-scale=1"><title>${escapeHtml(heading)}</title></head>
+<body style="margin:0;background:#f4f6f2;color:#13201b;font:15px/1.5 ${SANS}"><div style="max-width:560px;margin:0 auto;padding:28px 22px;background:#fcfdfb">
+<p style="margin:0 0 6px;font-size:13px;color:#586660">${escapeHtml(env.INSTITUTE_NAME)}</p>
+<h1 style="font:500 24px/1.25 ${SERIF};margin:0 0 18px">${escapeHtml(heading)}</h1>
+${paragraphs.map(p).join('\n')}${table}${button}${(after ?? []).map(p).join('\n')}
+<p style="margin:24px 0 0;padding-top:12px;border-top:1px solid #cfd6ce;font-size:12px;color:#586660">${escapeHtml(footer ?? env.INSTITUTE_NAME)}<br>${escapeHtml(env.OFFICE_EMAIL)}</p>
+</div></body></html>`;
+}
