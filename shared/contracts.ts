@@ -1,5 +1,6 @@
 import type { AnyEndpoint } from './http/endpoint';
 import { accountsEndpoints } from './features/accounts/accounts.contract';
+import { eventsEndpoints } from './features/events/events.contract';
 
 /** Every operation of the API: the documentation and the tests walk this list. One line per feature. */
-export const contracts: AnyEndpoint[] = [...accountsEndpoints];
+export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints];

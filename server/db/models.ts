@@ -2,12 +2,14 @@ import { sequelize } from './connection';
 import { initialiseJobs } from '../jobs/job';
 import { initialiseMessages } from '../mail/message.model';
 import { initialiseAccounts } from '../features/accounts/accounts.model';
+import { initialiseEvents } from '../features/events/events.model';
 
 /** All models and their associations: one line per feature, lower features first. */
 export function initialiseModels(): void {
   initialiseJobs(sequelize);
   initialiseMessages(sequelize);
   initialiseAccounts(sequelize);
+  initialiseEvents(sequelize);
 }
 
 initialiseModels();
