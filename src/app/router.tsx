@@ -1,0 +1,37 @@
+import { createBrowserRouter, type RouteObject } from 'react-router-dom';
+import { Loading } from '@/components/states';
+import { PageFailed } from './page-failed';
+
+/** One page: its code is loaded when it is opened. Each page file exports `Component`. */
+const page = (path: string, lazy: () => Promise<{ Component: React.ComponentType }>): RouteObject => ({ path, lazy, HydrateFallback: Fallback });
+const Fallback = () => <Loading what="the page" />;
+
+const layout = (name: 'PublicLayout' | 'PersonLayout' | 'WorkspaceLayout' | 'OfficeLayout', children: RouteObject[], path?: string): RouteObject => ({
+  path,
+  lazy: async () => ({ Component: (await import('./frames'))[name] }),
+  HydrateFallback: Fallback,
+  children,
+});
+
+/** All routes. Owners add their lines; one line per page. */
+export const router = createBrowserRouter([
+  {
+    errorElement: <PageFailed />,
+    children: [
+      page('/sign-in', () => import('@/features/accounts/sign-in.page')),
+      layout('PublicLayout', [
+        page('/sign-up', () => import('@/features/accounts/sign-up.page')),
+        page('/verify/:token', () => import('@/features/accounts/verify.page')),
+        page('/reset', () => import('@/features/accounts/ask-reset.page')),
+        page('/reset/:token', () => import('@/features/accounts/reset.page')),
+        page('/invitation/:token', () => import('@/features/accounts/invitation.page')),
+      ]),
+      layout('PersonLayout', [page('/profile', () => import('@/features/accounts/profile.page'))]),
+      layout('OfficeLayout', [
+        page('/office/accounts', () => import('@/features/accounts/accounts.page')),
+        page('/office/audit', () => import('@/features/accounts/audit.page')),
+      ]),
+      page('*', () => import('./not-found.page')),
+    ],
+  },
+]);
