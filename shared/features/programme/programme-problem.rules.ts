@@ -18,13 +18,14 @@ export interface SourceTalk {
   id: string;
   kind: ProgrammeKind;
   title: string;
+  /** Whole length, questions included. */
   minutes: number;
-  questionMinutes: number;
   courseId: string | null;
   number: number | null;
   exerciseOf: string | null;
   needs: readonly string[];
-  expectedAudience: number;
+  /** Null: not known, so no room is too small. */
+  expectedAudience: number | null;
   people: ProgrammePerson[];
 }
 
@@ -68,7 +69,7 @@ export function cardsOf(source: ProgrammeSource): TalkCard[] {
       word: talkWord(talk.kind, letter, number),
       label: talkLabel(talk, letter, number, speaker),
       title: talk.title,
-      minutes: roundUp(talk.minutes + talk.questionMinutes),
+      minutes: roundUp(talk.minutes),
       expectedAudience: talk.expectedAudience,
       needs: [...talk.needs],
       courseLetter: letter,
@@ -126,7 +127,7 @@ function itemOf(card: TalkCard, talk: SourceTalk, known: ReadonlySet<string>): I
     kind: kinds[card.kind],
     minutes: card.minutes,
     persons: [...new Set(talk.people.filter(mustBeThere).map((person) => person.accountId))],
-    audience: card.expectedAudience,
+    audience: card.expectedAudience ?? 0,
     features: card.needs,
     course: card.kind === 'course_lecture' ? talk.courseId : null,
     number: card.kind === 'course_lecture' ? talk.number : null,

@@ -68,7 +68,8 @@ export const talkCard = z.object({
   title: z.string(),
   /** Minutes with questions, as the talk asks for. */
   minutes: z.number().int(),
-  expectedAudience: z.number().int(),
+  /** Null: not known. */
+  expectedAudience: z.number().int().nullable(),
   /** Room features that the talk needs. */
   needs: z.array(z.string()),
   /** Letter of the lecture course. */

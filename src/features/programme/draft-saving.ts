@@ -66,7 +66,10 @@ export function useDraftSaving(event: string, draft: Draft) {
 
   const send = (changes: DraftChange[]): void => setWaiting((list) => [...list, changes]);
 
-  const change = (what: string, forward: DraftChange[]): void => {
+  const change = (what: string, wanted: DraftChange[]): void => {
+    const fixed = new Map(placements.map((one) => [one.talkId, one.fixed]));
+    // Said every time, so that doing it again after undoing leaves fixed what was fixed.
+    const forward = wanted.map((one) => ({ ...one, fixed: one.fixed ?? fixed.get(one.talkId) ?? false }));
     setUndoable((steps) => [...steps.slice(-99), { what, forward, back: inverseOf(placements, forward) }]);
     setRedoable([]);
     send(forward);
@@ -86,8 +89,7 @@ export function useDraftSaving(event: string, draft: Draft) {
     if (!step) return null;
     setRedoable((steps) => steps.slice(0, -1));
     setUndoable((steps) => [...steps, step]);
-    // What is fixed must be said too: undoing may have fixed or released it.
-    send(step.forward.map((one) => ({ ...one, fixed: one.fixed ?? false })));
+    send(step.forward);
     return step.what;
   };
 
