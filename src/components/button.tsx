@@ -1,4 +1,4 @@
-import type { ButtonHTMLAttributes, ReactNode } from 'react';
+import type { ButtonHTMLAttributes, ReactNode, Ref } from 'react';
 import { Link, type LinkProps } from 'react-router-dom';
 
 export type ButtonVariant = 'primary' | 'secondary' | 'link' | 'danger';
@@ -29,6 +29,7 @@ interface ButtonProps extends ButtonHTMLAttributes<HTMLButtonElement> {
   sizing?: ButtonSize;
   /** Work is going on: the button says so and takes no second press. */
   busy?: boolean;
+  ref?: Ref<HTMLButtonElement>;
   children: ReactNode;
 }
 
