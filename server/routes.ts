@@ -2,19 +2,25 @@ import { Router } from 'express';
 import { resolveScopesWith } from './http/serve';
 import { nameScopesWith } from './features/accounts/accounts-office.service';
 import { accountsRoutes } from './features/accounts/accounts.routes';
-import { eventIdOf, eventsById } from './features/events/events.service';
+import { eventIdOf, eventsById, knowAboutEvents } from './features/events/events.service';
 import { eventsRoutes } from './features/events/events.routes';
+import { programmeRoutes } from './features/programme/programme.routes';
+import { placedRooms } from './features/programme/programme.service';
+import { talksRoutes } from './features/talks/talks.routes';
 import { demoAccounts } from '../seeds/demo-accounts';
 
 /** The one list of doors: every feature mounts its endpoints here, lower features first. */
 export function mountRoutes(router: Router): void {
   accountsRoutes(router, async () => [...demoAccounts]);
   eventsRoutes(router);
+  talksRoutes(router);
+  programmeRoutes(router);
 }
 
 /** How doors find what a path names; here, because the doors know no feature. */
 export function introduceScopes(): void {
   resolveScopesWith({ event: eventIdOf, fund: async () => null });
+  knowAboutEvents({ placedRooms });
   nameScopesWith(async (ids) => {
     const events = await eventsById(ids);
     return new Map([...events].map(([id, event]) => [id, { key: event.slug, title: event.title }]));

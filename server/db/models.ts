@@ -3,6 +3,8 @@ import { initialiseJobs } from '../jobs/job';
 import { initialiseMessages } from '../mail/message.model';
 import { initialiseAccounts } from '../features/accounts/accounts.model';
 import { initialiseEvents } from '../features/events/events.model';
+import { initialiseTalks } from '../features/talks/talks.model';
+import { initialiseProgramme } from '../features/programme/programme.model';
 
 /** All models and their associations: one line per feature, lower features first. */
 export function initialiseModels(): void {
@@ -10,6 +12,8 @@ export function initialiseModels(): void {
   initialiseMessages(sequelize);
   initialiseAccounts(sequelize);
   initialiseEvents(sequelize);
+  initialiseTalks(sequelize);
+  initialiseProgramme(sequelize);
 }
 
 initialiseModels();

@@ -1,4 +1,5 @@
+import { talkReactions } from '../features/talks/talks-letters.service';
 import type { Reaction } from './job';
 
 /** The one table that binds facts to reactions: one line per reaction list. */
-export const reactions: readonly Reaction[] = [] as unknown as Reaction[];
+export const reactions: readonly Reaction[] = [...talkReactions];

@@ -1,6 +1,6 @@
 import type { Request, Response } from 'express';
 import { Op, type WhereOptions } from 'sequelize';
-import type { Account, Role, Scope } from '@shared/features/accounts/accounts.contract';
+import type { Account, Role, Scope, Session } from '@shared/features/accounts/accounts.contract';
 import { roleFitsScope, roleNames } from '@shared/features/accounts/accounts.rules';
 import { foldCase } from '@shared/lib/text';
 import { forbidden, invalid, notFound } from '@shared/http/problem';
@@ -9,6 +9,7 @@ import { newId } from '@server/db/id';
 import { transaction } from '@server/db/transaction';
 import { env } from '@server/env';
 import type { Actor } from '@server/http/authorize';
+import { csrfToken } from '@server/http/csrf';
 import { sameVersion } from '@server/http/serve';
 import { queueMessage } from '@server/mail/outbox';
 import { roleInvitationLetter } from './accounts.mail';
@@ -41,6 +42,16 @@ export async function ownAccount(accountId: string): Promise<Account> {
   if (!row) throw notFound('This account');
   const grants = await RoleGrantRow.openOf(accountId);
   return presentAccount(row, grants, await namesOf(grants));
+}
+
+/** Who is signed in, as the client gets it; `accountId` is given when the session was opened in this very request. */
+export async function sessionFor(req: Request, res: Response, accountId: string | undefined): Promise<Session> {
+  return {
+    account: accountId ? await ownAccount(accountId) : null,
+    csrfToken: (res.locals.csrfToken as string | undefined) ?? csrfToken(req, res),
+    demo: env.DEMO,
+    instituteName: env.INSTITUTE_NAME,
+  };
 }
 
 export interface ProfileInput {

@@ -1,21 +1,20 @@
 import type { Router } from 'express';
 import * as contract from '@shared/features/accounts/accounts.contract';
-import type { AccountRow, AuditRow, Session } from '@shared/features/accounts/accounts.contract';
+import type { AccountRow, AuditRow } from '@shared/features/accounts/accounts.contract';
 import type { Page } from '@shared/http/page';
 import { forbidden, notFound } from '@shared/http/problem';
 import { env } from '@server/env';
 import { anyone, inInstitute, signedIn } from '@server/http/authorize';
-import { csrfToken } from '@server/http/csrf';
-import { serve, type Context } from '@server/http/serve';
+import { serve } from '@server/http/serve';
 import {
   acceptInvitation,
   accountRow,
   createInvitation,
   listAccounts,
   listAudit,
-  ownAccount,
   readInvitation,
   saveProfile,
+  sessionFor,
 } from './accounts-office.service';
 import { endSession, openSessions } from './accounts-session.service';
 import { askReset, changePassword, resetPassword, signIn, signOut, signUp, verifyEmail } from './accounts-sign-in.service';
@@ -28,25 +27,14 @@ interface DemoAccount {
   password: string;
 }
 
-type AnyContext = Pick<Context<unknown, unknown, unknown>, 'req' | 'res'>;
-
-async function sessionFor({ req, res }: AnyContext, accountId: string | undefined): Promise<Session> {
-  return {
-    account: accountId ? await ownAccount(accountId) : null,
-    csrfToken: (res.locals.csrfToken as string | undefined) ?? csrfToken(req, res),
-    demo: env.DEMO,
-    instituteName: env.INSTITUTE_NAME,
-  };
-}
-
 export function accountsRoutes(router: Router, demoAccounts: () => Promise<DemoAccount[]>): void {
   serve(router, contract.readSession, {
     access: anyone,
-    handle: (context) => sessionFor(context, context.maybeActor?.accountId),
+    handle: (context) => sessionFor(context.req, context.res, context.maybeActor?.accountId),
   });
   serve(router, contract.signIn, {
     access: anyone,
-    handle: async (context) => sessionFor(context, (await signIn(context.req, context.res, context.body)).id),
+    handle: async (context) => sessionFor(context.req, context.res, (await signIn(context.req, context.res, context.body)).id),
   });
   serve(router, contract.signOut, { access: anyone, handle: ({ req, res }) => signOut(req, res) });
   serve(router, contract.signUp, {
@@ -58,7 +46,7 @@ export function accountsRoutes(router: Router, demoAccounts: () => Promise<DemoA
   });
   serve(router, contract.verifyEmail, {
     access: anyone,
-    handle: async (context) => sessionFor(context, await verifyEmail(context.req, context.res, context.body.token)),
+    handle: async (context) => sessionFor(context.req, context.res, await verifyEmail(context.req, context.res, context.body.token)),
   });
   serve(router, contract.askReset, {
     access: anyone,
@@ -69,7 +57,7 @@ export function accountsRoutes(router: Router, demoAccounts: () => Promise<DemoA
   });
   serve(router, contract.resetPassword, {
     access: anyone,
-    handle: async (context) => sessionFor(context, await resetPassword(context.req, context.res, context.body)),
+    handle: async (context) => sessionFor(context.req, context.res, await resetPassword(context.req, context.res, context.body)),
   });
   serve(router, contract.listDemoAccounts, {
     access: anyone,
@@ -115,7 +103,7 @@ function invitationRoutes(router: Router): void {
     access: anyone,
     handle: async (context) => {
       const { req, res, maybeActor, params, body } = context;
-      return sessionFor(context, await acceptInvitation(req, res, maybeActor, params.token, body.password));
+      return sessionFor(context.req, context.res, await acceptInvitation(req, res, maybeActor, params.token, body.password));
     },
   });
 }
