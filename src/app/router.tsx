@@ -31,6 +31,11 @@ export const router = createBrowserRouter([
         page('/office/accounts', () => import('@/features/accounts/accounts.page')),
         page('/office/audit', () => import('@/features/accounts/audit.page')),
       ]),
+      layout(
+        'WorkspaceLayout',
+        [page('programme', () => import('@/features/programme/composer.page'))],
+        '/organise/:event',
+      ),
       page('*', () => import('./not-found.page')),
     ],
   },
