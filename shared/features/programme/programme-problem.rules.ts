@@ -147,19 +147,28 @@ function personsOf(source: ProgrammeSource, days: number): Person[] {
       id: accountId,
       name: printedName,
       shortName,
-      arrival: stay?.arrivesAt ? momentOf(stay.arrivesAt, source.event.startsOn, days) : null,
-      departure: stay?.leavesAt ? momentOf(stay.leavesAt, source.event.startsOn, days) : null,
+      arrival: momentOf(stay?.arrivesAt, source.event.startsOn, days, 'before'),
+      departure: momentOf(stay?.leavesAt, source.event.startsOn, days, 'after'),
       blocked: (stay?.blocked ?? []).flatMap((span) => windowsOf(span, source.event.startsOn, days)),
       dislikes: [],
     };
   });
 }
 
-/** A local date and time as day number and minute, cut to the event: before it 0:00 of day 0, after it the last 24:00. */
-function momentOf(local: string, startsOn: string, days: number): Moment {
+/**
+ * A local date and time as day number and minute. Null where it says nothing: not known, an arrival before the event,
+ * a departure after it. An arrival after the event, or a departure before it, leaves no time at all.
+ */
+function momentOf(
+  local: string | null | undefined,
+  startsOn: string,
+  days: number,
+  harmless: 'before' | 'after',
+): Moment | null {
+  if (!local) return null;
   const day = daysBetween(startsOn, local.slice(0, 10));
-  if (day < 0) return { day: 0, minute: 0 };
-  if (day >= days) return { day: days - 1, minute: 1440 };
+  if (day < 0) return harmless === 'before' ? null : { day: 0, minute: 0 };
+  if (day >= days) return harmless === 'after' ? null : { day: days - 1, minute: 1440 };
   return { day, minute: minuteOf(local.slice(11, 16)) };
 }
 

@@ -1,17 +1,18 @@
 import type { EventInput } from '@fullcalendar/core';
 import type { Band } from '@shared/features/programme/programme.contract';
+import { overlap } from '@shared/features/programme/timetable/check-two';
 import { indexOf } from '@shared/features/programme/timetable/problem-index';
 import type { Placement, Problem, Window } from '@shared/features/programme/timetable/problem';
 import { daysBetween } from '@shared/lib/time';
 import { columnIndex, spanAt, toStandIn, type Column } from './calendar-columns';
 import type { Laid } from './use-composer';
 
-/** The hours that the grid shows: whole hours around everything that stands or may stand. */
+/** The hours that the grid shows, from a half hour (so that the first full hour has room for its label) to a full one. */
 export function hoursOf(problem: Problem, laid: readonly Placement[]): { from: number; to: number } {
   const starts = [...problem.blocks.map((block) => block.start), ...laid.map((p) => p.start)];
   const ends = [...problem.blocks.map((block) => block.end), ...laid.map((p) => p.start + p.minutes)];
-  const from = Math.floor(Math.min(540, ...starts) / 60) * 60;
-  return { from, to: Math.min(1440, Math.ceil((Math.max(from + 480, ...ends) + 1) / 60) * 60) };
+  const from = Math.max(0, Math.floor((Math.min(540, ...starts) - 30) / 60) * 60 + 30);
+  return { from, to: Math.min(1440, Math.ceil((Math.max(from + 480, ...ends) + 1) / 30) * 30) };
 }
 
 /** Talks as events of the grid, in the order of the rooms where they stand side by side. */
@@ -19,8 +20,7 @@ export function talkEvents(
   problem: Problem,
   columns: readonly Column[],
   laid: readonly Laid[],
-  chosen: string | null,
-  editable: boolean,
+  { chosen, target, editable }: { chosen: string | null; target: Placement | null; editable: boolean },
 ): EventInput[] {
   const position = new Map(problem.rooms.map((room, i) => [room.id, i]));
   return laid.flatMap((at) => {
@@ -32,7 +32,10 @@ export function talkEvents(
         id: at.item,
         ...span,
         editable: editable && !at.fixed,
-        classNames: at.item === chosen ? ['is-chosen'] : [],
+        classNames: [
+          ...(at.item === chosen ? ['is-chosen'] : []),
+          ...(target && target.room === at.room && overlap(at, target) ? ['is-target-tile'] : []),
+        ],
         extendedProps: { at, wide, room: position.get(at.room) ?? 0 },
       },
     ];
@@ -100,14 +103,14 @@ function awayOn(who: Problem['persons'][number], day: number): Pick<Window, 'sta
   return away.filter((window) => window.end > window.start);
 }
 
-/** Where a remedy would take a talk: a dashed frame. */
+/** Where a remedy would take a talk: a dashed frame, unless a tile stands there that wears it. */
 export function targetEvents(
   columns: readonly Column[],
+  laid: readonly Placement[],
   target: Placement | null,
   words: string,
 ): EventInput[] {
   const index = target ? columnIndex(columns, target) : -1;
-  return target && index >= 0
-    ? [background(index, target.start, target.start + target.minutes, 'is-target', words)]
-    : [];
+  if (!target || index < 0 || laid.some((at) => at.room === target.room && overlap(at, target))) return [];
+  return [background(index, target.start, target.start + target.minutes, 'is-target', words)];
 }

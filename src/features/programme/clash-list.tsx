@@ -153,7 +153,7 @@ function RemedyButton({
       onMouseLeave={hide}
       onFocus={show}
       onBlur={hide}
-      className="min-h-[26px] text-left"
+      className="min-h-[26px] max-w-full py-0.5 text-left whitespace-normal!"
     >
       {remedy.label}
     </Button>

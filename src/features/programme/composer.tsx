@@ -70,7 +70,7 @@ export function Composer({ draft }: { draft: Draft }) {
             {view === 'whole' && <OverviewCalendar composer={composer} days={weeks.all} />}
             {view === 'list' && (
               <div className="h-full overflow-y-auto">
-                <ListView composer={composer} />
+                <ListView composer={composer} withTray={narrow} />
               </div>
             )}
           </div>

@@ -10,8 +10,8 @@ import { plainTitle } from './plain-title';
 import { speakersOf } from './tile';
 import { roomOf, type Composer, type Laid } from './use-composer';
 
-/** The same talks as a table, day by day, with the same keys; on a phone the only view. */
-export function ListView({ composer }: { composer: Composer }) {
+/** The same talks as a table, day by day, with the same keys. On a phone it is the only view, with the tray on top. */
+export function ListView({ composer, withTray }: { composer: Composer; withTray: boolean }) {
   const { draft, at, laid, problem } = composer;
   const waiting = draft.cards.filter((card) => !at.has(card.talkId));
   const order = new Map(problem.rooms.map((room, i) => [room.id, i]));
@@ -29,8 +29,8 @@ export function ListView({ composer }: { composer: Composer }) {
     );
   }
   return (
-    <div className="min-h-0 grow overflow-y-auto px-6 py-4 max-sm:px-4">
-      {waiting.length > 0 && (
+    <div className="px-6 py-4 max-sm:px-4 [&_td]:align-middle">
+      {withTray && waiting.length > 0 && (
         <section aria-label="To be placed" className="mb-6">
           <h2 className="mb-1.5 font-semibold">
             To be placed <span className="font-normal text-ink3">{waiting.length}</span>

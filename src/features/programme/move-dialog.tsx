@@ -48,11 +48,7 @@ function MoveForm({ composer, talkId, typed }: { composer: Composer; talkId: str
     }
   };
   if (!card) return null;
-  const needs = [
-    `${card.minutes} min`,
-    ...card.needs.map(featureWord),
-    ...seatsOf(card),
-  ].join(', ');
+  const needs = [`${card.minutes} min`, ...card.needs.map(featureWord), ...seatsOf(card)].join(', ');
   return (
     <Dialog open onClose={composer.closeMove} title={`Move ${card.word}`} aside={needs} width={560}>
       <Input

@@ -69,6 +69,7 @@ export function OverviewCalendar({
         editable={draft.can.change}
         droppable={draft.can.change}
         eventInteractive
+        eventDisplay="block"
         eventOrder="start,id"
         events={events}
         eventDidMount={({ el, event }) => {

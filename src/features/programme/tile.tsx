@@ -1,6 +1,6 @@
 import { Pin } from 'lucide-react';
 import type { TalkCard } from '@shared/features/programme/programme.contract';
-import { clockSpan } from '@shared/features/programme/timetable/words';
+import { clock } from '@shared/features/programme/timetable/words';
 import { endOf, type Placement } from '@shared/features/programme/timetable/problem';
 import { kindClass } from '@/components/kind-tag';
 import { Sign } from '@/components/sign';
@@ -39,9 +39,8 @@ export function Tile({
       <span className="sr-only">{label}</span>
       <div aria-hidden="true" className="tile-text">
         <div className="tile-head">
-          <span className="kind-word">{word}</span>{' '}
-          {wide ? <span className="text-ink2">{clockSpan(at.start, endOf(at))}</span> : <span>{who}</span>}
-          {wide && oneLine && <span> {who}</span>}
+          <span className="kind-word">{word}</span> {wide && <Hours at={at} whole={!oneLine} />}
+          {(!wide || oneLine) && <span>{who}</span>}
         </div>
         {!oneLine && <div className="tile-title">{plainTitle(card.title)}</div>}
         {!oneLine && wide && <div className="text-ink2">{who}</div>}
@@ -53,5 +52,15 @@ export function Tile({
         </span>
       )}
     </div>
+  );
+}
+
+/** `11:25–12:15`; where the lane is too narrow, or the talk too short, only the start. */
+function Hours({ at, whole }: { at: Placement; whole: boolean }) {
+  return (
+    <span className="text-ink2">
+      {clock(at.start)}
+      {whole && <span className="tile-end">–{clock(endOf(at))}</span>}{' '}
+    </span>
   );
 }

@@ -7,7 +7,7 @@ import { moveChecker } from '@shared/features/programme/timetable/check';
 import type { Clash } from '@shared/features/programme/timetable/clash';
 import type { Placement } from '@shared/features/programme/timetable/problem';
 import { clock, whenOf } from '@shared/features/programme/timetable/words';
-import { formatDate, addDays, timeOf } from '@shared/lib/time';
+import { addDays, formatDate, timeOf, zoneName } from '@shared/lib/time';
 import { awayEvents, closedEvents, hoursOf, talkEvents, targetEvents } from './calendar-events';
 import { columnsOf, fromStandIn, standInDate, standInStart, type Column } from './calendar-columns';
 import { DayHead } from './day-head';
@@ -34,8 +34,12 @@ export function WeekCalendar({ composer, days, lens, onLens, target }: Props) {
     () => [
       ...closedEvents(problem, columns, draft.bands, hours),
       ...awayEvents(problem, columns, chosen),
-      ...targetEvents(columns, target?.at ?? null, target?.words ?? ''),
-      ...talkEvents(problem, columns, laid, chosen, draft.can.change),
+      ...targetEvents(columns, laid, target?.at ?? null, target?.words ?? ''),
+      ...talkEvents(problem, columns, laid, {
+        chosen,
+        target: target?.at ?? null,
+        editable: draft.can.change,
+      }),
     ],
     [problem, columns, hours, laid, chosen, target, draft.bands, draft.can.change],
   );
@@ -48,6 +52,7 @@ export function WeekCalendar({ composer, days, lens, onLens, target }: Props) {
   return (
     <div className="week-calendar" style={{ '--lanes': problem.rooms.length } as React.CSSProperties}>
       <style>{widthRules(columns)}</style>
+      <span className="zone-name">{zoneName(`${draft.event.startsOn}T12:00:00Z`, draft.event.timeZone)}</span>
       <FullCalendar
         key={`${days.join()} ${columns.length}`}
         plugins={[timeGridPlugin, interactionPlugin]}
@@ -63,8 +68,8 @@ export function WeekCalendar({ composer, days, lens, onLens, target }: Props) {
         slotMinTime={`${timeOf(hours.from)}:00`}
         slotMaxTime={`${timeOf(hours.to)}:00`}
         slotDuration="00:30:00"
-        slotLabelInterval="01:00"
-        slotLabelContent={({ date }) => clock(date.getUTCHours() * 60)}
+        slotLabelInterval="00:30"
+        slotLabelContent={({ date }) => (date.getUTCMinutes() === 0 ? clock(date.getUTCHours() * 60) : '')}
         snapDuration="00:05:00"
         height="100%"
         expandRows
