@@ -1,6 +1,6 @@
 import type { EventInput } from '../../shared/features/events/events.contract';
 import { roomsOf } from '../../server/features/events/events.service';
-import { createTalk } from '../../server/features/talks/talks.service';
+import { createTalk } from '../../server/features/talks/talks-structure.service';
 import { systemActor, type PersonView } from '../../server/features/accounts/accounts.service';
 import { buildAccount } from './build';
 import { buildEvent } from './build-events';

@@ -9,7 +9,8 @@ import { recordAudit } from '@server/features/accounts/accounts.service';
 import { CourseRow, PrerequisiteRow, PresenceRow, TalkRow } from './talks.model';
 import { isOrganiser } from './talks.policy';
 import { presentCourse } from './talks.presenter';
-import { coursesOf, prerequisitesOf, replacePeople, speakingIn, type PersonInput } from './talks.service';
+import { replacePeople, type PersonInput } from './talks-structure.service';
+import { coursesOf, prerequisitesOf, speakingIn } from './talks.service';
 
 export async function listCourses(eventId: string) {
   const [courses, talks, pairs] = await Promise.all([coursesOf(eventId), TalkRow.ofEvent(eventId), prerequisitesOf(eventId)]);
@@ -89,7 +90,7 @@ export async function replacePrerequisites(actor: Actor, eventId: string, pairs:
 }
 
 /** Whoever has a part in the event keeps a travel window there. @throws 404 for others. */
-async function refuseOutsider(actor: Actor, eventId: string): Promise<void> {
+export async function refuseOutsider(actor: Actor, eventId: string): Promise<void> {
   if (holds(actor, 'organiser', eventId) || (await speakingIn(actor.accountId)).has(eventId)) return;
   throw notFound('This event');
 }

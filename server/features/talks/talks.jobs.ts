@@ -5,3 +5,4 @@ export const invitationAnswered = defineFact<{ talkId: string; accountId: string
 export const talkSubmitted = defineFact<{ talkId: string }>('talkSubmitted');
 export const talkDecided = defineFact<{ talkId: string; decision: 'accepted' | 'declined'; note: string }>('talkDecided');
 export const talkWithdrawn = defineFact<{ talkId: string }>('talkWithdrawn');
+export const abstractHandedIn = defineFact<{ talkId: string }>('abstractHandedIn');

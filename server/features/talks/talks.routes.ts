@@ -7,7 +7,10 @@ import { createCourse, listCourses, readPresence, replacePrerequisites, savePres
 import { answerSpeakerInvitation, inviteSpeaker, readSpeakerInvitation } from './talks-invitation.service';
 import { remindSpeakers } from './talks-letters.service';
 import { downloadMaterial, setMaterialAccess, setRecordingConsent, uploadMaterial } from './talks-materials.service';
-import { createTalk, decideTalk, handInAbstract, listTalks, readCall, readTalk, saveAbstract, submitTalk, talksOfPerson, updateTalk, withdrawTalk } from './talks.service';
+import { handInAbstract, readCall, saveAbstract, submitTalk } from './talks-abstract.service';
+import { readStage } from './talks-stage.service';
+import { createTalk, updateTalk } from './talks-structure.service';
+import { decideTalk, listTalks, readTalk, talksOfPerson, withdrawTalk } from './talks.service';
 
 const organiser = inEvent('organiser');
 
@@ -24,6 +27,7 @@ export function talksRoutes(router: Router): void {
   serve(router, contract.readCall, { access: anyone, handle: ({ params, now }) => readCall(params.event, now) });
   serve(router, contract.listMyTalks, { access: signedIn, handle: async ({ actor }) => ({ items: await talksOfPerson(actor.accountId) }) });
   serve(router, contract.remindSpeakers, { access: organiser, handle: async ({ eventId, now }) => ({ written: await remindSpeakers(eventId, now) }) });
+  serve(router, contract.readStage, { access: signedIn, handle: ({ actor, params }) => readStage(actor, params.event) });
   invitationRoutes(router);
   courseRoutes(router);
   materialRoutes(router);

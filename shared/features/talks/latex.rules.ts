@@ -3,7 +3,7 @@
  * few commands for text. Pure and linear in the length of the source; mathematics itself is left to KaTeX.
  */
 export type Style = 'plain' | 'emph' | 'bold' | 'code';
-export type Segment = { type: 'text'; text: string; style: Style } | { type: 'math'; tex: string; display: boolean } | { type: 'unknown'; source: string };
+export type Segment = { type: 'text'; text: string; style: Style } | { type: 'math'; tex: string; display: boolean; line: number } | { type: 'unknown'; source: string };
 
 export interface LatexProblem {
   /** From 1. */
@@ -147,7 +147,7 @@ class Reader {
     }
     const tex = this.source.slice(this.at + open.length, end);
     if (tex.trim() === '') this.problem(open + shut, 'There is nothing between the signs of mathematics.');
-    else this.current.push({ type: 'math', tex, display });
+    else this.current.push({ type: 'math', tex, display, line: this.line });
     this.line += (tex.match(/\n/g) ?? []).length;
     this.at = end + shut.length;
   }
@@ -226,7 +226,7 @@ export function plainMath(tex: string): string {
   let text = tex
     .slice(0, 2000)
     .replace(/\\(?:mathbb|Bbb)\s*\{?\s*([A-Z])\s*\}?/g, (_m, letter: string) => DOUBLE_STRUCK[letter] ?? letter)
-    .replace(/\\(?:mathrm|mathbf|mathcal|mathfrak|mathsf|mathit|text|textrm|operatorname|boldsymbol|overline|widetilde|tilde|hat|widehat|check|bar|left|right|big|Big|bigl|bigr|displaystyle|,|;|!|:)\*?/g, '')
+    .replace(/\\(?:mathrm|mathbf|mathcal|mathfrak|mathsf|mathit|text|textrm|operatorname|boldsymbol|overline|widetilde|tilde|hat|widehat|check|bar|left|right|big|Big|bigl|bigr|displaystyle)(?![A-Za-z])\*?|\\[,;!:]/g, '')
     .replace(/\\[dt]?frac\s*\{([^{}]*)\}\s*\{([^{}]*)\}/g, (_m, a: string, b: string) => `${wrap(a)}/${wrap(b)}`)
     .replace(/\\([A-Za-z]+) ?/g, (whole, name: string) => UNICODE[name] ?? (whole.length > 2 ? `${name} ` : ''))
     .replace(/\\([{}%&$#_ |])/g, '$1');

@@ -4,7 +4,7 @@ import { pageOf, pageQuery } from '../../http/page';
 import { id, slug } from '../../lib/ids';
 import { instant, localDate, localDateTime } from '../../lib/time';
 import { email, password, sessionSchema } from '../accounts/accounts.contract';
-import { roomFeature } from '../events/events.contract';
+import { deadlineSchema, roomFeature } from '../events/events.contract';
 import { MAX_ABSTRACT } from './latex.rules';
 import { mscProblem, parseReference } from './subjects.rules';
 
@@ -267,6 +267,24 @@ export const replacePrerequisites = endpoint({
   response: z.object({ pairs: z.array(z.object({ before: id, after: id })) }),
 });
 
+/** What a speaker needs to know of an event, also before it is announced. */
+export const stageSchema = z.object({
+  slug: z.string(),
+  title: z.string(),
+  shortTitle: z.string(),
+  startsOn: localDate,
+  endsOn: localDate,
+  /** IANA zone of all local times. */
+  timeZone: z.string(),
+  venue: z.string(),
+  town: z.string(),
+  contactEmail: z.string(),
+  deadlines: z.array(deadlineSchema),
+  rooms: z.array(z.object({ name: z.string(), shortName: z.string(), capacity: z.number().int(), features: z.array(roomFeature) })),
+});
+export type Stage = z.infer<typeof stageSchema>;
+export const readStage = endpoint({ id: 'talks.stage', method: 'GET', path: '/api/events/:event/stage', summary: 'Dates, deadlines and rooms of an event, for those who speak there.', params: inEvent, response: stageSchema });
+
 export const myTalk = z.object({ id, eventSlug: z.string(), eventTitle: z.string(), kind: talkKind, label: z.string(), title: z.string(), minutes: z.number().int(), state: talkState, part: talkPart, abstractAt: instant.nullable() });
 export const listMyTalks = endpoint({ id: 'talks.mine', method: 'GET', path: '/api/my/talks', summary: 'Talks in which the person has a part.', response: z.object({ items: z.array(myTalk) }) });
 
@@ -296,6 +314,6 @@ export const setRecordingConsent = endpoint({ id: 'talks.recording', method: 'PU
 
 export const talksEndpoints = [
   listTalks, readTalk, createTalk, updateTalk, saveAbstract, handInAbstract, decideTalk, withdrawTalk, submitTalk, readCall, inviteSpeaker, remindSpeakers,
-  readSpeakerInvitation, answerSpeakerInvitation, readMyPresence, saveMyPresence, listCourses, createCourse, updateCourse, replacePrerequisites, listMyTalks,
+  readSpeakerInvitation, answerSpeakerInvitation, readMyPresence, saveMyPresence, listCourses, createCourse, updateCourse, replacePrerequisites, listMyTalks, readStage,
   uploadMaterial, setMaterialAccess, downloadMaterial, setRecordingConsent,
 ];

@@ -20,9 +20,9 @@ describe('parseLatex', () => {
     const { paragraphs } = parseLatex('Let $x$ be\n\\[ y \\]\n\nNew \\(z\\).');
     expect(paragraphs).toHaveLength(2);
     expect(paragraphs.flat().filter((s) => s.type === 'math')).toEqual([
-      { type: 'math', tex: 'x', display: false },
-      { type: 'math', tex: ' y ', display: true },
-      { type: 'math', tex: 'z', display: false },
+      { type: 'math', tex: 'x', display: false, line: 1 },
+      { type: 'math', tex: ' y ', display: true, line: 2 },
+      { type: 'math', tex: 'z', display: false, line: 4 },
     ]);
   });
 
