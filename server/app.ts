@@ -6,6 +6,7 @@ import helmet from 'helmet';
 import './db/models';
 import { env } from './env';
 import { actorOf } from './features/accounts/accounts-session.service';
+import { stripeWebhookRouter } from './features/finance/finance-webhook.routes';
 import { apiDocsPage, openApi } from './http/api-docs';
 import { csrfGuard } from './http/csrf';
 import { health } from './http/health';
@@ -62,6 +63,7 @@ export function buildApp({ clientDir, devClient }: AppParts): Express {
   app.get('/api/health', health);
   app.get('/api/openapi.json', (_req, res) => void res.json(openApi()));
   app.get('/api/docs', (_req, res) => void res.type('html').send(apiDocsPage()));
+  app.use(stripeWebhookRouter);
   app.use('/api', csrfGuard);
   app.use(express.json({ limit: '512kb' }));
   const router = Router();

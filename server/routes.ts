@@ -7,6 +7,11 @@ import { eventsRoutes } from './features/events/events.routes';
 import { programmeRoutes } from './features/programme/programme.routes';
 import { placedRooms } from './features/programme/programme.service';
 import { talksRoutes } from './features/talks/talks.routes';
+import { financeRoutes } from './features/finance/finance.routes';
+import { countFeeCategories } from './features/finance/finance.service';
+import { registrationRoutes } from './features/registration/registration.routes';
+import { isParticipant } from './features/registration/registration.service';
+import { knowParticipantsBy } from './features/talks/talks-materials.service';
 import { demoAccounts } from '../seeds/demo-accounts';
 
 /** The one list of doors: every feature mounts its endpoints here, lower features first. */
@@ -15,12 +20,15 @@ export function mountRoutes(router: Router): void {
   eventsRoutes(router);
   talksRoutes(router);
   programmeRoutes(router);
+  financeRoutes(router);
+  registrationRoutes(router);
 }
 
 /** How doors find what a path names; here, because the doors know no feature. */
 export function introduceScopes(): void {
   resolveScopesWith({ event: eventIdOf, fund: async () => null });
-  knowAboutEvents({ placedRooms });
+  knowParticipantsBy(isParticipant);
+  knowAboutEvents({ placedRooms, feeCategories: countFeeCategories });
   nameScopesWith(async (ids) => {
     const events = await eventsById(ids);
     return new Map([...events].map(([id, event]) => [id, { key: event.slug, title: event.title }]));

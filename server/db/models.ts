@@ -3,6 +3,8 @@ import { initialiseJobs } from '../jobs/job';
 import { initialiseMessages } from '../mail/message.model';
 import { initialiseAccounts } from '../features/accounts/accounts.model';
 import { initialiseEvents } from '../features/events/events.model';
+import { initialiseFinance } from '../features/finance/finance.model';
+import { initialiseRegistration } from '../features/registration/registration.model';
 import { initialiseTalks } from '../features/talks/talks.model';
 import { initialiseProgramme } from '../features/programme/programme.model';
 
@@ -14,6 +16,8 @@ export function initialiseModels(): void {
   initialiseEvents(sequelize);
   initialiseTalks(sequelize);
   initialiseProgramme(sequelize);
+  initialiseFinance(sequelize);
+  initialiseRegistration(sequelize);
 }
 
 initialiseModels();

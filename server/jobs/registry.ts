@@ -1,5 +1,6 @@
 import { talkReactions } from '../features/talks/talks-letters.service';
+import { registrationReactions } from '../features/registration/registration-letters.service';
 import type { Reaction } from './job';
 
 /** The one table that binds facts to reactions: one line per reaction list. */
-export const reactions: readonly Reaction[] = [...talkReactions];
+export const reactions: readonly Reaction[] = [...talkReactions, ...registrationReactions];
