@@ -1,5 +1,5 @@
 import katex from 'katex';
-import { parseLatex, type LatexDocument } from '@shared/features/talks/latex.rules';
+import { parseLatex, type LatexDocument } from '@shared/lib/latex';
 
 export interface AbstractText {
   title: string;

@@ -1,5 +1,5 @@
 import { formatDateSpan, formatInstant } from '@shared/lib/time';
-import { plainLatex } from '@shared/features/talks/latex.rules';
+import { plainLatex } from '@shared/lib/latex';
 import { talkKindNames } from '@shared/features/talks/talks.rules';
 import type { TalkKind } from '@shared/features/talks/talks.contract';
 import { layoutLetter } from '@server/mail/layout';

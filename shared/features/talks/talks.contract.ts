@@ -5,7 +5,7 @@ import { id, slug } from '../../lib/ids';
 import { instant, localDate, localDateTime } from '../../lib/time';
 import { email, password, sessionSchema } from '../accounts/accounts.contract';
 import { deadlineSchema, roomFeature } from '../events/events.contract';
-import { MAX_ABSTRACT } from './latex.rules';
+import { MAX_ABSTRACT } from '../../lib/latex';
 import { mscProblem, parseReference } from './subjects.rules';
 
 export const talkKinds = ['plenary', 'invited', 'contributed', 'course_lecture', 'exercise', 'poster', 'discussion', 'social'] as const;

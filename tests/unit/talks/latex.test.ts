@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { parseLatex, plainLatex, plainMath, wordCount } from '../../../shared/features/talks/latex.rules';
+import { parseLatex, plainLatex, plainMath, wordCount } from '../../../shared/lib/latex';
 import { mscClasses, mscProblem, parseReference } from '../../../shared/features/talks/subjects.rules';
 
 describe('parseLatex', () => {

@@ -14,9 +14,17 @@ export interface LatexProblem {
   sentence: string;
 }
 
+/** Where mathematics and things not understood stand in the source, for colouring; offsets in UTF-16 units, `to` excluded. */
+export interface LatexMark {
+  from: number;
+  to: number;
+  kind: 'math' | 'unknown';
+}
+
 export interface LatexDocument {
   paragraphs: Segment[][];
   problems: LatexProblem[];
+  marks: LatexMark[];
 }
 
 export const MAX_ABSTRACT = 8000;
@@ -32,11 +40,12 @@ const ACCENTS: Record<string, string> = { "'": '\u0301', '`': '\u0300', '^': '\u
 /** Reads the source into paragraphs; whatever is not understood is named with its line and a remedy. */
 export function parseLatex(source: string): LatexDocument {
   const reader = new Reader(source.slice(0, MAX_ABSTRACT * 2));
-  return { paragraphs: reader.read(), problems: reader.problems };
+  return { paragraphs: reader.read(), problems: reader.problems, marks: reader.marks };
 }
 
 class Reader {
   readonly problems: LatexProblem[] = [];
+  readonly marks: LatexMark[] = [];
   private at = 0;
   private line = 1;
   private paragraphs: Segment[][] = [];
@@ -142,12 +151,14 @@ class Reader {
     if (end >= this.source.length) {
       this.problem(open, `Mathematics begins with ${open} and does not end. Add ${shut} where it ends.`);
       this.current.push({ type: 'unknown', source: this.source.slice(this.at, this.at + 60) });
+      this.marks.push({ from: this.at, to: this.source.length, kind: 'unknown' });
       this.at = this.source.length;
       return;
     }
     const tex = this.source.slice(this.at + open.length, end);
     if (tex.trim() === '') this.problem(open + shut, 'There is nothing between the signs of mathematics.');
     else this.current.push({ type: 'math', tex, display, line: this.line });
+    this.marks.push({ from: this.at, to: end + shut.length, kind: 'math' });
     this.line += (tex.match(/\n/g) ?? []).length;
     this.at = end + shut.length;
   }
@@ -195,6 +206,7 @@ class Reader {
     const source = this.source.slice(this.at, this.at + length + argument.length);
     this.problem(`\\${name}`, remedy(name));
     this.current.push({ type: 'unknown', source });
+    this.marks.push({ from: this.at, to: this.at + Math.max(1, length + argument.length), kind: 'unknown' });
     this.at += Math.max(1, length + argument.length);
   }
 
