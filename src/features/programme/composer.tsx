@@ -11,7 +11,7 @@ import { weeksOf } from './calendar-columns';
 import { ChangesDialog } from './changes-dialog';
 import { ClashList, type Target } from './clash-list';
 import { talkKeys, undoKeys } from './composer-keys';
-import { DragHint } from './drag-hint';
+import { StatusLine } from './drag-hint';
 import { Inspector } from './inspector';
 import { ListView } from './list-view';
 import { MoveDialog } from './move-dialog';
@@ -74,7 +74,7 @@ export function Composer({ draft }: { draft: Draft }) {
               </div>
             )}
           </div>
-          <DragHint />
+          {view !== 'list' && <StatusLine said={composer.said} />}
         </div>
         <aside className="min-h-0 overflow-y-auto border-l border-rule max-lg:col-span-2 max-lg:border-t max-lg:border-l-0">
           <Inspector composer={composer} />

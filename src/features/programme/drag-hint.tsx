@@ -24,24 +24,31 @@ const subscribe = (listener: () => void): (() => void) => {
   return () => listeners.delete(listener);
 };
 
-export function DragHint() {
+/**
+ * The line under the calendar: what a drop here would do; otherwise what was done last. It keeps its height, because a
+ * calendar that changes its size in the middle of a drag drops beside the mouse.
+ */
+export function StatusLine({ said }: { said: string }) {
   const now = useSyncExternalStore(subscribe, () => hint);
   return (
-    <div aria-live="polite" className="drag-hint" hidden={now === null}>
-      {now && (
-        <>
-          <Sign kind={now.clashes.length > 0 ? 'must' : 'good'} />
-          <p>
-            <strong className="font-semibold">{now.where}</strong>{' '}
-            {now.clashes.length === 0 ? (
-              <span className="text-good">Fits.</span>
-            ) : (
-              now.clashes.slice(0, 2).join(' ')
-            )}
-            {now.clashes.length > 2 && ` And ${now.clashes.length - 2} more.`}
-          </p>
-        </>
-      )}
+    <div className="status-line">
+      <div className="drag-hint" aria-live="polite">
+        {now && (
+          <>
+            <Sign kind={now.clashes.length > 0 ? 'must' : 'good'} />
+            <p>
+              <strong className="font-semibold">{now.where}</strong>{' '}
+              {now.clashes.length === 0 ? (
+                <span className="text-good">Fits.</span>
+              ) : (
+                now.clashes.slice(0, 2).join(' ')
+              )}
+              {now.clashes.length > 2 && ` And ${now.clashes.length - 2} more.`}
+            </p>
+          </>
+        )}
+      </div>
+      {!now && <p aria-hidden="true">{said}</p>}
     </div>
   );
 }

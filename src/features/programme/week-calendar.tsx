@@ -67,9 +67,12 @@ export function WeekCalendar({ composer, days, lens, onLens, target }: Props) {
         eventOrderStrict
         slotMinTime={`${timeOf(hours.from)}:00`}
         slotMaxTime={`${timeOf(hours.to)}:00`}
-        slotDuration="00:30:00"
+        // Rows as fine as the snap: FullCalendar aims with the middle of the row that was gripped, and with rows of
+        // half an hour every drag by the upper edge would end a quarter of an hour late.
+        slotDuration="00:05:00"
         slotLabelInterval="00:30"
         slotLabelContent={({ date }) => (date.getUTCMinutes() === 0 ? clock(date.getUTCHours() * 60) : '')}
+        slotLaneClassNames={({ date }) => (date && date.getUTCMinutes() === 0 ? 'is-hour' : '')}
         snapDuration="00:05:00"
         height="100%"
         expandRows
@@ -98,6 +101,10 @@ export function WeekCalendar({ composer, days, lens, onLens, target }: Props) {
         eventResizeStart={({ event }) => composer.choose(event.id)}
         eventAllow={(span, event) => {
           drag.over(span.start, event?.id);
+          return true;
+        }}
+        selectAllow={(span) => {
+          drag.over(span.start, undefined); // this is asked for what comes from the tray
           return true;
         }}
         eventDrop={drag.dropped}
