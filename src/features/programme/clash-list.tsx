@@ -165,9 +165,18 @@ function useRemedies(clash: Clash, { problem, laid }: Composer): Remedy[] | unde
   const [found, setFound] = useState<Remedy[]>();
   const key = clashKey(clash);
   useEffect(() => {
-    const timer = setTimeout(() => setFound(remediesFor(problem, laid, clash)), 30);
-    return () => clearTimeout(timer);
+    return whenIdle(() => setFound(remediesFor(problem, laid, clash)));
     // eslint-disable-next-line react-hooks/exhaustive-deps -- a clash with the same key is the same clash
   }, [key, problem, laid]);
   return found;
+}
+
+/** Runs work between inputs, so that a crowded list does not hold up the next drag. Returns the way to call it off. */
+function whenIdle(work: () => void): () => void {
+  if (typeof requestIdleCallback !== 'function') {
+    const timer = setTimeout(work, 30);
+    return () => clearTimeout(timer);
+  }
+  const handle = requestIdleCallback(work, { timeout: 1500 });
+  return () => cancelIdleCallback(handle);
 }

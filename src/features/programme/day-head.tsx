@@ -1,5 +1,6 @@
 import { dayName } from '@shared/features/programme/timetable/words';
 import { count } from '@shared/lib/text';
+import { addDays, instantToLocal } from '@shared/lib/time';
 import { Sign } from '@/components/sign';
 import type { Column } from './calendar-columns';
 import type { Composer } from './use-composer';
@@ -19,6 +20,8 @@ export function DayHead({
   const { problem, clashes, at } = composer;
   const [weekday = '', number = '', month = ''] = dayName(problem, column.day).split(' ');
   const here = clashes.filter((clash) => clash.items.some((item) => at.get(item)?.day === column.day)).length;
+  const { startsOn, timeZone } = composer.draft.event;
+  const isToday = addDays(startsOn, column.day) === instantToLocal(new Date(), timeZone).date;
   const room = problem.rooms.find((one) => one.id === column.room);
   return (
     <div className="day-head">
@@ -28,6 +31,7 @@ export function DayHead({
             {weekday} {number}
           </strong>
           {lens && ` ${month}`}
+          {isToday && <span className="sun-dot" role="img" aria-label="today" />}
           {here > 0 && (
             <span className="day-clashes">
               <Sign kind="must" label={count(here, 'clash', 'clashes')} /> {here}

@@ -7,9 +7,9 @@ import { moveChecker } from '@shared/features/programme/timetable/check';
 import type { Clash } from '@shared/features/programme/timetable/clash';
 import type { Placement } from '@shared/features/programme/timetable/problem';
 import { clock, whenOf } from '@shared/features/programme/timetable/words';
-import { addDays, formatDate, timeOf, zoneName } from '@shared/lib/time';
+import { addDays, daysBetween, formatDate, instantToLocal, timeOf, zoneName } from '@shared/lib/time';
 import { awayEvents, closedEvents, hoursOf, talkEvents, targetEvents } from './calendar-events';
-import { columnsOf, fromStandIn, standInDate, standInStart, type Column } from './calendar-columns';
+import { columnsOf, fromStandIn, spanAt, standInDate, standInStart, type Column } from './calendar-columns';
 import { DayHead } from './day-head';
 import { showHint } from './drag-hint';
 import { Tile } from './tile';
@@ -79,6 +79,8 @@ export function WeekCalendar({ composer, days, lens, onLens, target }: Props) {
         editable={draft.can.change}
         droppable={draft.can.change}
         eventInteractive
+        nowIndicator
+        now={() => nowIn(columns, draft.event)}
         dragScroll
         events={events}
         dayHeaderContent={({ date }) => {
@@ -232,4 +234,11 @@ const draggedFromTray = (): string | undefined =>
 function typedFor({ draft }: Composer, to: Placement): string {
   const date = formatDate(addDays(draft.event.startsOn, to.day), { weekday: false });
   return `${date.toLowerCase()} ${timeOf(to.start)}`;
+}
+
+/** This minute in the stand-in days; far away when the event's week does not hold today. */
+function nowIn(columns: readonly Column[], event: { startsOn: string; timeZone: string }): string {
+  const { date, minute } = instantToLocal(new Date(), event.timeZone);
+  const index = columns.findIndex((column) => column.day === daysBetween(event.startsOn, date));
+  return index < 0 ? '1999-01-01T00:00:00Z' : spanAt(index, minute, minute).start;
 }
