@@ -6,6 +6,8 @@ import type {
   ProgrammePerson,
   Spot,
 } from './programme.contract';
+import { plainLatex } from '../../lib/latex';
+import { excerpt } from '../../lib/text';
 import { addDays, daysBetween } from '../../lib/time';
 
 /** The word on a tile for each kind; courses and exercises add letter and number. */
@@ -37,7 +39,9 @@ export function talkLabel(
   if (talk.kind === 'exercise' && letter) return talkWord('exercise', letter, number);
   if (speaker && talk.kind === 'plenary') return `the plenary talk by ${speaker}`;
   if (speaker && (talk.kind === 'invited' || talk.kind === 'contributed')) return `the talk by ${speaker}`;
-  return talk.title ? `“${talk.title}”` : `the ${kindWords[talk.kind].toLowerCase()}`;
+  return talk.title
+    ? `“${excerpt(plainLatex(talk.title), 60)}”`
+    : `the ${kindWords[talk.kind].toLowerCase()}`;
 }
 
 /** May a talk stand on the calendar? What was declined or withdrawn drops out; a contributed talk must be accepted. */

@@ -6,8 +6,8 @@ import type { Moment, Person, Problem } from '@shared/features/programme/timetab
 import { clock, dayName, featureWord, whenOf } from '@shared/features/programme/timetable/words';
 import { Button } from '@/components/button';
 import { KindTag } from '@/components/kind-tag';
+import { MathLine } from '@/components/math-text';
 import { Facts } from '@/components/page-bar';
-import { plainTitle } from './plain-title';
 import { roomOf, seatsOf, type Composer } from './use-composer';
 
 /** The chosen talk: who, where, when its people are there, what it must follow, what the room must have. */
@@ -22,7 +22,7 @@ export function Inspector({ composer }: { composer: Composer }) {
         <Link to={`/organise/${slug}/talks/${card.talkId}`}>Open</Link>
       </div>
       <h2 className="mt-0.5 mb-2 font-serif text-[16px] leading-5">
-        {plainTitle(card.title) || 'No title yet'}
+        {card.title ? <MathLine source={card.title} /> : 'No title yet'}
       </h2>
       <Facts items={factsOf(card, composer)} />
       {composer.draft.can.change && <Actions card={card} composer={composer} />}

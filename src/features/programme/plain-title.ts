@@ -1,71 +1,10 @@
-const symbols: Record<string, string> = {
-  alpha: 'α',
-  beta: 'β',
-  gamma: 'γ',
-  delta: 'δ',
-  epsilon: 'ε',
-  varepsilon: 'ε',
-  zeta: 'ζ',
-  eta: 'η',
-  theta: 'θ',
-  kappa: 'κ',
-  lambda: 'λ',
-  mu: 'μ',
-  nu: 'ν',
-  xi: 'ξ',
-  pi: 'π',
-  rho: 'ρ',
-  sigma: 'σ',
-  tau: 'τ',
-  phi: 'φ',
-  varphi: 'φ',
-  chi: 'χ',
-  psi: 'ψ',
-  omega: 'ω',
-  Gamma: 'Γ',
-  Delta: 'Δ',
-  Theta: 'Θ',
-  Lambda: 'Λ',
-  Pi: 'Π',
-  Sigma: 'Σ',
-  Phi: 'Φ',
-  Psi: 'Ψ',
-  Omega: 'Ω',
-  infty: '∞',
-  times: '×',
-  to: '→',
-  le: '≤',
-  leq: '≤',
-  ge: '≥',
-  geq: '≥',
-  ell: 'ℓ',
-  cdot: '·',
-  ldots: '…',
-  dots: '…',
-  subset: '⊂',
-  in: '∈',
-  sqrt: '√',
-};
-const raised: Record<string, string> = {
-  0: '⁰',
-  1: '¹',
-  2: '²',
-  3: '³',
-  4: '⁴',
-  5: '⁵',
-  6: '⁶',
-  7: '⁷',
-  8: '⁸',
-  9: '⁹',
-  n: 'ⁿ',
-};
+import { plainLatex } from '@shared/lib/latex';
 
-/** A title without LaTeX, for tiles: five hundred typeset formulas would make a drag stumble. */
+const known = new Map<string, string>();
+
+/** A title without LaTeX, for tiles: five hundred typeset formulas would make a drag stumble. Read once per title. */
 export function plainTitle(title: string): string {
-  return title.replace(/\$([^$]*)\$/g, (_all, math: string) =>
-    math
-      .replace(/\\([A-Za-z]+)\s*/g, (_m, name: string) => symbols[name] ?? '')
-      .replace(/\^\{?(\w)\}?/g, (_m, sign: string) => raised[sign] ?? `^${sign}`)
-      .replace(/[{}\\]/g, ''),
-  );
+  const plain = known.get(title) ?? plainLatex(title).replace(/\n/g, ' ');
+  known.set(title, plain);
+  return plain;
 }

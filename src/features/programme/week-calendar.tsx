@@ -12,6 +12,7 @@ import { awayEvents, closedEvents, hoursOf, talkEvents, targetEvents } from './c
 import { columnsOf, fromStandIn, spanAt, standInDate, standInStart, type Column } from './calendar-columns';
 import { DayHead } from './day-head';
 import { showHint } from './drag-hint';
+import { plainTitle } from './plain-title';
 import { Tile } from './tile';
 import { placeInWords, roomOf, type Composer, type Laid } from './use-composer';
 import './calendar.css';
@@ -133,7 +134,7 @@ function Content({
   const clash = inClash.has(at.item);
   const who = card.people.map((person) => person.printedName).join(', ');
   const state = `${at.fixed ? ', fixed' : ''}${clash ? ', clashes' : ''}`;
-  const label = `${card.word}, ${card.title}, ${who}, ${whenOf(composer.problem, at)}, ${roomOf(composer.problem, at.room)}${state}`;
+  const label = `${card.word}, ${plainTitle(card.title)}, ${who}, ${whenOf(composer.problem, at)}, ${roomOf(composer.problem, at.room)}${state}`;
   return <Tile card={card} at={at} wide={wide ?? false} clash={clash} fixed={at.fixed} label={label} />;
 }
 
