@@ -9,7 +9,7 @@ import { requireEvent } from '@server/features/events/events.service';
 import { DraftRow, PlacementRow } from './programme.model';
 import { canChangeProgramme } from './programme.policy';
 import { clashesOf } from './programme.presenter';
-import { programmeState, type ProgrammeState } from './programme-state.service';
+import { programmeState, withPresentPlacements, type ProgrammeState } from './programme-state.service';
 
 /** The draft's row, made with the first change, at the version that the actor has seen. @throws 404, 403, 412. */
 export async function draftForChange(
@@ -54,7 +54,7 @@ export function changeDraft(
       ),
       after: changes,
     });
-    const after = await programmeState(event);
+    const after = await withPresentPlacements(state);
     return { version: draft.version, placements: after.placements, clashes: clashesOf(after) };
   });
 }

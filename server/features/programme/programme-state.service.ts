@@ -64,6 +64,14 @@ export async function programmeState(event: EventRow): Promise<ProgrammeState> {
   };
 }
 
+/** The same state with the placements as they are now; everything else stands still within a transaction. */
+export async function withPresentPlacements(state: ProgrammeState): Promise<ProgrammeState> {
+  return {
+    ...state,
+    placements: placed(await PlacementRow.ofEvent(state.event.id), state.cards, state.event),
+  };
+}
+
 type Part = Pick<ProgrammePerson, 'accountId' | 'part'>;
 
 /** A person with the names that tiles use. */
