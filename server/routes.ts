@@ -12,6 +12,8 @@ import { countFeeCategories } from './features/finance/finance.service';
 import { registrationRoutes } from './features/registration/registration.routes';
 import { isParticipant } from './features/registration/registration.service';
 import { knowParticipantsBy } from './features/talks/talks-materials.service';
+import { feedRoutes } from './features/messages/messages-feeds.routes';
+import { messagesRoutes } from './features/messages/messages.routes';
 import { demoAccounts } from '../seeds/demo-accounts';
 
 /** The one list of doors: every feature mounts its endpoints here, lower features first. */
@@ -22,6 +24,8 @@ export function mountRoutes(router: Router): void {
   programmeRoutes(router);
   financeRoutes(router);
   registrationRoutes(router);
+  messagesRoutes(router);
+  feedRoutes(router);
 }
 
 /** How doors find what a path names; here, because the doors know no feature. */

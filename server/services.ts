@@ -8,6 +8,7 @@ import { periodic } from './jobs/periodic';
 import { reactions } from './jobs/registry';
 import { scheduler } from './jobs/schedule';
 import { runDueJobs, startWorker } from './jobs/worker';
+import { acceptReplies } from './features/messages/messages-test-mail.service';
 import { dispatchMail } from './mail/dispatch';
 
 export interface Services {
@@ -48,6 +49,7 @@ async function startSmtpFake(notes: string[], stops: (() => Promise<void>)[]): P
   if (env.SMTP_URL) return;
   const { startLocalMailbox } = await import('./fakes/smtp/local-mailbox');
   const fake = await startLocalMailbox();
+  acceptReplies();
   stops.push(fake.stop);
   notes.push(`Mail goes nowhere: a local test mailbox takes it (${env.BASE_URL}/office/test-mail).`);
 }

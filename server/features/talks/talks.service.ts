@@ -237,3 +237,13 @@ export async function withdrawTalk(actor: Actor, eventId: string, talkId: string
   });
   return readTalk(actor, eventId, talkId);
 }
+
+/** Title of a talk, in LaTeX. */
+export const talkTitle = async (talkId: string): Promise<string> => (await TalkRow.findByPk(talkId))?.title ?? 'Talk';
+
+/** The event that a talk belongs to. */
+export async function eventOfTalk(talkId: string): Promise<string> {
+  const talk = await TalkRow.findByPk(talkId);
+  if (!talk) throw notFound('This talk');
+  return talk.eventId;
+}
