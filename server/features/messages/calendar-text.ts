@@ -55,7 +55,7 @@ function attributes(item: CalendarItem, method: string, organizer: Organizer): E
     end: utc(item.endsAt),
     endInputType: 'utc',
     endOutputType: 'utc',
-    title: oneLine(item.summary),
+    title: oneLine(item.summary) || 'Talk', // the package leaves an empty one out, but SUMMARY is required
     description: cleanText(item.description),
     location: oneLine(item.location),
     url: item.url,

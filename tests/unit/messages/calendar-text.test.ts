@@ -71,7 +71,7 @@ describe('invitations as text', () => {
         expect(event.getFirstPropertyValue('status')).toBe(method === 'CANCEL' ? 'CANCELLED' : 'CONFIRMED');
         expect(event.getFirstPropertyValue('uid')).toBe(raw.uid);
         expect(event.getFirstPropertyValue('sequence')).toBe(raw.sequence);
-        expect(event.getFirstPropertyValue('summary')).toBe(asLine(raw.summary));
+        expect(event.getFirstPropertyValue('summary')).toBe(asLine(raw.summary) || 'Talk');
         expect(event.getFirstPropertyValue('location') ?? '').toBe(asLine(raw.location));
         expect(event.getFirstPropertyValue('description') ?? '').toBe(asText(raw.description));
         expect((event.getFirstPropertyValue('dtstart') as ICAL.Time).toJSDate().getTime()).toBe(raw.start * 60_000);
