@@ -32,10 +32,10 @@ export async function draftOf(
   return { version: row?.version ?? 0, placements: state.placements, clashes: clashesOf(state), toBePlaced };
 }
 
-/** Rooms in which something stands in the draft. */
+/** Rooms in which something stands in the draft; what has dropped out gives its room free. */
 export async function placedRooms(eventId: string): Promise<Set<string>> {
-  const rows = await PlacementRow.findAll({ where: { eventId }, attributes: ['roomId'] });
-  return new Set(rows.map((row) => row.roomId));
+  const { placements } = await programmeState(await eventById(eventId));
+  return new Set(placements.map((one) => one.roomId));
 }
 
 /** Places one talk, whatever the draft's version: for seeds and jobs. `minutes` defaults to what the talk asks for. */

@@ -238,8 +238,10 @@ export const compareDraft = endpoint({
   id: 'programme.compare_draft',
   method: 'GET',
   path: '/api/events/:event/programme/draft/comparison',
-  summary: 'What has changed in the draft since the latest revision, and whom it affects.',
+  summary: 'What has changed in the draft since a revision, by default the latest, and whom it affects.',
   params,
+  /** 0 compares with nothing. */
+  query: z.strictObject({ from: z.coerce.number().int().min(0).max(100_000).optional() }),
   response: comparisonSchema,
 });
 export const listRevisions = endpoint({

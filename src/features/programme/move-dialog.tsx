@@ -106,7 +106,7 @@ function Places({ composer, places, picked, onPick, onGo }: PlacesProps) {
     >
       <div
         aria-hidden="true"
-        className="grid grid-cols-[132px_116px_1fr] gap-2 border-b border-ink py-1 font-semibold text-ink2"
+        className="grid grid-cols-[132px_116px_1fr] gap-2 border-b border-ink py-1 font-semibold text-ink2 max-sm:hidden"
       >
         <span>Time</span>
         <span>Room</span>
@@ -120,7 +120,7 @@ function Places({ composer, places, picked, onPick, onGo }: PlacesProps) {
           aria-selected={place === picked}
           onClick={() => onPick(i)}
           onDoubleClick={() => onGo(place)}
-          className={`grid cursor-pointer grid-cols-[132px_116px_1fr] items-center gap-2 border-b border-rule py-1.5 last:border-b-0 ${
+          className={`grid cursor-pointer grid-cols-[132px_116px_1fr] items-center gap-x-2 max-sm:grid-cols-[1fr_auto] max-sm:py-2.5 border-b border-rule py-1.5 last:border-b-0 ${
             place === picked ? 'bg-actwash' : 'hover:bg-wash'
           }`}
         >
@@ -138,13 +138,13 @@ function Places({ composer, places, picked, onPick, onGo }: PlacesProps) {
 function WhatFollows({ place: { fits, follows } }: { place: PossiblePlace }) {
   if (!fits) {
     return (
-      <span className="flex items-start gap-1.5">
+      <span className="flex items-start gap-1.5 max-sm:col-span-2">
         <Sign kind="must" label="Clash:" /> {follows}
       </span>
     );
   }
   return (
-    <span>
+    <span className="max-sm:col-span-2">
       <strong className="font-semibold text-good">Fits.</strong>
       {follows.replace(/^Fits\./, '')}
     </span>
