@@ -123,20 +123,28 @@ export async function readRevision(slug: string, number: number) {
   };
 }
 
-/** What the draft would change against the latest revision. */
-export async function compareDraft(slug: string): Promise<Comparison> {
+/** What the draft would change against a revision, by default the latest; 0 compares with nothing. @throws 404. */
+export async function compareDraft(slug: string, from?: number): Promise<Comparison> {
   const event = await requireEvent(slug);
-  const [state, last] = await Promise.all([programmeState(event), RevisionRow.latest(event.id)]);
-  const rows = last ? await RevisionPlacementRow.ofRevision(last.id) : [];
+  const earlier =
+    from === undefined ? await RevisionRow.latest(event.id) : await revisionOrNone(event.id, from);
+  const rows = earlier ? await RevisionPlacementRow.ofRevision(earlier.id) : [];
+  const state = await programmeState(event);
   const people = await accountsById(rows.flatMap((row) => row.people.map((one) => one.accountId)));
   const before = rows.map((row) => snapshotOfRevision(row, people));
-  return comparison(compareProgrammes(before, snapshotsOfDraft(state)), last, null);
+  return comparison(compareProgrammes(before, snapshotsOfDraft(state)), earlier, null);
+}
+
+async function revisionOrNone(eventId: string, number: number): Promise<RevisionRow | null> {
+  const row = number === 0 ? null : await RevisionRow.numbered(eventId, number);
+  if (number !== 0 && !row) throw notFound(`Revision ${number}`);
+  return row;
 }
 
 /** What changed from revision `from` (by default the one before; 0 = nothing) to revision `number`. @throws 404. */
 export async function compareRevisions(slug: string, number: number, from = number - 1): Promise<Comparison> {
   const event = await requireEvent(slug);
-  const earlier = from === 0 ? null : await RevisionRow.numbered(event.id, from);
+  const earlier = await revisionOrNone(event.id, from);
   return comparison(await revisionChanges(event.id, number, from), earlier, number);
 }
 

@@ -35,7 +35,7 @@ export function programmeRoutes(router: Router): void {
   });
   serve(router, contract.compareDraft, {
     access: organiser,
-    handle: ({ params }) => compareDraft(params.event),
+    handle: ({ params, query }) => compareDraft(params.event, query.from),
   });
   serve(router, contract.listRevisions, {
     access: organiser,

@@ -17,7 +17,10 @@ export function ChangesDialog({ draft, onClose }: { draft: Draft; onClose: () =>
   const [to, setTo] = useState('draft');
   const [from, setFrom] = useState(String(latest));
   const revisions = useQuery(revisionsOf(slug));
-  const ofDraft = useQuery({ ...draftComparisonOf(slug, draft.version), enabled: to === 'draft' });
+  const ofDraft = useQuery({
+    ...draftComparisonOf(slug, draft.version, Number(from)),
+    enabled: to === 'draft',
+  });
   const ofRevision = useQuery({
     ...revisionComparisonOf(slug, Number(from), Number(to)),
     enabled: to !== 'draft',
@@ -44,7 +47,6 @@ export function ChangesDialog({ draft, onClose }: { draft: Draft; onClose: () =>
           label="With"
           dense
           value={from}
-          disabled={to === 'draft'}
           onChange={(event) => setFrom(event.target.value)}
           options={[...numbers.filter((one) => one.value !== to), { value: '0', label: 'Nothing published' }]}
         />

@@ -25,10 +25,10 @@ export const draftOf = (event: string) =>
   });
 
 /** What the draft would change, read again whenever it is opened. */
-export const draftComparisonOf = (event: string, version: number) =>
+export const draftComparisonOf = (event: string, version: number, from?: number) =>
   queryOptions({
-    queryKey: ['programme', event, 'comparison', version],
-    queryFn: ({ signal }) => call(contract.compareDraft, { ...params(event), signal }),
+    queryKey: ['programme', event, 'comparison', version, from],
+    queryFn: ({ signal }) => call(contract.compareDraft, { ...params(event), query: { from }, signal }),
     staleTime: 0,
   });
 

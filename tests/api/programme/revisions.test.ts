@@ -145,6 +145,11 @@ describe('comparing', () => {
     const between = await client.call(contract.compareRevisions, { params: { ...params(), number: 2 } });
     expect(what(between.body.changes)).toEqual(wanted);
     expect(await revisionChanges(given.event.id, 1)).toHaveLength(2);
+    const againstOne = await client.call(contract.compareDraft, { params: params(), query: { from: 1 } });
+    expect(what(againstOne.body.changes)).toEqual(wanted);
+    expect((await client.call(contract.compareDraft, { params: params(), query: { from: 7 } })).status).toBe(
+      404,
+    );
     const fromNothing = await client.call(contract.compareRevisions, {
       params: { ...params(), number: 2 },
       query: { from: 0 },
