@@ -1,4 +1,4 @@
-import { Router } from 'express';
+import type { Router } from 'express';
 import { resolveScopesWith } from './http/serve';
 import { nameScopesWith } from './features/accounts/accounts-office.service';
 import { accountsRoutes } from './features/accounts/accounts.routes';

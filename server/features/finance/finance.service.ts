@@ -11,7 +11,7 @@ import { recordAudit } from '@server/features/accounts/accounts.service';
 import { eventById, requireEvent } from '@server/features/events/events.service';
 import { postJournalEntry } from './finance-ledger.service';
 import { orderExpired, orderPaid } from './finance.jobs';
-import { ExtraRow, FeeCategoryRow, OrderLineRow, OrderRow, PaymentRow } from './finance.model';
+import { ExtraRow, FeeCategoryRow, OrderLineRow, OrderRow, type PaymentRow } from './finance.model';
 
 /** Fee categories and extras as they are offered now. */
 export async function feeTableOf(eventId: string): Promise<FeeTable> {
