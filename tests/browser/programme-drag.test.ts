@@ -2,8 +2,9 @@ import { AxeBuilder } from '@axe-core/playwright';
 import type { Locator, Page } from 'playwright-core';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { startBrowserApp, type BrowserApp } from '../support/browser';
+import type { buildProgramme } from '../support/build-programme';
 
-type Given = Awaited<ReturnType<(typeof import('../support/build-programme'))['buildProgramme']>>;
+type Given = Awaited<ReturnType<typeof buildProgramme>>;
 
 let app: BrowserApp;
 let given: Given;

@@ -17,7 +17,7 @@ import { accountsById, recordAudit } from '@server/features/accounts/accounts.se
 import { eventById, requireEvent } from '@server/features/events/events.service';
 import { talksForProgramme } from '@server/features/talks/talks.service';
 import { revisionPublished } from './programme.jobs';
-import { DraftRow, PlacementRow, RevisionPlacementRow, RevisionRow } from './programme.model';
+import { DraftRow, RevisionPlacementRow, RevisionRow } from './programme.model';
 import { changeDraft, draftForChange } from './programme-draft.service';
 import { clashesOf, presentPlacement, snapshotOfRevision, snapshotsOfDraft } from './programme.presenter';
 import { programmeState, type ProgrammeState } from './programme-state.service';
