@@ -25,15 +25,24 @@ export const router = createBrowserRouter([
         page('/reset', () => import('@/features/accounts/ask-reset.page')),
         page('/reset/:token', () => import('@/features/accounts/reset.page')),
         page('/invitation/:token', () => import('@/features/accounts/invitation.page')),
+        page('/speaker-invitation/:token', () => import('@/features/talks/speaker-invitation.page')),
       ]),
-      layout('PersonLayout', [page('/profile', () => import('@/features/accounts/profile.page'))]),
+      layout('PersonLayout', [
+        page('/profile', () => import('@/features/accounts/profile.page')),
+        page('/events/:event/my-talks/:talk', () => import('@/features/talks/my-talk.page')),
+        page('/events/:event/my-travel', () => import('@/features/talks/my-travel.page')),
+        page('/events/:event/submit', () => import('@/features/talks/submit.page')),
+      ]),
       layout('OfficeLayout', [
         page('/office/accounts', () => import('@/features/accounts/accounts.page')),
         page('/office/audit', () => import('@/features/accounts/audit.page')),
       ]),
       layout(
         'WorkspaceLayout',
-        [page('programme', () => import('@/features/programme/composer.page'))],
+        [
+          page('programme', () => import('@/features/programme/composer.page')),
+          page('talks', () => import('@/features/talks/talks.page')),
+        ],
         '/organise/:event',
       ),
       page('*', () => import('./not-found.page')),

@@ -1,0 +1,58 @@
+import { useDeferredValue } from 'react';
+import type { AbstractInput } from '@shared/features/talks/talks.contract';
+import { parseReference } from '@shared/features/talks/subjects.rules';
+import { MathLine, MathText } from '@/components/math-text';
+
+export interface Author {
+  name: string;
+  affiliation: string;
+}
+
+/** Title, authors, abstract, subjects and references as they are printed. */
+export function Printed({ title, authors, abstract, msc, references }: Pick<AbstractInput, 'title' | 'abstract' | 'msc' | 'references'> & { authors: readonly Author[] }) {
+  const source = useDeferredValue(abstract);
+  return (
+    <article className="min-w-0">
+      <h3 className="font-serif text-[18px] leading-6 font-semibold">
+        <MathLine source={title} />
+      </h3>
+      <p className="mb-2 font-serif text-[16px] italic">{authors.map((author) => [author.name, author.affiliation].filter(Boolean).join(', ')).join('; ')}</p>
+      {abstract.trim() === '' ? <p className="font-serif text-abstract text-ink3">No abstract yet.</p> : <MathText source={source} />}
+      {msc.length > 0 && <p className="mt-3 text-dense text-ink2">MSC 2020: {msc.join(', ')}</p>}
+      {references.length > 0 && (
+        <ul className="mt-1 text-dense text-ink2">
+          {references.map((text) => (
+            <li key={text} className="break-all">
+              <Reference text={text} />
+            </li>
+          ))}
+        </ul>
+      )}
+    </article>
+  );
+}
+
+function Reference({ text }: { text: string }) {
+  const reference = parseReference(text);
+  if (!reference) return text;
+  return (
+    <a href={reference.url} rel="noreferrer" target="_blank">
+      {reference.kind === 'doi' ? `doi:${reference.id}` : `arXiv:${reference.id}`}
+    </a>
+  );
+}
+
+/** The pane beside the source. */
+export function PreviewPane(props: Parameters<typeof Printed>[0]) {
+  return (
+    <section aria-label="As printed" className="flex min-w-0 flex-col">
+      <div className="mb-1 flex items-baseline justify-between gap-3">
+        <h2 className="font-semibold">As printed</h2>
+        <span className="text-dense text-ink3">in the programme and on the web page</span>
+      </div>
+      <div className="min-h-[340px] grow border-y border-ink px-1 py-3">
+        <Printed {...props} />
+      </div>
+    </section>
+  );
+}
