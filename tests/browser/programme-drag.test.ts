@@ -185,6 +185,19 @@ describe('by keys', () => {
     ).toBe(first.id);
   });
 
+  it('Alt, Shift and arrows make it longer and shorter; 1 to 3 move the lens', async () => {
+    const { first, hall } = given;
+    await place(first.id, hall.id, 540);
+    await tile(first.id).focus();
+    await page.keyboard.press('Alt+Shift+ArrowDown');
+    await expectSpot(first.id, '05 540 Great Hall 65');
+    await page.keyboard.press('Alt+Shift+ArrowUp');
+    await page.keyboard.press('Alt+Shift+ArrowUp');
+    await expectSpot(first.id, '05 540 Great Hall 55');
+    await page.keyboard.press('3');
+    await page.getByRole('button', { name: /^Wed 7/, pressed: true }).waitFor();
+  });
+
   it('Delete puts it back, Ctrl+Z and Ctrl+Shift+Z take back and do again', async () => {
     const { first, hall } = given;
     await place(first.id, hall.id, 540);

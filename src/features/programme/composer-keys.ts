@@ -25,8 +25,8 @@ export function undoKeys(
 }
 
 /**
- * Every drag has its keys: M opens Move, Alt + arrows shift by five minutes or a day, R takes the next room,
- * Delete puts the talk back to be placed, P fixes or releases, U takes the last move back.
+ * Every drag has its keys: M opens Move, Alt + arrows shift by five minutes or a day, with Shift they make it longer or
+ * shorter, R takes the next room, Delete puts the talk back to be placed, P fixes or releases, U takes the last move back.
  */
 export function talkKeys(event: KeyboardEvent, composer: Composer): void {
   if (typing(event.target) || event.ctrlKey || event.metaKey) return;
@@ -42,7 +42,7 @@ function act(event: KeyboardEvent, composer: Composer, talkId: string): boolean 
   if (key === 'm') composer.askWhere(talkId);
   else if (key === 'u') composer.undo();
   else if (!here) return false;
-  else if (event.altKey && event.key.startsWith('Arrow')) shift(composer, here, event.key);
+  else if (event.altKey && event.key.startsWith('Arrow')) shift(composer, here, event.key, lengthStep(event));
   else if (event.altKey) return false;
   else if (key === 'r')
     composer.move([{ item: talkId, to: { ...here, room: nextRoom(composer, here.room) } }]);
@@ -52,9 +52,15 @@ function act(event: KeyboardEvent, composer: Composer, talkId: string): boolean 
   return true;
 }
 
-function shift(composer: Composer, here: Placement, arrow: string): void {
+/** `longer`: 1 or -1 changes the length instead of the place. */
+function shift(composer: Composer, here: Placement, arrow: string, longer: number): void {
   const { days, gridMinutes } = composer.problem;
   const to = { ...here };
+  if (longer !== 0) {
+    to.minutes += longer * gridMinutes;
+    if (to.minutes >= gridMinutes && endOf(to) <= 1440) composer.move([{ item: here.item, to }]);
+    return;
+  }
   if (arrow === 'ArrowUp') to.start -= gridMinutes;
   if (arrow === 'ArrowDown') to.start += gridMinutes;
   if (arrow === 'ArrowLeft') to.day -= 1;
@@ -67,4 +73,20 @@ function shift(composer: Composer, here: Placement, arrow: string): void {
 function nextRoom({ problem }: Composer, room: string): string {
   const ids = problem.rooms.map((one) => one.id);
   return ids[(ids.indexOf(room) + 1) % ids.length] ?? room;
+}
+
+const lengthStep = (event: KeyboardEvent): number =>
+  event.shiftKey ? ({ ArrowDown: 1, ArrowUp: -1 }[event.key] ?? 0) : 0;
+
+/** 1 to 7 move the lens while the focus is in the work area. True when the key was one of them. */
+export function lensKey(
+  event: KeyboardEvent,
+  days: readonly number[],
+  moveLens: (day: number) => void,
+): boolean {
+  if (typing(event.target) || event.ctrlKey || event.metaKey || event.altKey || !/^[1-7]$/.test(event.key))
+    return false;
+  const day = days[Number(event.key) - 1];
+  if (day !== undefined) moveLens(day);
+  return day !== undefined;
 }

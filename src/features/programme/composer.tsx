@@ -10,7 +10,7 @@ import { PageBar } from '@/components/page-bar';
 import { weeksOf } from './calendar-columns';
 import { ChangesDialog } from './changes-dialog';
 import { ClashList, type Target } from './clash-list';
-import { talkKeys, undoKeys } from './composer-keys';
+import { lensKey, talkKeys, undoKeys } from './composer-keys';
 import { StatusLine } from './drag-hint';
 import { Inspector } from './inspector';
 import { ListView } from './list-view';
@@ -33,7 +33,7 @@ export function Composer({ draft }: { draft: Draft }) {
   const [target, setTarget] = useState<Target>(null);
   const work = useRef<HTMLDivElement>(null);
   const view: View = narrow ? 'list' : wanted;
-  useShortcuts(composer, weeks);
+  useUndoKeys(composer);
   useFocusKept(work, composer);
 
   return (
@@ -48,7 +48,7 @@ export function Composer({ draft }: { draft: Draft }) {
       </p>
       <div
         ref={work}
-        onKeyDown={(event) => talkKeys(event, composer)}
+        onKeyDown={(event) => lensKey(event, weeks.days, weeks.moveLens) || talkKeys(event, composer)}
         className={
           narrow
             ? 'flex flex-col'
@@ -224,20 +224,15 @@ function Publishing({
   );
 }
 
-/** Undo and redo from everywhere; 1 to 7 move the lens. */
-function useShortcuts(composer: Shared, weeks: Weeks): void {
-  const latest = useRef({ composer, weeks });
+/** Undo and redo from everywhere on the page, but not behind a dialog. */
+function useUndoKeys(composer: Shared): void {
+  const latest = useRef(composer);
   useEffect(() => {
-    latest.current = { composer, weeks };
+    latest.current = composer;
   });
   useEffect(() => {
     const onKey = (event: KeyboardEvent): void => {
-      const { composer: now, weeks: shown } = latest.current;
-      const inDialog = document.querySelector('[role="dialog"]');
-      if (inDialog || undoKeys(event, now) || event.ctrlKey || event.metaKey || event.altKey) return;
-      const field = (event.target as Element | null)?.closest?.('input, textarea, select');
-      const day = /^[1-7]$/.test(event.key) && !field ? shown.days[Number(event.key) - 1] : undefined;
-      if (day !== undefined) shown.moveLens(day);
+      if (!document.querySelector('[role="dialog"]')) undoKeys(event, latest.current);
     };
     document.addEventListener('keydown', onKey);
     return () => document.removeEventListener('keydown', onKey);

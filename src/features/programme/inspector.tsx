@@ -35,8 +35,8 @@ function NothingChosen() {
     <section aria-label="Chosen talk" className="px-4 py-3">
       <p className="font-serif text-[16px] leading-5">No talk is chosen.</p>
       <p className="mt-1 text-dense text-ink3">
-        Click a talk, or go to it with Tab. M moves it, Alt and arrows shift it, R takes the next room, Delete
-        puts it back to be placed, P fixes it. Ctrl+Z takes back.
+        Click a talk, or go to it with Tab. M moves it, Alt and arrows shift it (with Shift they change its
+        length), R takes the next room, Delete puts it back to be placed, P fixes it. Ctrl+Z takes back.
       </p>
     </section>
   );

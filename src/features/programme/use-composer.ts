@@ -7,6 +7,7 @@ import type { Clash } from '@shared/features/programme/timetable/clash';
 import { concernsOf } from '@shared/features/programme/timetable/concerns';
 import {
   applyMoves,
+  samePlace,
   type Move,
   type Placement,
   type Problem,
@@ -49,6 +50,11 @@ export interface Composer {
 export const placeInWords = (problem: Problem, at: Placement): string =>
   `${dayName(problem, at.day)} ${clock(at.start)}, ${roomOf(problem, at.room)}`;
 
+const whereInWords = (problem: Problem, from: Placement | undefined, to: Placement | null): string => {
+  if (!to) return 'is to be placed';
+  return from && samePlace(from, to) ? `now ${to.minutes} min` : `now ${placeInWords(problem, to)}`;
+};
+
 export const roomOf = (problem: Problem, id: string): string =>
   problem.rooms.find((room) => room.id === id)?.name ?? '';
 
@@ -86,7 +92,7 @@ export function useComposer(event: string, draft: Draft): Composer {
     }
     const [first] = moves;
     if (!first || !draft.can.change) return false;
-    const where = first.to ? `now ${placeInWords(problem, first.to)}` : 'is to be placed';
+    const where = whereInWords(problem, at.get(first.item), first.to);
     const text = already ?? `${sentence(nameOf(first.item))} ${where}.`;
     saving.change(text, changesOf(moves, startsOn));
     say(`${text} ${clashesLeft(checkAll(problem, applyMoves(laid, moves)))}`);
