@@ -68,7 +68,7 @@ export function Field({
 export const controlClass = (wrong: boolean, dense = false): string =>
   `w-full min-w-0 bg-sheet text-ink rounded-field border ${wrong ? 'border-2 border-alarm' : 'border-field'} ${
     dense ? 'min-h-[30px] px-2 text-ui' : 'min-h-[40px] px-2.5 text-form max-sm:min-h-[46px] max-sm:text-[16px]'
-  } disabled:bg-wash disabled:border-dashed read-only:bg-wash read-only:border-dashed`;
+  } disabled:bg-wash disabled:border-dashed [&:is(input,textarea):read-only]:bg-wash [&:is(input,textarea):read-only]:border-dashed`;
 
 type Split<T> = Omit<T, keyof FieldProps> & FieldProps & { dense?: boolean };
 const split = <T extends FieldProps & { dense?: boolean }>({ label, hint, error, optional, aside, className, hideLabel, dense, ...rest }: T) => ({

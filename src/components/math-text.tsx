@@ -39,7 +39,7 @@ function Segments({ segments, katex, inline = false }: { segments: Segment[]; ka
 
 function Unknown({ source, why }: { source: string; why: string }) {
   return (
-    <code title={why} className="bg-alarmwash px-1 font-mono text-[0.86em] break-all text-alarm">
+    <code title={why} className="bg-alarmwash px-1 font-mono text-[0.86em] [overflow-wrap:anywhere] text-alarm">
       {source}
     </code>
   );

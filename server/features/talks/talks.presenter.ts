@@ -104,7 +104,7 @@ export function presentTalkRow(
     invitation: talk.invitation,
     abstractAt: talk.abstractAt?.toISOString() ?? null,
     speakers: people
-      .filter((person) => person.part === 'speaker')
+      .filter((person) => person.part === (talk.kind === 'exercise' ? 'tutor' : 'speaker'))
       .map((person) => ({ accountId: person.accountId, printedName: persons.get(person.accountId)?.printedName ?? '', affiliation: persons.get(person.accountId)?.affiliation ?? '' })),
     hasSlides: withSlides.has(talk.id),
   };

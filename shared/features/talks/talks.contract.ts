@@ -122,6 +122,7 @@ export const talkRow = z.object({
   state: talkState,
   invitation: z.enum(['invited', 'accepted', 'declined']).nullable(),
   abstractAt: instant.nullable(),
+  /** Who stands in front: speakers, of exercise sessions the tutors. */
   speakers: z.array(z.object({ accountId: id, printedName: z.string(), affiliation: z.string() })),
   hasSlides: z.boolean(),
 });
@@ -288,7 +289,8 @@ export const readStage = endpoint({ id: 'talks.stage', method: 'GET', path: '/ap
 export const myTalk = z.object({ id, eventSlug: z.string(), eventTitle: z.string(), kind: talkKind, label: z.string(), title: z.string(), minutes: z.number().int(), state: talkState, part: talkPart, abstractAt: instant.nullable() });
 export const listMyTalks = endpoint({ id: 'talks.mine', method: 'GET', path: '/api/my/talks', summary: 'Talks in which the person has a part.', response: z.object({ items: z.array(myTalk) }) });
 
-export const MAX_UPLOAD = 60 * 1024 * 1024;
+/** Bytes of one file, at most. */
+export const MAX_UPLOAD = 60_000_000;
 export const uploadMaterial = endpoint({
   id: 'talks.upload',
   method: 'POST',

@@ -8,14 +8,19 @@ export interface Author {
   affiliation: string;
 }
 
+interface PrintedProps extends Pick<AbstractInput, 'title' | 'abstract' | 'msc' | 'references'> {
+  authors: readonly Author[];
+  /** Level of the title's heading on the page. */
+  level?: 2 | 3;
+}
+
 /** Title, authors, abstract, subjects and references as they are printed. */
-export function Printed({ title, authors, abstract, msc, references }: Pick<AbstractInput, 'title' | 'abstract' | 'msc' | 'references'> & { authors: readonly Author[] }) {
+export function Printed({ title, authors, abstract, msc, references, level = 3 }: PrintedProps) {
+  const Heading = level === 2 ? 'h2' : 'h3';
   const source = useDeferredValue(abstract);
   return (
     <article className="min-w-0">
-      <h3 className="font-serif text-[18px] leading-6 font-semibold">
-        <MathLine source={title} />
-      </h3>
+      <Heading className="font-serif text-[18px] leading-6 font-semibold">{title.trim() === '' ? 'No title yet' : <MathLine source={title} />}</Heading>
       <p className="mb-2 font-serif text-[16px] italic">{authors.map((author) => [author.name, author.affiliation].filter(Boolean).join(', ')).join('; ')}</p>
       {abstract.trim() === '' ? <p className="font-serif text-abstract text-ink3">No abstract yet.</p> : <MathText source={source} />}
       {msc.length > 0 && <p className="mt-3 text-dense text-ink2">MSC 2020: {msc.join(', ')}</p>}
@@ -43,7 +48,7 @@ function Reference({ text }: { text: string }) {
 }
 
 /** The pane beside the source. */
-export function PreviewPane(props: Parameters<typeof Printed>[0]) {
+export function PreviewPane(props: PrintedProps) {
   return (
     <section aria-label="As printed" className="flex min-w-0 flex-col">
       <div className="mb-1 flex items-baseline justify-between gap-3">

@@ -47,14 +47,14 @@ export function RoomsTable({ rooms, needs }: { rooms: Stage['rooms']; needs: rea
               {rooms.map((room) => <th key={room.name} scope="col" className="num" title={room.name}>{room.shortName}</th>)}
             </tr>
           </thead>
-          <tbody>
+          <tbody className="[&_th]:border-rule! [&_th]:font-normal! [&_tr:last-child>th]:border-b-0!">
             <tr>
-              <th scope="row" className="border-b-rule! font-normal!">Seats</th>
+              <th scope="row">Seats</th>
               {rooms.map((room) => <td key={room.name} className="num">{room.capacity}</td>)}
             </tr>
             {shown.map((feature) => (
               <tr key={feature}>
-                <th scope="row" className="border-b-rule! font-normal!">{featureNames[feature].offer}</th>
+                <th scope="row">{featureNames[feature].offer}</th>
                 {rooms.map((room) => {
                   const there = room.features.includes(feature);
                   const lacks = !there && needs.includes(feature);

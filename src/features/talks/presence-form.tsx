@@ -37,7 +37,7 @@ function Form({ stage, presence, compact }: { stage: Stage; presence: Presence; 
   return (
     <div className="grid gap-3">
       {draft.state === 'stale' && <StaleNote what="your stay" onMine={() => void draft.resolve('mine')} onTheirs={() => void draft.resolve('theirs')} />}
-      <div className={`grid gap-3 ${compact ? 'grid-cols-2 max-sm:grid-cols-1' : 'sm:grid-cols-2'}`}>
+      <div className={`grid gap-3 ${compact ? '' : 'sm:grid-cols-2'}`}>
         <Input dense={compact} label="Arrive" type="datetime-local" value={stay.arrivesAt ?? ''} error={errors.arrivesAt} onChange={(event) => set({ arrivesAt: event.target.value.slice(0, 16) || null })} />
         <Input dense={compact} label="Leave" type="datetime-local" value={stay.leavesAt ?? ''} error={errors.leavesAt} onChange={(event) => set({ leavesAt: event.target.value.slice(0, 16) || null })} />
       </div>

@@ -16,7 +16,7 @@ export function SaveLine({ state, savedAt, error, onRetry, what = 'Draft' }: { s
     );
   }
   const words = { waiting: 'Not saved yet', saving: 'Saving …', stale: 'Not saved', saved: savedAt ? `${what} saved ${clock(savedAt)}` : '' }[state];
-  return <span role="status" className="text-dense text-ink3">{words}</span>;
+  return <span role="status" className="text-dense text-ink3 empty:sr-only">{words}</span>;
 }
 
 /** Both versions are kept until the writer chooses. */

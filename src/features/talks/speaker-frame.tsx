@@ -3,7 +3,8 @@ import type { ReactNode } from 'react';
 import { NavLink } from 'react-router-dom';
 import { deadlineNames } from '@shared/features/events/events.rules';
 import type { Stage } from '@shared/features/talks/talks.contract';
-import { count } from '@shared/lib/text';
+import { plainLatex } from '@shared/lib/latex';
+import { count, excerpt } from '@shared/lib/text';
 import { addDays, daysBetween, formatDate, formatDateSpan, instantToLocal } from '@shared/lib/time';
 import { RunUpLine } from '@/components/run-up-line';
 import { QueryView } from '@/components/states';
@@ -16,6 +17,7 @@ const tab = ({ isActive }: { isActive: boolean }): string =>
 export function SpeakerFrame({ event, children }: { event: string; children: (stage: Stage) => ReactNode }) {
   const stage = useQuery(stageQuery(event));
   const mine = useQuery(myTalksQuery).data?.items.filter((talk) => talk.eventSlug === event && talk.part === 'speaker' && !['declined', 'withdrawn'].includes(talk.state)) ?? [];
+  const sameLabel = (label: string): boolean => mine.filter((talk) => talk.label === label).length > 1;
   return (
     <QueryView query={stage} what="the event">
       {(data) => (
@@ -25,7 +27,7 @@ export function SpeakerFrame({ event, children }: { event: string; children: (st
             <nav aria-label="Your part" className="flex max-w-full gap-4 overflow-x-auto">
               {mine.slice(0, 8).map((talk) => (
                 <NavLink key={talk.id} className={tab} to={`/events/${event}/my-talks/${talk.id}`}>
-                  {mine.length === 1 ? 'My talk' : talk.label}
+                  {mine.length === 1 ? 'My talk' : sameLabel(talk.label) ? excerpt(plainLatex(talk.title), 26) : talk.label}
                 </NavLink>
               ))}
               <NavLink className={tab} to={`/events/${event}/my-travel`}>My travel</NavLink>

@@ -40,7 +40,7 @@ function Record({ talk }: { talk: Talk }) {
         <b className="font-semibold">{talkStateNames[talk.state]}</b>
       </div>
       <DecisionButtons talk={talk} />
-      <Printed {...talk} authors={authorsOf(talk, talk)} />
+      <Printed level={2} {...talk} authors={authorsOf(talk, talk)} />
       <div className="flex flex-wrap gap-2">
         {talk.can.edit && <Button onClick={() => setEditing(true)}>Change kind and people …</Button>}
         {talk.can.write && owesAbstract(talk.kind) && <LinkButton to={`/events/${talk.eventSlug}/my-talks/${talk.id}`}>Write the abstract</LinkButton>}

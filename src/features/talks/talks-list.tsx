@@ -13,6 +13,8 @@ import { EmptyState, ErrorState, Loading } from '@/components/states';
 import { filterOf, kindOptions, missingOptions, stateOptions } from './talk-filters';
 import { talksQuery } from './talks.queries';
 
+const NOBODY: Partial<Record<TalkListRow['kind'], string>> = { plenary: 'No speaker', invited: 'No speaker', contributed: 'No speaker', course_lecture: 'No lecturer', exercise: 'No tutor' };
+
 const columns: Column<TalkListRow>[] = [
   { key: 'title', head: 'Talk', cell: (row) => <b className="font-serif text-[15px] leading-5 font-medium"><MathLine source={row.title} /></b> },
   { key: 'kind', head: 'Kind', cell: (row) => <KindTag kind={row.kind} label={row.label} />, className: 'max-sm:hidden' },
@@ -62,7 +64,7 @@ export function TalksList({ event, params, setParams, chosen, onChoose }: Props)
           rowKey={(row) => row.id}
           chosen={chosen}
           onOpen={(row) => onChoose(row.id)}
-          detail={(row) => <span className="block text-ink3">{row.speakers.map((person) => [person.printedName, person.affiliation].filter(Boolean).join(', ')).join('; ') || 'No speaker'}</span>}
+          detail={(row) => <span className="block text-ink3">{row.speakers.map((person) => [person.printedName, person.affiliation].filter(Boolean).join(', ')).join('; ') || NOBODY[row.kind]}</span>}
           foot={query.hasNextPage ? <Button busy={query.isFetchingNextPage} onClick={() => void query.fetchNextPage()}>Show more talks</Button> : count(rows.length, 'talk')}
         />
       )}
