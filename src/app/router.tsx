@@ -28,6 +28,7 @@ export const router = createBrowserRouter([
         page('/speaker-invitation/:token', () => import('@/features/talks/speaker-invitation.page')),
       ]),
       layout('PersonLayout', [
+        page('/organise/new', () => import('@/features/events/new-event.page')),
         page('/profile', () => import('@/features/accounts/profile.page')),
         page('/events/:event/my-talks/:talk', () => import('@/features/talks/my-talk.page')),
         page('/events/:event/my-travel', () => import('@/features/talks/my-travel.page')),
@@ -40,6 +41,8 @@ export const router = createBrowserRouter([
       layout(
         'WorkspaceLayout',
         [
+          page('settings', () => import('@/features/events/settings.page')),
+          page('people', () => import('@/features/events/people.page')),
           page('programme', () => import('@/features/programme/composer.page')),
           page('talks', () => import('@/features/talks/talks.page')),
         ],
