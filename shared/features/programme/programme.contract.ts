@@ -5,7 +5,7 @@ import { instant, localDate } from '../../lib/time';
 import { problemSchema } from './timetable/problem';
 
 /** Kinds of talk as the programme shows them; each has an edge pattern and a word. */
-export const programmeKinds = [
+const talkKinds = [
   'plenary',
   'invited',
   'contributed',
@@ -13,9 +13,8 @@ export const programmeKinds = [
   'exercise',
   'poster',
   'discussion',
-  'social',
 ] as const;
-export const programmeKind = z.enum(programmeKinds);
+export const programmeKind = z.enum([...talkKinds, 'social']);
 export type ProgrammeKind = z.infer<typeof programmeKind>;
 
 const spotFields = {
@@ -40,7 +39,7 @@ export type Spot = z.infer<typeof spotSchema>;
 export const clashSchema = z.object({
   /** Rule id of the timetable, e.g. `presence:<person>`. */
   rule: z.string(),
-  /** Talks that break the rule together. */
+  /** Talks that break it together. */
   items: z.array(z.string()),
   /** What is wrong in a few words, the beginning of the sentence. */
   title: z.string(),

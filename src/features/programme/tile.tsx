@@ -5,6 +5,7 @@ import { endOf, type Placement } from '@shared/features/programme/timetable/prob
 import { kindClass } from '@/components/kind-tag';
 import { Sign } from '@/components/sign';
 import { plainTitle } from './plain-title';
+import './tile.css';
 
 export const speakersOf = (card: TalkCard, full: boolean): string =>
   card.people
