@@ -1,3 +1,4 @@
+import { useState } from 'react';
 import type { Talk } from '@shared/features/talks/talks.contract';
 import { Checkbox } from '@/components/field';
 import { sayFailure } from '@/lib/problem';
@@ -6,14 +7,19 @@ import { useConsent } from './talks.queries';
 /** Consent is the speaker's own, given here and withdrawn here. */
 export function RecordingConsent({ talk, own }: { talk: Talk; own: boolean }) {
   const consent = useConsent();
+  // The tick follows the hand at once; a refusal takes it back.
+  const [wanted, setWanted] = useState(talk.recordingConsent);
   if (!own) return <p className="text-dense text-ink2">Recording: {talk.recordingConsent ? 'the speaker has agreed.' : 'no consent of the speaker.'}</p>;
   return (
     <Checkbox
       label="May be recorded"
       hint="I agree that this talk is recorded and the recording is shown on the event’s pages. I can withdraw this here at any time; the recording is then taken down."
-      checked={consent.isPending ? consent.variables.consent : talk.recordingConsent}
-      disabled={consent.isPending}
-      onChange={(event) => consent.mutate({ talk, consent: event.target.checked }, { onError: sayFailure })}
+      checked={wanted}
+      onChange={(event) => {
+        const agrees = event.target.checked;
+        setWanted(agrees);
+        consent.mutate({ talk, consent: agrees }, { onError: (error) => { setWanted(!agrees); sayFailure(error); } });
+      }}
     />
   );
 }
