@@ -1,5 +1,6 @@
 import { useMemo } from 'react';
-import { parseLatex, plainMath, type Segment } from '@shared/lib/latex';
+import { parseLatex, type Segment } from '@shared/lib/latex';
+import { plainMath } from '@shared/lib/plain-math';
 import { setFormula, useKatex, type Katex } from './katex';
 
 /** An abstract as printed: paragraphs, typeset mathematics, and whatever is not understood marked where it stands. */

@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { parseLatex, plainLatex, plainMath, wordCount } from '../../../shared/lib/latex';
+import { parseLatex, plainLatex, wordCount } from '../../../shared/lib/latex';
+import { plainMath } from '../../../shared/lib/plain-math';
 import { mscClasses, mscProblem, parseReference } from '../../../shared/features/talks/subjects.rules';
 
 describe('parseLatex', () => {
@@ -62,7 +63,10 @@ describe('plain text', () => {
     ['\\mathbb{Z}^5', 'ℤ⁵'],
     ['\\frac{1}{n}\\log', '1/nlog'],
     ['h^*', 'h^*'],
-    ['x_{ij}', 'x_(ij)'],
+    ['x_{ij}', 'xᵢⱼ'],
+    ['x_{iq}', 'x_(iq)'],
+    ['\\|A_n\\| \\gg \\lfloor x \\rfloor', '‖Aₙ‖ ≫ ⌊x⌋'],
+    ['\\unheardof + 1', 'unheardof + 1'],
   ])('%s', (tex, plain) => expect(plainMath(tex)).toBe(plain));
 
   it('keeps a title readable', () => {
