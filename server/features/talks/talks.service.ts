@@ -1,9 +1,10 @@
-import { Op } from 'sequelize';
+import { col, fn, Op, where } from 'sequelize';
 import type { RoomFeature } from '@shared/features/events/events.contract';
 import type { Talk, TalkKind, TalkListRow, TalkPart, TalkState } from '@shared/features/talks/talks.contract';
 import { owesAbstract, stepRefusal } from '@shared/features/talks/talks.rules';
 import { conflict, forbidden, notFound } from '@shared/http/problem';
 import type { Page } from '@shared/http/page';
+import { foldCase } from '@shared/lib/text';
 import { transaction } from '@server/db/transaction';
 import type { Actor } from '@server/http/authorize';
 import { sameVersion } from '@server/http/serve';
@@ -159,15 +160,15 @@ export async function listTalks(
   eventId: string,
   query: { cursor?: string; limit: number; state?: TalkState; kind?: TalkKind; q?: string; missing?: 'abstract' | 'answer' | 'slides' },
 ): Promise<Page<TalkListRow>> {
-  const like = query.q ? `%${query.q.replace(/[\\%_]/g, (c) => `\\${c}`)}%` : undefined;
-  const named = like ? await talksWithPerson(eventId, query.q as string) : [];
+  const named = query.q ? await talksWithPerson(eventId, query.q) : [];
   const rows = await TalkRow.findAll({
     where: {
       [Op.and]: [
         { eventId },
-        query.state ? { state: query.state } : isOrganiser(actor, eventId) ? {} : { state: { [Op.ne]: 'draft' } },
+        query.state ? { state: query.state } : {},
+        isOrganiser(actor, eventId) ? {} : { state: { [Op.ne]: 'draft' } },
         query.kind ? { kind: query.kind } : {},
-        like ? { [Op.or]: [{ title: { [Op.like]: like } }, { id: named }] } : {},
+        query.q ? { [Op.or]: [where(fn('instr', fn('lower', col('title')), query.q.toLowerCase()), Op.gt, 0), { id: named }] } : {},
         query.missing === 'abstract' ? { abstractAt: null, ...OWING } : {},
         query.missing === 'answer' ? { invitation: 'invited' } : {},
         query.missing === 'slides' ? { id: { [Op.notIn]: await talksWithSlides(eventId) }, ...OWING } : {},
@@ -205,7 +206,7 @@ async function talksWithSlides(eventId: string): Promise<string[]> {
 async function talksWithPerson(eventId: string, q: string): Promise<string[]> {
   const people = await TalkPersonRow.findAll({ where: { talkId: (await TalkRow.findAll({ where: { eventId }, attributes: ['id'] })).map((row) => row.id) } });
   const persons = await accountsById(people.map((person) => person.accountId));
-  return people.filter((person) => persons.get(person.accountId)?.printedName.toLowerCase().includes(q.toLowerCase())).map((person) => person.talkId);
+  return people.filter((person) => foldCase(persons.get(person.accountId)?.printedName ?? '').includes(foldCase(q))).map((person) => person.talkId);
 }
 
 /** Accepts or declines; the speaker hears by letter. @throws 409 when the state forbids it. */
