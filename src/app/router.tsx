@@ -29,6 +29,8 @@ export const router = createBrowserRouter([
       ]),
       layout('PersonLayout', [
         page('/organise/new', () => import('@/features/events/new-event.page')),
+        page('/events/:event/register', () => import('@/features/registration/register.page')),
+        page('/events/:event/registration', () => import('@/features/registration/registration.page')),
         page('/profile', () => import('@/features/accounts/profile.page')),
         page('/events/:event/my-talks/:talk', () => import('@/features/talks/my-talk.page')),
         page('/events/:event/my-travel', () => import('@/features/talks/my-travel.page')),
@@ -41,6 +43,9 @@ export const router = createBrowserRouter([
       layout(
         'WorkspaceLayout',
         [
+          page('registrations', () => import('@/features/registration/registrations.page')),
+          page('desk', () => import('@/features/registration/desk.page')),
+          page('settings/fees', () => import('@/features/finance/fees.page')),
           page('settings', () => import('@/features/events/settings.page')),
           page('people', () => import('@/features/events/people.page')),
           page('programme', () => import('@/features/programme/composer.page')),

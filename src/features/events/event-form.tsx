@@ -1,5 +1,5 @@
 import { zodResolver } from '@hookform/resolvers/zod';
-import { useForm } from 'react-hook-form';
+import { useForm, useWatch } from 'react-hook-form';
 import type { z } from 'zod';
 import { eventInput, eventKinds, type EventInput } from '@shared/features/events/events.contract';
 import { eventKindNames } from '@shared/features/events/events.rules';
@@ -42,7 +42,7 @@ export function EventForm({ values, onSave, saving, error, verb }: { values: Eve
     const own = form.formState.errors[head] as { message?: string } & Record<string, { message?: string } | undefined>;
     return (tail ? own?.[tail]?.message : own?.message) ?? server[name];
   };
-  const minors = form.watch('admitsMinors');
+  const minors = useWatch({ control: form.control, name: 'admitsMinors' });
   return (
     <form noValidate className="grid max-w-[760px] gap-4 text-form" onSubmit={(event) => void form.handleSubmit((data) => onSave(data as EventInput))(event)}>
       <div className="grid grid-cols-[220px_1fr] gap-4 max-sm:grid-cols-1">
