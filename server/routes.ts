@@ -14,6 +14,7 @@ import { isParticipant } from './features/registration/registration.service';
 import { knowParticipantsBy } from './features/talks/talks-materials.service';
 import { feedRoutes } from './features/messages/messages-feeds.routes';
 import { messagesRoutes } from './features/messages/messages.routes';
+import { unsubscribeRoutes } from './features/messages/messages-unsubscribe.routes';
 import { demoAccounts } from '../seeds/demo-accounts';
 
 /** The one list of doors: every feature mounts its endpoints here, lower features first. */
@@ -26,6 +27,7 @@ export function mountRoutes(router: Router): void {
   registrationRoutes(router);
   messagesRoutes(router);
   feedRoutes(router);
+  unsubscribeRoutes(router);
 }
 
 /** How doors find what a path names; here, because the doors know no feature. */

@@ -9,7 +9,7 @@ import { reactions } from './jobs/registry';
 import { scheduler } from './jobs/schedule';
 import { runDueJobs, startWorker } from './jobs/worker';
 import { acceptReplies } from './features/messages/messages-test-mail.service';
-import { dispatchMail } from './mail/dispatch';
+import { dispatchMail, recoverInterrupted } from './mail/dispatch';
 
 export interface Services {
   /** Sentences for the start page on the terminal. */
@@ -27,6 +27,7 @@ export async function startServices(): Promise<Services> {
   const stops: (() => Promise<void>)[] = [];
   await startSmtpFake(notes, stops);
   if (env.DEMO) await fillEmptyDemo(notes);
+  await recoverInterrupted();
   const clock = scheduler(periodic);
   const mailWorker = startWorker(() => dispatchMail());
   const worker = startWorker(async () => {

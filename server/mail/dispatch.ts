@@ -7,7 +7,7 @@ import { mailTransport, type WireMessage } from './transport';
 const MAX_ATTEMPTS = 8;
 /** So that a mail server is not flooded. */
 const PER_MINUTE = 600;
-/** A conversation that has not ended after this time was cut off by a crash. */
+/** A conversation that has not ended after this time was cut off; longer than every time-out of transport.ts. */
 const STUCK_MS = 10 * 60_000;
 
 let recent: number[] = [];
@@ -17,12 +17,18 @@ export function backOffSeconds(attempts: number, random: () => number = Math.ran
   return Math.min(7200, 30 * 2 ** (attempts - 1)) * (1 + random() / 5);
 }
 
+/** Letters whose conversation an earlier process did not live to finish: due again at once. Called when a process starts. */
+export async function recoverInterrupted(now = new Date()): Promise<number> {
+  const [changed] = await transaction(() => MessageRow.update({ nextAt: now }, { where: { state: 'sending', nextAt: { [Op.gt]: now } } }));
+  return changed;
+}
+
 /**
  * Sends what is due, one letter after the other. Returns how many were tried.
  *
- * A row is marked `sending` before the conversation and `sent` with the server's reply after it. A crash between the
- * two leaves `sending`; after ten minutes the letter is sent again under the same Message-ID, so that mail programs
- * and servers recognise the double: a letter may in that one case travel twice, but is never lost.
+ * A row is marked `sending` before the conversation and `sent` with the server's reply after it. A crash between the two
+ * leaves `sending`: SMTP has no way to ask whether a letter arrived, so it is sent again under the same Message-ID (derived
+ * from the key), by which the receiving side knows the double and keeps one. Never lost, and kept once.
  */
 export async function dispatchMail(now: () => Date = () => new Date()): Promise<number> {
   let tried = 0;
@@ -51,14 +57,30 @@ function claim(now: Date): Promise<MessageRow | null> {
 
 const due = (now: Date) => ({ state: ['queued', 'sending'], nextAt: { [Op.lte]: now } });
 
+interface SmtpError {
+  /** SMTP code, where the server gave one. */
+  responseCode?: number;
+  /** nodemailer's own code: EAUTH, ECONNECTION, EENVELOPE ... */
+  code?: string;
+  /** The command that was answered: `CONN`, `AUTH PLAIN`, `RCPT TO`, `DATA` ... */
+  command?: string;
+  message?: string;
+}
+
+/**
+ * A 5xx answer to this letter (RFC 5321 section 4.2.1). One at the greeting or at sign-in is about the server or our
+ * settings, not about the letter: all mail would fail for good because of a mistyped password.
+ */
+export const isPermanent = ({ responseCode = 0, code, command = '' }: SmtpError): boolean =>
+  responseCode >= 500 && code !== 'EAUTH' && !/^(CONN|EHLO|HELO|STARTTLS|AUTH|API)/.test(command);
+
 async function send(row: MessageRow, now: () => Date): Promise<void> {
   try {
     const reply = await mailTransport().send(wireMessage(row));
     await transaction(() => row.update({ state: 'sent', sentAt: now(), serverReply: reply.slice(0, 500), lastError: null }));
   } catch (error) {
-    const { responseCode, message } = error as { responseCode?: number; message?: string };
-    const permanent = responseCode !== undefined && responseCode >= 500;
-    const failed = permanent || row.attempts >= MAX_ATTEMPTS;
+    const { responseCode, message } = error as SmtpError;
+    const failed = isPermanent(error as SmtpError) || row.attempts >= MAX_ATTEMPTS;
     log.warn({ message: row.id, responseCode, attempts: row.attempts }, failed ? 'letter failed' : 'letter delayed');
     await transaction(() =>
       row.update({

@@ -18,7 +18,20 @@ export const escapeHtml = (text: string): string =>
 
 /** Plain text and HTML of a letter from one source: one column, serif title, the house's colours, nothing loaded from anywhere. */
 export function layoutLetter(parts: LetterParts): { text: string; html: string } {
+  refuseMissing(parts);
   return { text: plain(parts), html: html(parts) };
+}
+
+/** A value that is not there stops the letter by name, before anybody is written to; types alone do not stop a template literal. */
+function refuseMissing({ heading, paragraphs, action, facts, after }: LetterParts): void {
+  const needed: [string, unknown][] = [['heading', heading], ...(action ? ([['action', action.label], ['address of the action', action.url]] as [string, unknown][]) : [])];
+  const others: [string, unknown][] = [
+    ...[...paragraphs, ...(after ?? [])].map((text, index): [string, unknown] => [`paragraph ${index + 1}`, text]),
+    ...(facts ?? []).map(([label, value]): [string, unknown] => [label, value]),
+  ];
+  const lacks = ([, value]: [string, unknown]): boolean => typeof value !== 'string' || value === 'undefined' || value === 'null';
+  const missing = needed.find(([, value]) => !value) ?? [...needed, ...others].find(lacks);
+  if (missing) throw new Error(`letter: no ${missing[0]}`);
 }
 
 function plain({ heading, paragraphs, action, facts, after, footer }: LetterParts): string {

@@ -26,7 +26,7 @@ const ADDRESS = /^[^\s<>@,;:"()[\]\\]+@[^\s<>@,;:"()[\]\\]+$/;
 
 /**
  * Queues a letter inside the ambient transaction. The same key twice is one letter.
- * @throws Error naming the fault (line break in a header, wrong address, merge field without a value) before anybody is written to.
+ * @throws Error naming the fault (line break in a header, wrong address, a part without text) before anybody is written to.
  */
 export function queueMessage(message: OutgoingMessage): Promise<void> {
   refuseBroken(message);
@@ -60,9 +60,13 @@ function refuseBroken(message: OutgoingMessage): void {
   for (const [field, value] of Object.entries(headers)) {
     if (/[\r\n\0]/.test(value)) throw new Error(`${message.letter}: a line break in ${field}`);
   }
-  if (!ADDRESS.test(message.to.address)) throw new Error(`${message.letter}: not an address: ${message.to.address}`);
+  for (const address of [message.to.address, message.replyTo]) {
+    if (address !== undefined && !ADDRESS.test(address)) throw new Error(`${message.letter}: not an address: ${address}`);
+  }
   for (const [field, value] of Object.entries(message.mail)) {
-    if (/\bundefined\b|\bInvalid DateTime\b|\[object Object\]/.test(value)) throw new Error(`${message.letter}: a missing value in ${field}`);
+    if (typeof value !== 'string' || value.trim() === '') throw new Error(`${message.letter}: no ${field}`);
+    // The word "undefined" may well stand in a title; these two never do.
+    if (/\bInvalid DateTime\b|\[object Object\]/.test(value)) throw new Error(`${message.letter}: a missing value in ${field}`);
   }
 }
 

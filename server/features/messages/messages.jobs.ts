@@ -2,7 +2,7 @@ import { on, type Reaction } from '@server/jobs/job';
 import { revisionPublished } from '@server/features/programme/programme.jobs';
 import { eventOfTalk } from '@server/features/talks/talks.service';
 import { talkWithdrawn } from '@server/features/talks/talks.jobs';
-import { syncInvitations } from './messages.service';
+import { syncInvitations } from './messages-invitations.service';
 
 /** Calendars follow every change of the published programme. */
 export const messageReactions: readonly Reaction[] = [

@@ -21,8 +21,15 @@ export class CalendarInvitationRow extends Model {
 export class CalendarFeedRow extends Model {
   declare id: string;
   declare accountId: string;
-  /** 256 random bits. Kept readable: the owner is shown the address again; it opens nothing but times and rooms. */
-  declare token: string;
+  /** SHA-256 of the secret part of the address; the secret itself is computed, never kept. */
+  declare tokenHash: string;
+}
+
+/** Does not want letters of this event that are not owed to them. */
+export class LetterRefusalRow extends Model {
+  declare id: string;
+  declare accountId: string;
+  declare eventId: string;
 }
 
 export function initialiseMessagesFeature(sequelize: Sequelize): void {
@@ -33,5 +40,6 @@ export function initialiseMessagesFeature(sequelize: Sequelize): void {
     },
     { sequelize, modelName: 'calendar_invitations', version: true },
   );
-  CalendarFeedRow.init({ id: key(), accountId: text(), token: text() }, { sequelize, modelName: 'calendar_feeds' });
+  CalendarFeedRow.init({ id: key(), accountId: text(), tokenHash: text() }, { sequelize, modelName: 'calendar_feeds' });
+  LetterRefusalRow.init({ id: key(), accountId: text(), eventId: text() }, { sequelize, modelName: 'letter_refusals' });
 }

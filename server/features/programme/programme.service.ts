@@ -204,16 +204,33 @@ export async function publishedProgramme(
   const revision = await RevisionRow.latest(eventId);
   if (!revision) return null;
   const rows = await stillOn(eventId, await RevisionPlacementRow.ofRevision(revision.id));
-  const placements = rows.map((row) => ({
-    ...presentPlacement(row),
-    roomName: row.roomName,
-    startsAt: row.startsAt.toISOString(),
-    endsAt: row.endsAt.toISOString(),
-    word: row.word,
-    title: row.title,
-    people: row.people,
-  }));
+  const placements = rows.map(asPublished);
   return { number: revision.number, publishedAt: revision.publishedAt.toISOString(), placements };
+}
+
+const asPublished = (row: RevisionPlacementRow): PublishedPlacement => ({
+  ...presentPlacement(row),
+  roomName: row.roomName,
+  startsAt: row.startsAt.toISOString(),
+  endsAt: row.endsAt.toISOString(),
+  word: row.word,
+  title: row.title,
+  people: row.people,
+});
+
+/** What was public at some time after `since` and is no longer: as it was published last. For feeds, which tell it. */
+export async function droppedPlacements(eventId: string, since: Date): Promise<PublishedPlacement[]> {
+  const revisions = await RevisionRow.findAll({ where: { eventId }, order: [['number', 'DESC']] });
+  const current = new Set((await publishedProgramme(eventId))?.placements.map(({ talkId }) => talkId));
+  const dropped = new Map<string, PublishedPlacement>();
+  for (const [index, revision] of revisions.entries()) {
+    const replacedAt = revisions[index - 1]?.publishedAt;
+    if (replacedAt && replacedAt < since) break;
+    for (const row of await RevisionPlacementRow.ofRevision(revision.id)) {
+      if (!current.has(row.talkId) && !dropped.has(row.talkId)) dropped.set(row.talkId, asPublished(row));
+    }
+  }
+  return [...dropped.values()];
 }
 
 /** Published lines whose talk has not been declined or withdrawn since. */

@@ -63,6 +63,12 @@ export function invitationChanges(sent: readonly SentInvitation[], programme: re
 const sameTimeAndPlace = (a: { startsAt: string; endsAt: string; roomName: string }, b: { startsAt: string; endsAt: string; roomName: string }): boolean =>
   a.startsAt === b.startsAt && a.endsAt === b.endsAt && a.roomName === b.roomName;
 
-/** An answer counts when it is for the present sequence (an older one is to a time that no longer holds). */
-export const answerCounts = (invitation: { sequence: number; lastMethod: string }, answer: { sequence: number }): boolean =>
-  invitation.lastMethod === 'REQUEST' && answer.sequence >= invitation.sequence;
+export const answers = ['ACCEPTED', 'TENTATIVE', 'DECLINED'] as const;
+export type Answer = (typeof answers)[number];
+
+/** The answer of a PARTSTAT; null for one that says neither yes, no nor perhaps. */
+export const answerOf = (partstat: string): Answer | null => answers.find((answer) => answer === partstat) ?? null;
+
+/** A reply counts for the present time only: its sequence must be the invitation's (RFC 5546 section 3.2.3). */
+export const answerCounts = (invitation: { sequence: number; lastMethod: string }, reply: { sequence: number }): boolean =>
+  invitation.lastMethod === 'REQUEST' && reply.sequence === invitation.sequence;
