@@ -15,6 +15,7 @@ import { knowParticipantsBy } from './features/talks/talks-materials.service';
 import { feedRoutes } from './features/messages/messages-feeds.routes';
 import { messagesRoutes } from './features/messages/messages.routes';
 import { unsubscribeRoutes } from './features/messages/messages-unsubscribe.routes';
+import { runupRoutes } from './features/runup/runup.routes';
 import { demoAccounts } from '../seeds/demo-accounts';
 
 /** The one list of doors: every feature mounts its endpoints here, lower features first. */
@@ -27,6 +28,7 @@ export function mountRoutes(router: Router): void {
   registrationRoutes(router);
   messagesRoutes(router);
   feedRoutes(router);
+  runupRoutes(router);
   unsubscribeRoutes(router);
 }
 

@@ -2,10 +2,11 @@ import type { AnyEndpoint } from './http/endpoint';
 import { financeEndpoints } from './features/finance/finance.contract';
 import { registrationEndpoints } from './features/registration/registration.contract';
 import { messagesEndpoints } from './features/messages/messages.contract';
+import { runupEndpoints } from './features/runup/runup.contract';
 import { accountsEndpoints } from './features/accounts/accounts.contract';
 import { eventsEndpoints } from './features/events/events.contract';
 import { talksEndpoints } from './features/talks/talks.contract';
 import { programmeEndpoints } from './features/programme/programme.contract';
 
 /** Every operation of the API: the documentation and the tests walk this list. One line per feature. */
-export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints, ...talksEndpoints, ...programmeEndpoints, ...financeEndpoints, ...registrationEndpoints, ...messagesEndpoints];
+export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints, ...talksEndpoints, ...programmeEndpoints, ...financeEndpoints, ...registrationEndpoints, ...messagesEndpoints, ...runupEndpoints];

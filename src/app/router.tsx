@@ -26,12 +26,14 @@ export const router = createBrowserRouter([
         page('/reset/:token', () => import('@/features/accounts/reset.page')),
         page('/invitation/:token', () => import('@/features/accounts/invitation.page')),
         page('/speaker-invitation/:token', () => import('@/features/talks/speaker-invitation.page')),
+        page('/calendar-answer/:token', () => import('@/features/messages/calendar-answer.page')),
       ]),
       layout('PersonLayout', [
         page('/organise/new', () => import('@/features/events/new-event.page')),
         page('/events/:event/register', () => import('@/features/registration/register.page')),
         page('/events/:event/registration', () => import('@/features/registration/registration.page')),
         page('/profile', () => import('@/features/accounts/profile.page')),
+        page('/my-calendar', () => import('@/features/messages/my-calendar.page')),
         page('/events/:event/my-talks/:talk', () => import('@/features/talks/my-talk.page')),
         page('/events/:event/my-travel', () => import('@/features/talks/my-travel.page')),
         page('/events/:event/submit', () => import('@/features/talks/submit.page')),
@@ -39,10 +41,13 @@ export const router = createBrowserRouter([
       layout('OfficeLayout', [
         page('/office/accounts', () => import('@/features/accounts/accounts.page')),
         page('/office/audit', () => import('@/features/accounts/audit.page')),
+        page('/office/messages', () => import('@/features/messages/office-messages.page')),
+        page('/office/test-mail', () => import('@/features/messages/test-mail.page')),
       ]),
       layout(
         'WorkspaceLayout',
         [
+          { index: true, lazy: () => import('@/features/runup/overview.page') },
           page('registrations', () => import('@/features/registration/registrations.page')),
           page('desk', () => import('@/features/registration/desk.page')),
           page('settings/fees', () => import('@/features/finance/fees.page')),
@@ -50,6 +55,7 @@ export const router = createBrowserRouter([
           page('people', () => import('@/features/events/people.page')),
           page('programme', () => import('@/features/programme/composer.page')),
           page('talks', () => import('@/features/talks/talks.page')),
+          page('messages', () => import('@/features/messages/event-messages.page')),
         ],
         '/organise/:event',
       ),

@@ -214,3 +214,6 @@ export async function moneyIn(eventId: string): Promise<MoneyIn> {
     steps: paid.map((order) => ({ at: (order.paidAt as Date).toISOString(), amountMinor: order.totalMinor })).sort((a, b) => a.at.localeCompare(b.at)),
   };
 }
+
+/** Orders of an event that a person must look at. */
+export const odditiesOf = (eventId: string): Promise<number> => OrderRow.count({ where: { eventId, oddity: { [Op.ne]: null } } });

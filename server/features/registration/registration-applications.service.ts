@@ -135,3 +135,5 @@ export async function lapseOffers(now: Date): Promise<number> {
   }
   return lapsed;
 }
+
+export const undecidedApplications = (eventId: string): Promise<number> => ApplicationRow.count({ where: { eventId, state: 'received' } });
