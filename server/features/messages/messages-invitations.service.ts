@@ -8,7 +8,7 @@ import { env } from '@server/env';
 import { queueMessage } from '@server/mail/outbox';
 import { accountById, accountsById, issueToken, peekToken, type PersonView } from '@server/features/accounts/accounts.service';
 import { eventById } from '@server/features/events/events.service';
-import { talkTitle } from '@server/features/talks/talks.service';
+import { talksForProgramme, talkTitle } from '@server/features/talks/talks.service';
 import { publishedProgramme, type PublishedPlacement } from '@server/features/programme/programme.service';
 import { invitationText } from './calendar-text';
 import { calendarLetter } from './messages.mail';
@@ -115,10 +115,22 @@ export function recordReply(reply: CalendarReply, now: Date): Promise<boolean> {
   });
 }
 
+/** What became of the invitations of an event, in the order of time: for the organiser. */
 export async function answersOf(eventId: string) {
-  const rows = await CalendarInvitationRow.findAll({ where: { eventId } });
+  const rows = await CalendarInvitationRow.findAll({ where: { eventId }, order: ['startsAt', 'id'] });
   const people = await accountsById(rows.map((row) => row.accountId));
-  return rows.map((row) => ({ talkId: row.talkId, accountId: row.accountId, printedName: people.get(row.accountId)?.printedName ?? '', answer: row.answer, sequence: row.sequence, method: row.lastMethod }));
+  const titles = new Map((await talksForProgramme(eventId)).map((talk) => [talk.id, talk.title]));
+  return rows.map(({ talkId, accountId, startsAt, roomName, answer, sequence, lastMethod }) => ({
+    talkId,
+    talkTitle: plainLatex(titles.get(talkId) ?? 'Talk'),
+    startsAt,
+    roomName,
+    accountId,
+    printedName: people.get(accountId)?.printedName ?? '',
+    answer,
+    sequence,
+    method: lastMethod,
+  }));
 }
 
 export const invitationsOfTalk = (talkId: string): Promise<CalendarInvitationRow[]> => CalendarInvitationRow.findAll({ where: { talkId } });

@@ -100,6 +100,10 @@ export const readInvitationAnswer = endpoint({ id: 'messages.read_answer', metho
 export const answerInvitation = endpoint({ id: 'messages.answer', method: 'POST', path: '/api/calendar-answers/:token', summary: 'Say whether one comes; the organiser sees it.', params: byToken, body: z.strictObject({ answer: z.enum(answers) }), response: answerView });
 export const talkAnswer = z.object({
   talkId: id,
+  /** Without LaTeX. */
+  talkTitle: z.string(),
+  startsAt: instant,
+  roomName: z.string(),
   accountId: id,
   printedName: z.string(),
   answer: z.enum(answers).nullable(),
@@ -107,6 +111,7 @@ export const talkAnswer = z.object({
   sequence: z.number().int(),
   method: z.enum(['REQUEST', 'CANCEL']),
 });
+export type TalkAnswer = z.infer<typeof talkAnswer>;
 export const talkAnswers = endpoint({ id: 'messages.talk_answers', method: 'GET', path: '/api/events/:event/calendar-answers', summary: 'Answers to calendar invitations, by talk and person (organisers).', params: inEvent, response: z.object({ items: z.array(talkAnswer) }) });
 
 export const feedAddress = z.object({
