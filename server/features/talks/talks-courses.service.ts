@@ -1,4 +1,5 @@
-import type { Course, PresenceInput } from '@shared/features/talks/talks.contract';
+import type { Course } from '@shared/features/talks/talks-courses.contract';
+import type { PresenceInput } from '@shared/features/talks/talks-stay.contract';
 import { prerequisiteCircle, presenceErrors } from '@shared/features/talks/talks.rules';
 import { conflict, forbidden, invalid, notFound } from '@shared/http/problem';
 import { newId } from '@server/db/id';

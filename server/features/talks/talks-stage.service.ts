@@ -1,4 +1,4 @@
-import type { Stage } from '@shared/features/talks/talks.contract';
+import type { Stage } from '@shared/features/talks/talks-stay.contract';
 import { localToInstant } from '@shared/lib/time';
 import type { Actor } from '@server/http/authorize';
 import { deadlinesOf, requireEvent, roomsOf } from '@server/features/events/events.service';

@@ -1,4 +1,5 @@
-import type { Course, Material, Talk, TalkListRow } from '@shared/features/talks/talks.contract';
+import type { Material, Talk, TalkListRow } from '@shared/features/talks/talks.contract';
+import type { Course } from '@shared/features/talks/talks-courses.contract';
 import { owesAbstract, talkKindNames } from '@shared/features/talks/talks.rules';
 import type { Actor } from '@server/http/authorize';
 import type { PersonView } from '@server/features/accounts/accounts.service';

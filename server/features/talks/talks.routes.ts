@@ -1,5 +1,9 @@
 import type { Router } from 'express';
 import * as contract from '@shared/features/talks/talks.contract';
+import * as courses from '@shared/features/talks/talks-courses.contract';
+import * as invitation from '@shared/features/talks/talks-invitation.contract';
+import * as materials from '@shared/features/talks/talks-materials.contract';
+import * as stay from '@shared/features/talks/talks-stay.contract';
 import { anyone, inEvent, signedIn } from '@server/http/authorize';
 import { serve } from '@server/http/serve';
 import { sessionFor } from '@server/features/accounts/accounts-office.service';
@@ -26,17 +30,17 @@ export function talksRoutes(router: Router): void {
   serve(router, contract.submitTalk, { access: signedIn, handle: ({ actor, params, body, now }) => submitTalk(actor, params.event, body, now) });
   serve(router, contract.readCall, { access: anyone, handle: ({ params, now }) => readCall(params.event, now) });
   serve(router, contract.listMyTalks, { access: signedIn, handle: async ({ actor }) => ({ items: await talksOfPerson(actor.accountId) }) });
-  serve(router, contract.remindSpeakers, { access: organiser, handle: async ({ eventId, now }) => ({ written: await remindSpeakers(eventId, now) }) });
-  serve(router, contract.readStage, { access: signedIn, handle: ({ actor, params }) => readStage(actor, params.event) });
+  serve(router, invitation.remindSpeakers, { access: organiser, handle: async ({ eventId, now }) => ({ written: await remindSpeakers(eventId, now) }) });
+  serve(router, stay.readStage, { access: signedIn, handle: ({ actor, params }) => readStage(actor, params.event) });
   invitationRoutes(router);
   courseRoutes(router);
   materialRoutes(router);
 }
 
 function invitationRoutes(router: Router): void {
-  serve(router, contract.inviteSpeaker, { access: organiser, handle: ({ actor, eventId, body }) => inviteSpeaker(actor, eventId, body) });
-  serve(router, contract.readSpeakerInvitation, { access: anyone, handle: ({ params }) => readSpeakerInvitation(params.token) });
-  serve(router, contract.answerSpeakerInvitation, {
+  serve(router, invitation.inviteSpeaker, { access: organiser, handle: ({ actor, eventId, body }) => inviteSpeaker(actor, eventId, body) });
+  serve(router, invitation.readSpeakerInvitation, { access: anyone, handle: ({ params }) => readSpeakerInvitation(params.token) });
+  serve(router, invitation.answerSpeakerInvitation, {
     access: anyone,
     handle: async ({ req, res, maybeActor, params, body }) => {
       const { accountId, eventSlug, talkId } = await answerSpeakerInvitation(req, res, maybeActor, params.token, body);
@@ -46,20 +50,20 @@ function invitationRoutes(router: Router): void {
 }
 
 function courseRoutes(router: Router): void {
-  serve(router, contract.listCourses, { access: inEvent('organiser', 'reviewer'), handle: ({ eventId }) => listCourses(eventId) });
-  serve(router, contract.createCourse, { access: organiser, handle: ({ actor, eventId, body }) => createCourse(actor, eventId, body) });
-  serve(router, contract.updateCourse, { access: organiser, handle: ({ actor, eventId, params, version, body }) => updateCourse(actor, eventId, params.course, version, body) });
-  serve(router, contract.replacePrerequisites, { access: organiser, handle: ({ actor, eventId, body }) => replacePrerequisites(actor, eventId, body.pairs) });
-  serve(router, contract.readMyPresence, { access: signedIn, handle: ({ actor, eventId }) => readPresence(actor, eventId) });
-  serve(router, contract.saveMyPresence, { access: signedIn, handle: ({ actor, eventId, version, body }) => savePresence(actor, eventId, version, body) });
+  serve(router, courses.listCourses, { access: inEvent('organiser', 'reviewer'), handle: ({ eventId }) => listCourses(eventId) });
+  serve(router, courses.createCourse, { access: organiser, handle: ({ actor, eventId, body }) => createCourse(actor, eventId, body) });
+  serve(router, courses.updateCourse, { access: organiser, handle: ({ actor, eventId, params, version, body }) => updateCourse(actor, eventId, params.course, version, body) });
+  serve(router, courses.replacePrerequisites, { access: organiser, handle: ({ actor, eventId, body }) => replacePrerequisites(actor, eventId, body.pairs) });
+  serve(router, stay.readMyPresence, { access: signedIn, handle: ({ actor, eventId }) => readPresence(actor, eventId) });
+  serve(router, stay.saveMyPresence, { access: signedIn, handle: ({ actor, eventId, version, body }) => savePresence(actor, eventId, version, body) });
 }
 
 function materialRoutes(router: Router): void {
-  serve(router, contract.uploadMaterial, { access: signedIn, handle: ({ actor, eventId, params, body, file }) => uploadMaterial(actor, eventId, params.talk, body.kind, file) });
-  serve(router, contract.setMaterialAccess, {
+  serve(router, materials.uploadMaterial, { access: signedIn, handle: ({ actor, eventId, params, body, file }) => uploadMaterial(actor, eventId, params.talk, body.kind, file) });
+  serve(router, materials.setMaterialAccess, {
     access: signedIn,
     handle: ({ actor, eventId, params, version, body }) => setMaterialAccess(actor, eventId, params.talk, params.material, version, body),
   });
-  serve(router, contract.downloadMaterial, { access: anyone, handle: ({ maybeActor, eventId, params, now }) => downloadMaterial(maybeActor, eventId, params.file, now) });
-  serve(router, contract.setRecordingConsent, { access: signedIn, handle: ({ actor, eventId, params, body }) => setRecordingConsent(actor, eventId, params.talk, body.consent) });
+  serve(router, materials.downloadMaterial, { access: anyone, handle: ({ maybeActor, eventId, params, now }) => downloadMaterial(maybeActor, eventId, params.file, now) });
+  serve(router, materials.setRecordingConsent, { access: signedIn, handle: ({ actor, eventId, params, body }) => setRecordingConsent(actor, eventId, params.talk, body.consent) });
 }

@@ -1,6 +1,6 @@
 import { useState, type FormEvent } from 'react';
 import type { BodyOf } from '@shared/http/endpoint';
-import type { Course, createCourse } from '@shared/features/talks/talks.contract';
+import type { Course, createCourse } from '@shared/features/talks/talks-courses.contract';
 import { Button } from '@/components/button';
 import { Dialog } from '@/components/dialog';
 import { Checkbox, Input } from '@/components/field';

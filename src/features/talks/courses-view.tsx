@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { Link } from 'react-router-dom';
-import type { Course } from '@shared/features/talks/talks.contract';
+import type { Course } from '@shared/features/talks/talks-courses.contract';
 import { count } from '@shared/lib/text';
 import { Button } from '@/components/button';
 import { MathLine } from '@/components/math-text';

@@ -1,5 +1,5 @@
 import type { DeadlineKind } from '@shared/features/events/events.contract';
-import type { Stage } from '@shared/features/talks/talks.contract';
+import type { Stage } from '@shared/features/talks/talks-stay.contract';
 import { formatDate, formatInstant, formatTime } from '@shared/lib/time';
 import { ownTime, ownZone } from '@/lib/format';
 

@@ -1,6 +1,6 @@
 import { useState, type FormEvent } from 'react';
 import type { BodyOf } from '@shared/http/endpoint';
-import type { inviteSpeaker } from '@shared/features/talks/talks.contract';
+import type { inviteSpeaker } from '@shared/features/talks/talks-invitation.contract';
 import { usualMinutes } from '@shared/features/talks/talks.rules';
 import { Button } from '@/components/button';
 import { Dialog } from '@/components/dialog';

@@ -1,5 +1,6 @@
 import { useId, useRef, useState, type DragEvent } from 'react';
-import { downloadMaterial, MAX_UPLOAD, type Material, type materialKinds, type Talk } from '@shared/features/talks/talks.contract';
+import type { Material, materialKinds, Talk } from '@shared/features/talks/talks.contract';
+import { downloadMaterial, MAX_UPLOAD } from '@shared/features/talks/talks-materials.contract';
 import { Button } from '@/components/button';
 import { fileAddress } from '@/lib/api';
 import { formatBytes, ownTime } from '@/lib/format';

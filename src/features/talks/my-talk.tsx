@@ -1,4 +1,5 @@
-import type { AbstractInput, Stage, Talk } from '@shared/features/talks/talks.contract';
+import type { AbstractInput, Talk } from '@shared/features/talks/talks.contract';
+import type { Stage } from '@shared/features/talks/talks-stay.contract';
 import { owesAbstract } from '@shared/features/talks/talks.rules';
 import { useAccount } from '@/features/accounts/accounts.queries';
 import { SectionHead } from '@/components/page-bar';

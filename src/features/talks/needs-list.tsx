@@ -1,4 +1,4 @@
-import type { Stage } from '@shared/features/talks/talks.contract';
+import type { Stage } from '@shared/features/talks/talks-stay.contract';
 import { roomFeatures, type RoomFeature } from '@shared/features/events/events.contract';
 import { Checkbox } from '@/components/field';
 

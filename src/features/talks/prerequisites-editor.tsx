@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import type { Course } from '@shared/features/talks/talks.contract';
+import type { Course } from '@shared/features/talks/talks-courses.contract';
 import { prerequisiteCircle } from '@shared/features/talks/talks.rules';
 import { plainLatex } from '@shared/lib/latex';
 import { Button } from '@/components/button';

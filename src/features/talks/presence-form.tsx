@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import type { PresenceInput, Stage } from '@shared/features/talks/talks.contract';
+import type { PresenceInput, Stage } from '@shared/features/talks/talks-stay.contract';
 import { presenceErrors } from '@shared/features/talks/talks.rules';
 import { addDays } from '@shared/lib/time';
 import { Button } from '@/components/button';

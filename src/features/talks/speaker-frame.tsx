@@ -2,7 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import type { ReactNode } from 'react';
 import { NavLink } from 'react-router-dom';
 import { deadlineNames } from '@shared/features/events/events.rules';
-import type { Stage } from '@shared/features/talks/talks.contract';
+import type { Stage } from '@shared/features/talks/talks-stay.contract';
 import { plainLatex } from '@shared/lib/latex';
 import { count, excerpt } from '@shared/lib/text';
 import { addDays, daysBetween, formatDate, formatDateSpan, instantToLocal } from '@shared/lib/time';

@@ -2,7 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { useState, type FormEvent } from 'react';
 import { Link, useNavigate, useParams } from 'react-router-dom';
 import type { ResponseOf } from '@shared/http/endpoint';
-import type { readSpeakerInvitation } from '@shared/features/talks/talks.contract';
+import type { readSpeakerInvitation } from '@shared/features/talks/talks-invitation.contract';
 import { talkKindNames } from '@shared/features/talks/talks.rules';
 import { formatDateSpan } from '@shared/lib/time';
 import { useAccount } from '@/features/accounts/accounts.queries';

@@ -1,4 +1,4 @@
-import type { PresenceInput } from '@shared/features/talks/talks.contract';
+import type { PresenceInput } from '@shared/features/talks/talks-stay.contract';
 import { addDays, datesBetween, daysBetween, formatDate, minuteOf } from '@shared/lib/time';
 
 type Window = Pick<PresenceInput, 'arrivesAt' | 'leavesAt' | 'blocked'>;

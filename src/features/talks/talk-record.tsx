@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import { downloadMaterial, type Talk } from '@shared/features/talks/talks.contract';
+import type { Talk } from '@shared/features/talks/talks.contract';
+import { downloadMaterial } from '@shared/features/talks/talks-materials.contract';
 import { owesAbstract, talkKindNames, talkStateNames } from '@shared/features/talks/talks.rules';
 import { Button, LinkButton } from '@/components/button';
 import { KindTag } from '@/components/kind-tag';

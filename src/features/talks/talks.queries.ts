@@ -1,6 +1,11 @@
 import { infiniteQueryOptions, queryOptions, useMutation, useQueryClient, type QueryClient } from '@tanstack/react-query';
 import * as contract from '@shared/features/talks/talks.contract';
-import type { AbstractInput, PresenceInput, Talk } from '@shared/features/talks/talks.contract';
+import * as courses from '@shared/features/talks/talks-courses.contract';
+import * as invitation from '@shared/features/talks/talks-invitation.contract';
+import * as materials from '@shared/features/talks/talks-materials.contract';
+import * as stay from '@shared/features/talks/talks-stay.contract';
+import type { AbstractInput, Talk } from '@shared/features/talks/talks.contract';
+import type { PresenceInput } from '@shared/features/talks/talks-stay.contract';
 import type { BodyOf, QueryOf } from '@shared/http/endpoint';
 import { useEnterSession } from '@/features/accounts/accounts.queries';
 import { call } from '@/lib/api';
@@ -18,18 +23,18 @@ export const talksQuery = (event: string, filter: TalkFilter = {}) =>
 export const talkQuery = (event: string, talk: string) =>
   queryOptions({ queryKey: ['talks', 'one', event, talk], queryFn: ({ signal }) => call(contract.readTalk, { params: { event, talk }, signal }) });
 export const stageQuery = (event: string) =>
-  queryOptions({ queryKey: ['talks', 'stage', event], queryFn: ({ signal }) => call(contract.readStage, { params: { event }, signal }) });
+  queryOptions({ queryKey: ['talks', 'stage', event], queryFn: ({ signal }) => call(stay.readStage, { params: { event }, signal }) });
 export const presenceQuery = (event: string) =>
-  queryOptions({ queryKey: ['talks', 'presence', event], queryFn: ({ signal }) => call(contract.readMyPresence, { params: { event }, signal }) });
+  queryOptions({ queryKey: ['talks', 'presence', event], queryFn: ({ signal }) => call(stay.readMyPresence, { params: { event }, signal }) });
 export const callQuery = (event: string) =>
   queryOptions({ queryKey: ['talks', 'call', event], queryFn: ({ signal }) => call(contract.readCall, { params: { event }, signal }) });
 export const coursesQuery = (event: string) =>
-  queryOptions({ queryKey: ['talks', 'courses', event], queryFn: ({ signal }) => call(contract.listCourses, { params: { event }, signal }) });
+  queryOptions({ queryKey: ['talks', 'courses', event], queryFn: ({ signal }) => call(courses.listCourses, { params: { event }, signal }) });
 export const myTalksQuery = queryOptions({ queryKey: ['talks', 'mine'], queryFn: ({ signal }) => call(contract.listMyTalks, { signal }) });
 export const speakerInvitationQuery = (token: string) =>
   queryOptions({
     queryKey: ['talks', 'invitation', token],
-    queryFn: () => call(contract.readSpeakerInvitation, { params: { token } }),
+    queryFn: () => call(invitation.readSpeakerInvitation, { params: { token } }),
     retry: false,
     staleTime: Infinity, // the link is spent by the answer; asking again would only say so
   });
@@ -56,17 +61,17 @@ export const useUpdateTalk = () =>
 export const useCreateTalk = (event: string) =>
   useTalkMutation((body: BodyOf<typeof contract.createTalk>) => call(contract.createTalk, { params: { event }, body }));
 export const useInviteSpeaker = (event: string) =>
-  useTalkMutation((body: BodyOf<typeof contract.inviteSpeaker>) => call(contract.inviteSpeaker, { params: { event }, body }));
+  useTalkMutation((body: BodyOf<typeof invitation.inviteSpeaker>) => call(invitation.inviteSpeaker, { params: { event }, body }));
 export const useSubmitTalk = (event: string) => useTalkMutation((body: AbstractInput) => call(contract.submitTalk, { params: { event }, body }));
 export const useConsent = () =>
   useTalkMutation(({ talk, consent }: { talk: Talk; consent: boolean }) =>
-    call(contract.setRecordingConsent, { params: { event: talk.eventSlug, talk: talk.id }, body: { consent } }),
+    call(materials.setRecordingConsent, { params: { event: talk.eventSlug, talk: talk.id }, body: { consent } }),
   );
 export const useMaterialAccess = () =>
-  useTalkMutation(({ talk, material, version, body }: { talk: Talk; material: string; version: number; body: BodyOf<typeof contract.setMaterialAccess> }) =>
-    call(contract.setMaterialAccess, { params: { event: talk.eventSlug, talk: talk.id, material }, version, body }),
+  useTalkMutation(({ talk, material, version, body }: { talk: Talk; material: string; version: number; body: BodyOf<typeof materials.setMaterialAccess> }) =>
+    call(materials.setMaterialAccess, { params: { event: talk.eventSlug, talk: talk.id, material }, version, body }),
   );
-export const useRemind = (event: string) => useMutation({ mutationFn: () => call(contract.remindSpeakers, { params: { event }, body: {} }) });
+export const useRemind = (event: string) => useMutation({ mutationFn: () => call(invitation.remindSpeakers, { params: { event }, body: {} }) });
 
 export interface Upload {
   talk: Talk;
@@ -76,7 +81,7 @@ export interface Upload {
   signal: AbortSignal;
 }
 export const useUpload = () =>
-  useTalkMutation(({ talk, kind, ...rest }: Upload) => call(contract.uploadMaterial, { params: { event: talk.eventSlug, talk: talk.id }, body: { kind }, ...rest }));
+  useTalkMutation(({ talk, kind, ...rest }: Upload) => call(materials.uploadMaterial, { params: { event: talk.eventSlug, talk: talk.id }, body: { kind }, ...rest }));
 
 /** For autosave: keeps the answer and hands it back. */
 export function useAbstractSaver(event: string, talk: string) {
@@ -94,7 +99,7 @@ export function usePresenceSaver(event: string) {
   const client = useQueryClient();
   return {
     save: async (body: PresenceInput, version: number) => {
-      const saved = await call(contract.saveMyPresence, { params: { event }, body, version });
+      const saved = await call(stay.saveMyPresence, { params: { event }, body, version });
       client.setQueryData(presenceQuery(event).queryKey, saved);
       void client.invalidateQueries({ queryKey: ['programme'] });
       return saved.version;
@@ -106,7 +111,7 @@ export function usePresenceSaver(event: string) {
 export function useAnswerInvitation(token: string) {
   const enter = useEnterSession();
   return useMutation({
-    mutationFn: (body: BodyOf<typeof contract.answerSpeakerInvitation>) => call(contract.answerSpeakerInvitation, { params: { token }, body }),
+    mutationFn: (body: BodyOf<typeof invitation.answerSpeakerInvitation>) => call(invitation.answerSpeakerInvitation, { params: { token }, body }),
     onSuccess: (answer) => answer.answer === 'accepted' && enter(answer.session),
   });
 }
@@ -121,10 +126,10 @@ function useCourseMutation<V, R>(event: string, mutationFn: (variables: V) => Pr
   });
 }
 export const useCreateCourse = (event: string) =>
-  useCourseMutation(event, (body: BodyOf<typeof contract.createCourse>) => call(contract.createCourse, { params: { event }, body }));
+  useCourseMutation(event, (body: BodyOf<typeof courses.createCourse>) => call(courses.createCourse, { params: { event }, body }));
 export const useUpdateCourse = (event: string) =>
-  useCourseMutation(event, ({ course, version, body }: { course: string; version: number; body: BodyOf<typeof contract.updateCourse> }) =>
-    call(contract.updateCourse, { params: { event, course }, version, body }),
+  useCourseMutation(event, ({ course, version, body }: { course: string; version: number; body: BodyOf<typeof courses.updateCourse> }) =>
+    call(courses.updateCourse, { params: { event, course }, version, body }),
   );
 export const useReplacePrerequisites = (event: string) =>
-  useCourseMutation(event, (pairs: { before: string; after: string }[]) => call(contract.replacePrerequisites, { params: { event }, body: { pairs } }));
+  useCourseMutation(event, (pairs: { before: string; after: string }[]) => call(courses.replacePrerequisites, { params: { event }, body: { pairs } }));

@@ -1,5 +1,6 @@
 import { useRef, useState } from 'react';
-import { MAX_UPLOAD, type materialKinds, type Talk } from '@shared/features/talks/talks.contract';
+import type { materialKinds, Talk } from '@shared/features/talks/talks.contract';
+import { MAX_UPLOAD } from '@shared/features/talks/talks-materials.contract';
 import { formatBytes } from '@/lib/format';
 import { fieldErrors, sentenceOf } from '@/lib/problem';
 import { useUpload } from './talks.queries';

@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto';
 import { readdirSync } from 'node:fs';
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import * as contract from '../../../shared/features/talks/talks.contract';
+import * as materials from '../../../shared/features/talks/talks-materials.contract';
 import type { EventDetail } from '../../../shared/features/events/events.contract';
 import { addDays } from '../../../shared/lib/time';
 import { env } from '../../../server/env';
@@ -28,7 +29,7 @@ beforeEach(async () => {
 });
 
 const ofTalk = () => ({ params: { event: event.slug, talk } });
-const upload = (client: Client, content: Buffer, name: string, kind: 'slides' | 'notes' = 'slides') => client.call(contract.uploadMaterial, { ...ofTalk(), body: { kind }, file: { field: 'file', name, content } });
+const upload = (client: Client, content: Buffer, name: string, kind: 'slides' | 'notes' = 'slides') => client.call(materials.uploadMaterial, { ...ofTalk(), body: { kind }, file: { field: 'file', name, content } });
 const address = (file: string) => `/api/events/${event.slug}/materials/${file}`;
 const PNG = Buffer.from('iVBORw0KGgoAAAANSUhEUgAAAAEAAAABCAYAAAAfFcSJAAAADUlEQVR42mNk+M9QDwADhgGAWjR9awAAAABJRU5ErkJggg==', 'base64');
 
@@ -54,13 +55,13 @@ describe('C3 what is taken', () => {
 
   it('more than the limit is refused while it arrives', async () => {
     const before = kept();
-    const refused = await upload(speaker, Buffer.concat([pdf, Buffer.alloc(contract.MAX_UPLOAD)]), 'big.pdf');
+    const refused = await upload(speaker, Buffer.concat([pdf, Buffer.alloc(materials.MAX_UPLOAD)]), 'big.pdf');
     expect(refused.status).toBe(413);
     expect(kept()).toBe(before);
   });
 
   it('without a file it says so; to another person’s talk it is not found; nobody gets 401', async () => {
-    const empty = await speaker.call(contract.uploadMaterial, { ...ofTalk(), body: { kind: 'slides' } });
+    const empty = await speaker.call(materials.uploadMaterial, { ...ofTalk(), body: { kind: 'slides' } });
     expect(problemOf(empty).fields).toEqual({ file: 'Choose a file.' });
     const other = await t.signIn(await buildAccount());
     const before = kept();
@@ -95,7 +96,8 @@ describe('C3 versions', () => {
   });
 });
 
-const bytes = (res: NodeJS.ReadableStream, done: (error: Error | null, body: Buffer) => void) => {
+const bytes = (answer: unknown, done: (error: Error | null, body: Buffer) => void) => {
+  const res = answer as NodeJS.ReadableStream;
   const parts: Buffer[] = [];
   res.on('data', (part: Buffer) => parts.push(part));
   res.on('end', () => done(null, Buffer.concat(parts)));
@@ -115,7 +117,7 @@ describe('C3 who may see it', () => {
     if (state === 'accepted') await organiser.call(contract.decideTalk, { ...ofTalk(), version, body: { decision: 'accepted' } });
     const { body } = await upload(speaker, pdf, 'a.pdf');
     const material = body.materials[0] as contract.Material;
-    const set = await speaker.call(contract.setMaterialAccess, { params: { event: event.slug, talk, material: material.id }, version: material.version, body: { visibility, visibleFrom, licence: 'cc_by' } });
+    const set = await speaker.call(materials.setMaterialAccess, { params: { event: event.slug, talk, material: material.id }, version: material.version, body: { visibility, visibleFrom, licence: 'cc_by' } });
     expect(set.status, JSON.stringify(set.body)).toBe(200);
     const account = await buildAccount();
     knowParticipantsBy(async (_event, id) => id === account.id);
@@ -129,17 +131,17 @@ describe('C3 who may see it', () => {
     const material = body.materials[0] as contract.Material;
     const at = { params: { event: event.slug, talk, material: material.id }, body: { visibility: 'public' as const, visibleFrom: null, licence: 'cc_by' as const } };
     const other = await t.signIn(await buildAccount());
-    expect((await other.call(contract.setMaterialAccess, { ...at, version: material.version })).status).toBe(404);
-    expect((await speaker.call(contract.setMaterialAccess, at)).status).toBe(428);
-    expect((await speaker.call(contract.setMaterialAccess, { ...at, version: material.version })).status).toBe(200);
-    expect((await speaker.call(contract.setMaterialAccess, { ...at, version: material.version })).status).toBe(412);
-    expect((await speaker.call(contract.setMaterialAccess, { ...at, version: material.version + 1, body: { ...at.body, licence: 'mine' } })).status).toBe(422);
+    expect((await other.call(materials.setMaterialAccess, { ...at, version: material.version })).status).toBe(404);
+    expect((await speaker.call(materials.setMaterialAccess, at)).status).toBe(428);
+    expect((await speaker.call(materials.setMaterialAccess, { ...at, version: material.version })).status).toBe(200);
+    expect((await speaker.call(materials.setMaterialAccess, { ...at, version: material.version })).status).toBe(412);
+    expect((await speaker.call(materials.setMaterialAccess, { ...at, version: material.version + 1, body: { ...at.body, licence: 'mine' } })).status).toBe(422);
   });
 });
 
 describe('recording', () => {
   it('is agreed to by the speaker only, can be withdrawn, and the history stays', async () => {
-    const set = (client: Client, consent: boolean) => client.call(contract.setRecordingConsent, { ...ofTalk(), body: { consent } });
+    const set = (client: Client, consent: boolean) => client.call(materials.setRecordingConsent, { ...ofTalk(), body: { consent } });
     expect((await set(organiser, true)).status).toBe(403);
     expect((await set(speaker, true)).body.recordingConsent).toBe(true);
     expect((await set(speaker, true)).body.recordingConsent).toBe(true);

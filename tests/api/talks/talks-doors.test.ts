@@ -1,5 +1,7 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import * as contract from '../../../shared/features/talks/talks.contract';
+import * as invitation from '../../../shared/features/talks/talks-invitation.contract';
+import * as stay from '../../../shared/features/talks/talks-stay.contract';
 import type { EventDetail } from '../../../shared/features/events/events.contract';
 import { buildAccount } from '../../support/build';
 import { buildEvent } from '../../support/build-events';
@@ -134,7 +136,7 @@ describe('lists', () => {
   it('filter by state, missing part, title and name without accents', async () => {
     const author = await t.signIn(await buildAccount({ givenName: 'Khôi', familyName: 'Ngô Đình' }));
     const one = await author.call(contract.submitTalk, { ...inEvent(), body: { ...abstract, title: 'On 100% of $h_1$' } });
-    await organiser.call(contract.inviteSpeaker, { ...inEvent(), body: { email: 'lena@example.org', givenName: 'Lena', familyName: 'Ørsted', minutes: 50 } });
+    await organiser.call(invitation.inviteSpeaker, { ...inEvent(), body: { email: 'lena@example.org', givenName: 'Lena', familyName: 'Ørsted', minutes: 50 } });
     const titles = async (query: object) => (await organiser.call(contract.listTalks, { ...inEvent(), query })).body.items.map((row) => row.title);
     expect(await titles({})).toEqual(['Title to follow', 'On 100% of $h_1$']);
     expect(await titles({ state: 'submitted' })).toEqual(['On 100% of $h_1$']);
@@ -154,10 +156,10 @@ describe('lists', () => {
 
   it('the stage is told to those who have a part, to nobody else', async () => {
     const { speaker } = await submitted(t, event.slug);
-    expect((await speaker.call(contract.readStage, inEvent())).body).toMatchObject({ slug: event.slug, rooms: [{ name: 'Great Hall', capacity: 120 }, { name: 'Ivar' }] });
+    expect((await speaker.call(stay.readStage, inEvent())).body).toMatchObject({ slug: event.slug, rooms: [{ name: 'Great Hall', capacity: 120 }, { name: 'Ivar' }] });
     const other = await t.signIn(await buildAccount());
-    expect((await other.call(contract.readStage, inEvent())).status).toBe(404);
-    expect((await other.call(contract.readMyPresence, inEvent())).status).toBe(404);
+    expect((await other.call(stay.readStage, inEvent())).status).toBe(404);
+    expect((await other.call(stay.readMyPresence, inEvent())).status).toBe(404);
   });
 });
 
@@ -166,9 +168,9 @@ describe('letters', () => {
     const person = { email: 'owes@example.org', givenName: 'Ow', familyName: 'Es', part: 'speaker' as const };
     await organiser.call(contract.createTalk, { ...inEvent(), body: { ...structure, kind: 'invited', minutes: 50, title: 'Kites and $\\Delta$', people: [person] } });
     await submitted(t, event.slug);
-    expect((await reviewer.call(contract.remindSpeakers, { ...inEvent(), body: {} })).status).toBe(403);
-    await organiser.call(contract.remindSpeakers, { ...inEvent(), body: {} });
-    await organiser.call(contract.remindSpeakers, { ...inEvent(), body: {} });
+    expect((await reviewer.call(invitation.remindSpeakers, { ...inEvent(), body: {} })).status).toBe(403);
+    await organiser.call(invitation.remindSpeakers, { ...inEvent(), body: {} });
+    await organiser.call(invitation.remindSpeakers, { ...inEvent(), body: {} });
     await t.runJobs();
     expect(t.mail.map((mail) => [mail.to, mail.subject])).toEqual([['owes@example.org', 'Your abstract: Conference on Lattices']]);
     expect(t.mail[0]?.text).toContain('“Kites and Δ”');

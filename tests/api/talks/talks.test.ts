@@ -1,5 +1,9 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import * as contract from '../../../shared/features/talks/talks.contract';
+import * as courses from '../../../shared/features/talks/talks-courses.contract';
+import * as invitation from '../../../shared/features/talks/talks-invitation.contract';
+import * as materials from '../../../shared/features/talks/talks-materials.contract';
+import * as stay from '../../../shared/features/talks/talks-stay.contract';
 import type { EventDetail } from '../../../shared/features/events/events.contract';
 import { buildAccount } from '../../support/build';
 import { buildEvent } from '../../support/build-events';
@@ -24,7 +28,7 @@ const problem = (answer: { body: unknown }) => answer.body as { detail: string; 
 
 async function invited(): Promise<{ speaker: Client; talk: string; token: string }> {
   const at = { params: { event: event.slug } };
-  const talk = await organiser.call(contract.inviteSpeaker, { ...at, body: invitee });
+  const talk = await organiser.call(invitation.inviteSpeaker, { ...at, body: invitee });
   expect(talk.status, JSON.stringify(talk.body)).toBe(200);
   await t.runJobs();
   const token = /speaker-invitation\/([\w-]+)/.exec(t.mail[0]?.text ?? '')?.[1] ?? '';
@@ -35,14 +39,14 @@ describe('B5 C2 an invited speaker', () => {
   it('follows the link, accepts, tells the stay, writes and hands in the abstract', async () => {
     const { speaker, talk, token } = await invited();
     expect(t.mail[0]).toMatchObject({ to: 'lena@example.org', subject: 'Invitation to speak: Conference on Lattices' });
-    const offer = await speaker.call(contract.readSpeakerInvitation, { params: { token } });
+    const offer = await speaker.call(invitation.readSpeakerInvitation, { params: { token } });
     expect(offer.body).toMatchObject({ name: 'Lena Ørsted', hasPassword: false, answer: 'invited' });
-    const noPassword = await speaker.call(contract.answerSpeakerInvitation, { params: { token }, body: { answer: 'accepted' } });
+    const noPassword = await speaker.call(invitation.answerSpeakerInvitation, { params: { token }, body: { answer: 'accepted' } });
     expect(problem(noPassword).fields).toHaveProperty('password');
-    const accepted = await speaker.call(contract.answerSpeakerInvitation, { params: { token }, body: { answer: 'accepted', password: 'kites above the fjord' } });
+    const accepted = await speaker.call(invitation.answerSpeakerInvitation, { params: { token }, body: { answer: 'accepted', password: 'kites above the fjord' } });
     expect(accepted.body.session.account?.email).toBe('lena@example.org');
     const at = { params: { event: event.slug, talk } };
-    const presence = await speaker.call(contract.saveMyPresence, { params: { event: event.slug }, version: 0, body: { arrivesAt: '2027-07-05T08:00', leavesAt: '2027-07-06T18:00', blocked: [], wishes: '' } });
+    const presence = await speaker.call(stay.saveMyPresence, { params: { event: event.slug }, version: 0, body: { arrivesAt: '2027-07-05T08:00', leavesAt: '2027-07-06T18:00', blocked: [], wishes: '' } });
     expect(presence.status, JSON.stringify(presence.body)).toBe(200);
     const before = (await speaker.call(contract.readTalk, at)).body;
     const saved = await speaker.call(contract.saveAbstract, { ...at, version: before.version, body: { ...abstract, abstract: 'By \\textsc{hand}.' } });
@@ -89,11 +93,11 @@ describe('C3 slides', () => {
     const author = await t.signIn(await buildAccount());
     const talk = (await author.call(contract.submitTalk, { params: { event: event.slug }, body: abstract })).body.id;
     const at = { params: { event: event.slug, talk }, body: { kind: 'slides' as const } };
-    const first = await author.call(contract.uploadMaterial, { ...at, file: { field: 'file', name: 'a.pdf', content: pdf } });
+    const first = await author.call(materials.uploadMaterial, { ...at, file: { field: 'file', name: 'a.pdf', content: pdf } });
     expect(first.status, JSON.stringify(first.body)).toBe(200);
-    const second = await author.call(contract.uploadMaterial, { ...at, file: { field: 'file', name: 'ünïcode "b".pdf', content: pdf } });
+    const second = await author.call(materials.uploadMaterial, { ...at, file: { field: 'file', name: 'ünïcode "b".pdf', content: pdf } });
     expect(second.body.materials[0]?.versions.map((v) => [v.number, v.type])).toEqual([[2, 'application/pdf'], [1, 'application/pdf']]);
-    const fake = await author.call(contract.uploadMaterial, { ...at, file: { field: 'file', name: 'evil.pdf', content: Buffer.from('<script>alert(1)</script>') } });
+    const fake = await author.call(materials.uploadMaterial, { ...at, file: { field: 'file', name: 'evil.pdf', content: Buffer.from('<script>alert(1)</script>') } });
     expect(fake.status).toBe(415);
     const file = second.body.materials[0]?.versions[0]?.id ?? '';
     const download = await author.get(`/api/events/${event.slug}/materials/${file}`);
@@ -109,10 +113,10 @@ describe('C4 courses', () => {
   it('makes lectures in order and refuses a circle of prerequisites', async () => {
     const lecturer = { email: 'prof@example.org', givenName: 'Ada', familyName: 'Quist', part: 'speaker' as const };
     const body = { letter: 'A', title: 'Substitution tilings', shortTitle: 'Tilings', minNights: 1, maxPerDay: 1, lectures: 3, minutes: 50, exerciseMinutes: 90, lecturers: [lecturer], tutors: [] };
-    const course = await organiser.call(contract.createCourse, { params: { event: event.slug }, body });
+    const course = await organiser.call(courses.createCourse, { params: { event: event.slug }, body });
     expect(course.body.lectures.map((l) => l.number)).toEqual([1, 2, 3]);
     const [a, b] = course.body.lectures.map((l) => l.talkId) as [string, string];
-    const circle = await organiser.call(contract.replacePrerequisites, { params: { event: event.slug }, body: { pairs: [{ before: a, after: b }, { before: b, after: a }] } });
+    const circle = await organiser.call(courses.replacePrerequisites, { params: { event: event.slug }, body: { pairs: [{ before: a, after: b }, { before: b, after: a }] } });
     expect(circle.status).toBe(409);
     expect(problem(circle).detail).toContain('closes a circle');
   });
