@@ -52,8 +52,9 @@ export async function seedRegistrations(cast: Cast, events: { school: EventDetai
   const ago = (days: number): Date => new Date(now.getTime() - days * DAY);
   for (let n = 0; n < 30 * scale; n++) await settle(await take(workshop, crowd[(100 + n) % crowd.length] as PersonView, n, ago(170 - (n % 90))), ago(169 - (n % 90)));
   for (let n = 0; n < 74 * scale; n++) {
-    const id = await take(conference, crowd[n] as PersonView, n, ago(140 - ((n * 7) % 120)));
-    if (n % 12 !== 5) await settle(id, ago(139 - ((n * 7) % 120)));
+    const unpaid = n % 12 === 5;
+    const id = await take(conference, crowd[n] as PersonView, n, unpaid ? ago(1) : ago(140 - ((n * 7) % 120)));
+    if (!unpaid) await settle(id, ago(139 - ((n * 7) % 120)));
   }
   await settle(await take(conference, by.participant, 3, ago(50)), ago(50));
   await settle(await take(conference, by.chair, 4, ago(48)), ago(48));
@@ -84,8 +85,10 @@ async function seedApplications(cast: Cast, school: EventDetail, now: Date, scal
     const application = items.find((item) => item.accountId === person.id);
     const offered = application && n % 9 !== 7 && n % 11 !== 5 && n % 10 !== 6;
     if (!offered || n % 5 === 4) continue;
-    const id = await take(school, person, n, new Date(now.getTime() - ((n * 3) % 60) * DAY));
-    if (n % 3 !== 1) await settle(id, new Date(now.getTime() - ((n * 3) % 60) * DAY));
+    const paid = n % 3 !== 1;
+    const at = new Date(now.getTime() - (paid ? (n * 3) % 60 : 1) * DAY);
+    const id = await take(school, person, n, at);
+    if (paid) await settle(id, at);
   }
   const undecided = items.find((_item, n) => n % 9 === 7);
   const person = applicants.find((candidate) => candidate.id === undecided?.accountId);

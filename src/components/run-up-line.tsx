@@ -28,8 +28,8 @@ const WIDTH = 1392;
 /** Sun's declination over the days from `from` to `to`: past in ink, future in grey, the event thick, today a disc. */
 export function RunUpLine({ from, to, today, event, marks, sentence, tall = false }: Props) {
   const height = tall ? 72 : 54;
-  const base = tall ? 42 : 30;
-  const top = tall ? 14 : 8;
+  const base = tall ? 44 : 30;
+  const top = tall ? 24 : 8;
   const days = Math.max(1, daysBetween(from, to));
   const x = (date: string): number => Math.min(WIDTH, Math.max(0, (daysBetween(from, date) / days) * WIDTH));
   const declination = (date: string): number => sun(new Date(`${date}T12:00:00Z`)).declination;
@@ -65,7 +65,7 @@ export function RunUpLine({ from, to, today, event, marks, sentence, tall = fals
           <Link
             key={label.key}
             to={label.href}
-            className="quiet absolute -translate-x-1/2 text-center text-tile whitespace-nowrap"
+            className="quiet absolute text-center text-tile whitespace-nowrap"
             style={{ left: `${(label.x / WIDTH) * 100}%`, top: tall ? -28 : -18, transform: `translateX(${label.anchor})` }}
           >
             <b className={label.past ? 'font-normal text-ink3' : 'font-semibold text-ink'}>

@@ -66,7 +66,7 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
       undecidedApplications: undecided,
       oddities,
       failedMessages: failed,
-      speakersWithoutStay: later ? [...new Map(speakers.filter((person) => person.part === 'speaker' && !stays.has(person.accountId)).map((person) => [person.accountId, person.printedName])).values()] : [],
+      speakersWithoutStay: today < event.startsOn ? [...new Map(speakers.filter((person) => person.part === 'speaker' && !stays.has(person.accountId)).map((person) => [person.accountId, person.printedName])).values()] : [],
       grants,
     }),
     places,

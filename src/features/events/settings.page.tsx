@@ -94,7 +94,7 @@ function NextSteps({ event }: { event: EventDetail }) {
       {event.nextStates.slice(1).map((step) => (
         <Button key={step.to} onClick={() => setAsked(step)}>{verbs[step.to]}…</Button>
       ))}
-      {forward && <Button variant="primary" onClick={() => setAsked(forward)}>{verbs[forward.to]}…</Button>}
+      {forward && <Button variant={forward.missing.length === 0 ? 'primary' : 'secondary'} onClick={() => setAsked(forward)}>{verbs[forward.to]}…</Button>}
       <Dialog open={asked !== undefined} onClose={() => setAsked(undefined)} title={asked ? verbs[asked.to] : ''}>
         {asked && (
           <div className="grid gap-4">
