@@ -1,11 +1,14 @@
+import { ACCENTS, STYLES, SYMBOLS, type Style } from './latex-signs';
 import { plainMath } from './plain-math';
 
 /**
  * The part of LaTeX that titles and abstracts may use: paragraphs, mathematics between $ $, \( \), \[ \], $$ $$, and a
  * few commands for text. Pure and linear in the length of the source; mathematics itself is left to KaTeX.
  */
-export type Style = 'plain' | 'emph' | 'bold' | 'code';
-export type Segment = { type: 'text'; text: string; style: Style } | { type: 'math'; tex: string; display: boolean; line: number } | { type: 'unknown'; source: string };
+export type Segment =
+  | { type: 'text'; text: string; style: Style }
+  | { type: 'math'; tex: string; display: boolean; line: number }
+  | { type: 'unknown'; source: string };
 
 export interface LatexProblem {
   /** From 1. */
@@ -30,14 +33,6 @@ export interface LatexDocument {
 }
 
 export const MAX_ABSTRACT = 8000;
-
-const STYLES: Record<string, Style> = { emph: 'emph', textit: 'emph', textbf: 'bold', texttt: 'code', text: 'plain', textrm: 'plain', mbox: 'plain' };
-const SYMBOLS: Record<string, string> = {
-  '%': '%', '&': '&', '#': '#', _: '_', '{': '{', '}': '}', $: '$', ' ': ' ', ',': ' ', ';': ' ', '-': '', '/': '',
-  ldots: '…', dots: '…', textendash: '–', textemdash: '—', S: '§', ss: 'ß', ae: 'æ', AE: 'Æ', oe: 'œ', OE: 'Œ', o: 'ø', O: 'Ø', l: 'ł', L: 'Ł', aa: 'å', AA: 'Å', i: 'ı', LaTeX: 'LaTeX', TeX: 'TeX', quad: '  ',
-};
-/** Combining marks of accent commands (LaTeX2e text accents). */
-const ACCENTS: Record<string, string> = { "'": '\u0301', '`': '\u0300', '^': '\u0302', '"': '\u0308', '~': '\u0303', '=': '\u0304', '.': '\u0307', u: '\u0306', v: '\u030C', H: '\u030B', c: '\u0327', k: '\u0328', r: '\u030A', d: '\u0323', b: '\u0331' };
 
 /** Reads the source into paragraphs; whatever is not understood is named with its line and a remedy. */
 export function parseLatex(source: string): LatexDocument {
@@ -136,7 +131,8 @@ class Reader {
 
   private close(): void {
     this.endText();
-    if (this.styles.length === 1) this.problem('}', 'A brace } closes nothing. Remove it, or write \\} for the sign itself.');
+    if (this.styles.length === 1)
+      this.problem('}', 'A brace } closes nothing. Remove it, or write \\} for the sign itself.');
     else this.styles.pop();
     this.at += 1;
   }
@@ -148,7 +144,8 @@ class Reader {
 
   private math(open: string, shut: string, display: boolean): void {
     let end = this.at + open.length;
-    while (end < this.source.length && !this.source.startsWith(shut, end)) end += this.source[end] === '\\' && shut !== '\\)' && shut !== '\\]' ? 2 : 1;
+    while (end < this.source.length && !this.source.startsWith(shut, end))
+      end += this.source[end] === '\\' && shut !== '\\)' && shut !== '\\]' ? 2 : 1;
     this.endText();
     if (end >= this.source.length) {
       this.problem(open, `Mathematics begins with ${open} and does not end. Add ${shut} where it ends.`);
@@ -169,7 +166,10 @@ class Reader {
     if (this.source.startsWith('\\(', this.at)) return this.math('\\(', '\\)', false);
     if (this.source.startsWith('\\[', this.at)) return this.math('\\[', '\\]', true);
     if (this.source.startsWith('\\\\', this.at)) return this.put(' ', 2);
-    const name = /^\\([A-Za-z]+)\*?/.exec(this.source.slice(this.at, this.at + 60))?.[1] ?? this.source[this.at + 1] ?? '';
+    const name =
+      /^\\([A-Za-z]+)\*?/.exec(this.source.slice(this.at, this.at + 60))?.[1] ??
+      this.source[this.at + 1] ??
+      '';
     const length = 1 + name.length;
     const accent = ACCENTS[name];
     if (accent && this.accent(accent, length, name)) return;
@@ -195,7 +195,8 @@ class Reader {
   private accent(mark: string, length: number, name: string): boolean {
     const letter = /[A-Za-z]/.test(name);
     const rest = this.source.slice(this.at + length, this.at + length + 8);
-    const match = /^\{\\?(\p{L})\}/u.exec(rest) ?? (letter ? /^ +(\p{L})/u.exec(rest) : /^\\?(\p{L})/u.exec(rest));
+    const match =
+      /^\{\\?(\p{L})\}/u.exec(rest) ?? (letter ? /^ +(\p{L})/u.exec(rest) : /^\\?(\p{L})/u.exec(rest));
     if (!match) return false;
     const base = match[1] === 'ı' || match[0].includes('\\i') ? 'i' : (match[1] as string);
     this.put((base + mark).normalize('NFC'), length + match[0].length);
@@ -204,7 +205,8 @@ class Reader {
 
   private unknown(name: string, length: number): void {
     this.endText();
-    const argument = /^\{[^{}\n]{0,60}\}/.exec(this.source.slice(this.at + length, this.at + length + 64))?.[0] ?? '';
+    const argument =
+      /^\{[^{}\n]{0,60}\}/.exec(this.source.slice(this.at + length, this.at + length + 64))?.[0] ?? '';
     const source = this.source.slice(this.at, this.at + length + argument.length);
     this.problem(`\\${name}`, remedy(name));
     this.current.push({ type: 'unknown', source });
@@ -219,10 +221,14 @@ class Reader {
 
 function remedy(name: string): string {
   const known = `\\${name} is not known here.`;
-  if (['textsc', 'textsl', 'underline'].includes(name)) return `${known} Use \\emph, or write the word plainly.`;
-  if (['begin', 'end'].includes(name)) return `${known} Write paragraphs with a blank line between them, and displayed mathematics between \\[ and \\].`;
-  if (['cite', 'ref', 'label', 'bibitem', 'footnote'].includes(name)) return `${known} Put references in the field below the abstract.`;
-  if (['newcommand', 'def', 'input', 'include', 'usepackage'].includes(name)) return `${known} Write the text out; definitions and files are not read.`;
+  if (['textsc', 'textsl', 'underline'].includes(name))
+    return `${known} Use \\emph, or write the word plainly.`;
+  if (['begin', 'end'].includes(name))
+    return `${known} Write paragraphs with a blank line between them, and displayed mathematics between \\[ and \\].`;
+  if (['cite', 'ref', 'label', 'bibitem', 'footnote'].includes(name))
+    return `${known} Put references in the field below the abstract.`;
+  if (['newcommand', 'def', 'input', 'include', 'usepackage'].includes(name))
+    return `${known} Write the text out; definitions and files are not read.`;
   return `${known} If it is mathematics, put it between $ and $; else write the word plainly.`;
 }
 
@@ -231,7 +237,13 @@ export function plainLatex(source: string): string {
   return parseLatex(source)
     .paragraphs.map((segments) =>
       segments
-        .map((segment) => (segment.type === 'math' ? plainMath(segment.tex) : segment.type === 'text' ? segment.text : segment.source))
+        .map((segment) =>
+          segment.type === 'math'
+            ? plainMath(segment.tex)
+            : segment.type === 'text'
+              ? segment.text
+              : segment.source,
+        )
         .join('')
         .replace(/\s+/g, ' ')
         .trim(),
@@ -242,7 +254,9 @@ export function plainLatex(source: string): string {
 /** Words as a reader counts them; a formula counts as one. */
 export function wordCount(source: string): number {
   const text = parseLatex(source)
-    .paragraphs.map((segments) => segments.map((segment) => (segment.type === 'text' ? segment.text : ' x ')).join(''))
+    .paragraphs.map((segments) =>
+      segments.map((segment) => (segment.type === 'text' ? segment.text : ' x ')).join(''),
+    )
     .join(' ');
   return text.split(/[\s\u00A0]+/).filter((word) => /[\p{L}\d]/u.test(word)).length;
 }

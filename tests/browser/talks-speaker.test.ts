@@ -21,7 +21,9 @@ beforeAll(async () => {
   const { buildAccount } = await import('../support/build');
   const event = await buildEvent();
   slug = event.slug;
-  await buildAccount({ email: 'organiser@example.org' }, [{ role: 'organiser', scope: 'event', scopeId: event.id }]);
+  await buildAccount({ email: 'organiser@example.org' }, [
+    { role: 'organiser', scope: 'event', scopeId: event.id },
+  ]);
 });
 afterAll(() => app.stop());
 
@@ -32,8 +34,15 @@ async function sendLetters(): Promise<void> {
   while ((await runDueJobs(reactions)) + (await dispatchMail()) > 0);
 }
 
-const expectNoViolation = async (on: Page) => expect((await new AxeBuilder({ page: on }).analyze()).violations.map((v) => `${v.id} ${v.nodes[0]?.html}`)).toEqual([]);
-const saved = (on: Page) => on.getByText(/Draft saved \d+:\d\d/).first().waitFor();
+const expectNoViolation = async (on: Page) =>
+  expect(
+    (await new AxeBuilder({ page: on }).analyze()).violations.map((v) => `${v.id} ${v.nodes[0]?.html}`),
+  ).toEqual([]);
+const saved = (on: Page) =>
+  on
+    .getByText(/Draft saved \d+:\d\d/)
+    .first()
+    .waitFor();
 
 describe('from the invitation to slides', () => {
   it('B5 the organiser invites by mail', async () => {
@@ -103,16 +112,27 @@ describe('from the invitation to slides', () => {
 
   it('C3 uploads slides with versions, and is told when the content is something else', async () => {
     const slides = page.locator('section', { has: page.getByRole('heading', { name: 'Slides' }) });
-    const file = (name: string, content: string) => ({ name, mimeType: 'application/pdf', buffer: Buffer.from(content) });
+    const file = (name: string, content: string) => ({
+      name,
+      mimeType: 'application/pdf',
+      buffer: Buffer.from(content),
+    });
     const pdf = '%PDF-1.4\n1 0 obj\n<<>>\nendobj\ntrailer\n<<>>\n%%EOF\n';
     await slides.locator('input[type=file]').setInputFiles(file('kites.pdf', pdf));
     await slides.getByRole('link', { name: 'kites.pdf' }).waitFor();
-    await slides.locator('input[type=file]').setInputFiles(file('page.pdf', '<html><script>alert(1)</script></html>'));
+    await slides
+      .locator('input[type=file]')
+      .setInputFiles(file('page.pdf', '<html><script>alert(1)</script></html>'));
     await slides.getByRole('alert').waitFor();
-    expect(await slides.getByRole('alert').textContent()).toContain('the content of this file is none of them');
+    expect(await slides.getByRole('alert').textContent()).toContain(
+      'the content of this file is none of them',
+    );
     await slides.locator('input[type=file]').setInputFiles(file('kites-2.pdf', pdf));
     await slides.getByRole('link', { name: 'kites-2.pdf' }).waitFor();
-    expect(await slides.locator('ol > li').allTextContents()).toEqual([expect.stringMatching(/^2kites-2\.pdf.*shown$/), expect.stringMatching(/^1kites\.pdf/)]);
+    expect(await slides.locator('ol > li').allTextContents()).toEqual([
+      expect.stringMatching(/^2kites-2\.pdf.*shown$/),
+      expect.stringMatching(/^1kites\.pdf/),
+    ]);
     const answered = page.waitForResponse(/\/recording$/);
     await page.getByLabel('May be recorded').check();
     await answered;

@@ -1,4 +1,5 @@
-import type { AbstractInput, Talk } from '@shared/features/talks/talks.contract';
+import type { Talk } from '@shared/features/talks/talks.contract';
+import type { AbstractInput } from '@shared/features/talks/talks-abstract.contract';
 import { usualMinutes } from '@shared/features/talks/talks.rules';
 import { conflict, forbidden, invalid, notFound } from '@shared/http/problem';
 import { localToInstant } from '@shared/lib/time';
@@ -16,11 +17,18 @@ import { canReadTalk, canWriteAbstract } from './talks.policy';
 import { readTalk, requireTalk, subjectOf } from './talks.service';
 
 /** Saves what was typed, also with mistakes in it: nothing a speaker writes is lost. */
-export async function saveAbstract(actor: Actor, eventId: string, talkId: string, version: number, input: AbstractInput): Promise<Talk> {
+export async function saveAbstract(
+  actor: Actor,
+  eventId: string,
+  talkId: string,
+  version: number,
+  input: AbstractInput,
+): Promise<Talk> {
   await transaction(async () => {
     const { talk, people } = await requireTalk(eventId, talkId);
     if (!canReadTalk(actor, subjectOf(talk, people))) throw notFound('This talk');
-    if (!canWriteAbstract(actor, subjectOf(talk, people))) throw forbidden('The abstract of this talk can’t be changed any more.');
+    if (!canWriteAbstract(actor, subjectOf(talk, people)))
+      throw forbidden('The abstract of this talk can’t be changed any more.');
     sameVersion(talk.version, version);
     talk.set(input);
     // An abstract that could not be printed any more counts as not handed in.
@@ -37,7 +45,12 @@ function refuseAbstract(input: AbstractText): void {
   if (Object.keys(errors).length > 0) throw invalid(errors);
 }
 
-export async function handInAbstract(actor: Actor, eventId: string, talkId: string, version: number): Promise<Talk> {
+export async function handInAbstract(
+  actor: Actor,
+  eventId: string,
+  talkId: string,
+  version: number,
+): Promise<Talk> {
   await transaction(async () => {
     const { talk, people } = await requireTalk(eventId, talkId);
     if (!canReadTalk(actor, subjectOf(talk, people))) throw notFound('This talk');
@@ -45,7 +58,14 @@ export async function handInAbstract(actor: Actor, eventId: string, talkId: stri
     sameVersion(talk.version, version);
     refuseAbstract(talk);
     await talk.update({ abstractAt: new Date() });
-    await recordAudit({ actor, action: 'talks.abstract_handed_in', subject: 'talk', subjectId: talkId, eventId, after: { title: talk.title } });
+    await recordAudit({
+      actor,
+      action: 'talks.abstract_handed_in',
+      subject: 'talk',
+      subjectId: talkId,
+      eventId,
+      after: { title: talk.title },
+    });
     await announce(abstractHandedIn, { talkId });
   });
   return readTalk(actor, eventId, talkId);
@@ -62,15 +82,42 @@ export async function readCall(slug: string, now: Date) {
 }
 
 /** A contributed talk in answer to the call. @throws 409 after the deadline, 422 for an abstract that can't be printed. */
-export async function submitTalk(actor: Actor, slug: string, input: AbstractInput, now = new Date()): Promise<Talk> {
+export async function submitTalk(
+  actor: Actor,
+  slug: string,
+  input: AbstractInput,
+  now = new Date(),
+): Promise<Talk> {
   const call = await readCall(slug, now);
   const event = await requireEvent(slug);
-  if (!call.open && !holds(actor, 'organiser', event.id)) throw conflict('talk.call_closed', 'The call for abstracts is closed.');
+  if (!call.open && !holds(actor, 'organiser', event.id))
+    throw conflict('talk.call_closed', 'The call for abstracts is closed.');
   refuseAbstract(input);
   const id = await transaction(async () => {
-    const talk = await TalkRow.create({ id: newId(), eventId: event.id, kind: 'contributed', ...usualMinutes.contributed, ...input, state: 'submitted', abstractAt: now });
-    await TalkPersonRow.create({ id: newId(), talkId: talk.id, accountId: actor.accountId, part: 'speaker', position: 0 });
-    await recordAudit({ actor, action: 'talks.submitted', subject: 'talk', subjectId: talk.id, eventId: event.id, after: { title: input.title } });
+    const talk = await TalkRow.create({
+      id: newId(),
+      eventId: event.id,
+      kind: 'contributed',
+      ...usualMinutes.contributed,
+      ...input,
+      state: 'submitted',
+      abstractAt: now,
+    });
+    await TalkPersonRow.create({
+      id: newId(),
+      talkId: talk.id,
+      accountId: actor.accountId,
+      part: 'speaker',
+      position: 0,
+    });
+    await recordAudit({
+      actor,
+      action: 'talks.submitted',
+      subject: 'talk',
+      subjectId: talk.id,
+      eventId: event.id,
+      after: { title: input.title },
+    });
     await announce(talkSubmitted, { talkId: talk.id });
     return talk.id;
   });

@@ -5,8 +5,21 @@ import { newId } from '@server/db/id';
 import { transaction } from '@server/db/transaction';
 import type { Actor } from '@server/http/authorize';
 import { announce } from '@server/jobs/job';
-import { accountById, ensureAccountForEmail, issueToken, peekToken, recordAudit, redeemToken, type PersonView } from '@server/features/accounts/accounts.service';
-import { hashPassword, openSession, refuseWeak, setPassword } from '@server/features/accounts/accounts-sign-in.service';
+import {
+  accountById,
+  ensureAccountForEmail,
+  issueToken,
+  peekToken,
+  recordAudit,
+  redeemToken,
+  type PersonView,
+} from '@server/features/accounts/accounts.service';
+import {
+  hashPassword,
+  openSession,
+  refuseWeak,
+  setPassword,
+} from '@server/features/accounts/accounts-sign-in.service';
 import { eventById } from '@server/features/events/events.service';
 import { invitationAnswered, speakerInvited } from './talks.jobs';
 import { PresenceRow, TalkPersonRow, TalkRow } from './talks.model';
@@ -30,7 +43,8 @@ export interface InviteInput {
 /** Invites a speaker: an account without a password where there is none, the talk as a draft, and a letter with a link. */
 export async function inviteSpeaker(actor: Actor, eventId: string, input: InviteInput): Promise<Talk> {
   if (!isOrganiser(actor, eventId)) throw forbidden();
-  if (input.kind === 'course_lecture') throw invalid({ kind: 'Lecturers are named when the course is made.' });
+  if (input.kind === 'course_lecture')
+    throw invalid({ kind: 'Lecturers are named when the course is made.' });
   const id = await transaction(async () => {
     const { email, givenName, familyName, affiliation } = input;
     const person = await ensureAccountForEmail({ email, givenName, familyName, affiliation });
@@ -49,9 +63,27 @@ export async function inviteSpeaker(actor: Actor, eventId: string, input: Invite
       references: [],
       needs: [],
     });
-    await TalkPersonRow.create({ id: newId(), talkId: talk.id, accountId: person.id, part: 'speaker', position: 0 });
-    const token = await issueToken({ purpose: PURPOSE, accountId: person.id, subjectId: talk.id, hours: DAYS * 24 });
-    await recordAudit({ actor, action: 'talks.speaker_invited', subject: 'talk', subjectId: talk.id, eventId, after: { name: person.printedName } });
+    await TalkPersonRow.create({
+      id: newId(),
+      talkId: talk.id,
+      accountId: person.id,
+      part: 'speaker',
+      position: 0,
+    });
+    const token = await issueToken({
+      purpose: PURPOSE,
+      accountId: person.id,
+      subjectId: talk.id,
+      hours: DAYS * 24,
+    });
+    await recordAudit({
+      actor,
+      action: 'talks.speaker_invited',
+      subject: 'talk',
+      subjectId: talk.id,
+      eventId,
+      after: { name: person.printedName },
+    });
     await announce(speakerInvited, { talkId: talk.id, accountId: person.id, token });
     return talk.id;
   });
@@ -96,23 +128,50 @@ export async function answerSpeakerInvitation(
   const person = (await peekToken(PURPOSE, token)).accountId as string;
   const setsPassword = input.answer === 'accepted' && !offered.hasPassword;
   if (setsPassword) {
-    if (!input.password) throw invalid({ password: 'Choose a password: it opens your pages for abstract, slides and travel.' });
+    if (!input.password)
+      throw invalid({ password: 'Choose a password: it opens your pages for abstract, slides and travel.' });
     refuseWeak(input.password, { email: offered.email, name: offered.name });
   }
   const passwordHash = setsPassword ? await hashPassword(input.password as string) : undefined;
   await transaction(async () => {
     await redeemToken(PURPOSE, token);
     const talk = (await TalkRow.findByPk(offered.talkId)) as TalkRow;
-    if (talk.invitation !== 'invited') throw conflict('talk.answered', `This invitation has been ${talk.invitation} already.`);
+    if (talk.invitation !== 'invited')
+      throw conflict('talk.answered', `This invitation has been ${talk.invitation} already.`);
     await talk.update({ invitation: input.answer, state: input.answer, decisionNote: input.note });
     if (passwordHash) await setPassword(person, passwordHash);
-    if (input.answer === 'accepted' && !(await PresenceRow.findOne({ where: { eventId: talk.eventId, accountId: person } }))) {
-      await PresenceRow.create({ id: newId(), eventId: talk.eventId, accountId: person, blocked: [], wishes: '' });
+    if (
+      input.answer === 'accepted' &&
+      !(await PresenceRow.findOne({ where: { eventId: talk.eventId, accountId: person } }))
+    ) {
+      await PresenceRow.create({
+        id: newId(),
+        eventId: talk.eventId,
+        accountId: person,
+        blocked: [],
+        wishes: '',
+      });
     }
     const who = { accountId: person, email: offered.email, printedName: offered.name, grants: [] };
-    await recordAudit({ actor: who, action: `talks.invitation_${input.answer}`, subject: 'talk', subjectId: talk.id, eventId: talk.eventId, after: { note: input.note } });
-    await announce(invitationAnswered, { talkId: talk.id, accountId: person, answer: input.answer, note: input.note });
+    await recordAudit({
+      actor: who,
+      action: `talks.invitation_${input.answer}`,
+      subject: 'talk',
+      subjectId: talk.id,
+      eventId: talk.eventId,
+      after: { note: input.note },
+    });
+    await announce(invitationAnswered, {
+      talkId: talk.id,
+      accountId: person,
+      answer: input.answer,
+      note: input.note,
+    });
   });
   if (passwordHash) await openSession(req, res, person);
-  return { accountId: passwordHash ? person : actor?.accountId, eventSlug: offered.eventSlug, talkId: offered.talkId };
+  return {
+    accountId: passwordHash ? person : actor?.accountId,
+    eventSlug: offered.eventSlug,
+    talkId: offered.talkId,
+  };
 }

@@ -3,7 +3,12 @@ import { transaction } from '@server/db/transaction';
 import { env } from '@server/env';
 import { on, type Reaction } from '@server/jobs/job';
 import { queueMessage } from '@server/mail/outbox';
-import { accountById, accountsById, holdersOf, type PersonView } from '@server/features/accounts/accounts.service';
+import {
+  accountById,
+  accountsById,
+  holdersOf,
+  type PersonView,
+} from '@server/features/accounts/accounts.service';
 import { deadlinesOf, eventById } from '@server/features/events/events.service';
 import { invitationAnswered, speakerInvited, talkDecided } from './talks.jobs';
 import { abstractReminderLetter, answerLetter, decisionLetter, speakerInvitationLetter } from './talks.mail';
@@ -29,7 +34,15 @@ export const talkReactions: readonly Reaction[] = [
       to: { name: person.printedName, address: person.email },
       replyTo: event.contactEmail,
       dedupKey: `talks.invitation:${talkId}:${accountId}`,
-      mail: speakerInvitationLetter({ name: person.printedName, event, kind: talk.kind, minutes: talk.minutes, questionMinutes: talk.questionMinutes, message: talk.invitationMessage, url: `${env.BASE_URL}/speaker-invitation/${token}` }),
+      mail: speakerInvitationLetter({
+        name: person.printedName,
+        event,
+        kind: talk.kind,
+        minutes: talk.minutes,
+        questionMinutes: talk.questionMinutes,
+        message: talk.invitationMessage,
+        url: `${env.BASE_URL}/speaker-invitation/${token}`,
+      }),
     });
   }),
   on(invitationAnswered, 'tell the organisers', async ({ talkId, accountId, answer, note }) => {
@@ -45,7 +58,14 @@ export const talkReactions: readonly Reaction[] = [
           subjectId: talkId,
           to: { name: organiser.printedName, address: organiser.email },
           dedupKey: `talks.answered:${talkId}:${organiser.id}:${answer}`,
-          mail: answerLetter({ organiser: organiser.printedName, speaker: speaker.printedName, event, answer, note, url: `${env.BASE_URL}/organise/${event.slug}/talks?talk=${talkId}` }),
+          mail: answerLetter({
+            organiser: organiser.printedName,
+            speaker: speaker.printedName,
+            event,
+            answer,
+            note,
+            url: `${env.BASE_URL}/organise/${event.slug}/talks?talk=${talkId}`,
+          }),
         });
       }
     });
@@ -64,7 +84,14 @@ export const talkReactions: readonly Reaction[] = [
           to: { name: person.printedName, address: person.email },
           replyTo: event.contactEmail,
           dedupKey: `talks.decision:${talkId}:${person.id}:${decision}`,
-          mail: decisionLetter({ name: person.printedName, event, title: talk.title, decision, note, url: `${env.BASE_URL}/events/${event.slug}/my-talks/${talkId}` }),
+          mail: decisionLetter({
+            name: person.printedName,
+            event,
+            title: talk.title,
+            decision,
+            note,
+            url: `${env.BASE_URL}/events/${event.slug}/my-talks/${talkId}`,
+          }),
         });
       }
     });
@@ -76,7 +103,9 @@ export async function remindSpeakers(eventId: string, now: Date): Promise<number
   const event = await eventById(eventId);
   const deadline = (await deadlinesOf(eventId)).find((row) => row.kind === 'abstracts_due');
   const until = deadline ? localToInstant(deadline.date, deadline.time, event.timeZone) : null;
-  const owing = (await talksForProgramme(eventId)).filter((talk) => owesAbstract(talk.kind) && talk.abstractAt === null && talk.state === 'accepted');
+  const owing = (await talksForProgramme(eventId)).filter(
+    (talk) => owesAbstract(talk.kind) && talk.abstractAt === null && talk.state === 'accepted',
+  );
   const persons = await accountsById(owing.flatMap((talk) => talk.people.map((person) => person.accountId)));
   let written = 0;
   await transaction(async () => {
@@ -91,7 +120,13 @@ export async function remindSpeakers(eventId: string, now: Date): Promise<number
           to: { name: person.printedName, address: person.email },
           replyTo: event.contactEmail,
           dedupKey: `talks.reminder:${talk.id}:${accountId}:${now.toISOString().slice(0, 10)}`,
-          mail: abstractReminderLetter({ name: person.printedName, event, title: talk.title, until, url: `${env.BASE_URL}/events/${event.slug}/my-talks/${talk.id}` }),
+          mail: abstractReminderLetter({
+            name: person.printedName,
+            event,
+            title: talk.title,
+            until,
+            url: `${env.BASE_URL}/events/${event.slug}/my-talks/${talk.id}`,
+          }),
         });
         written += 1;
       }

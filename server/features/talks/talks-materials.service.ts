@@ -12,10 +12,21 @@ import { ConsentRow, MaterialRow, MaterialVersionRow, TalkPersonRow, TalkRow } f
 import { canConsent, canDownload, canReadTalk, canUpload } from './talks.policy';
 import { readTalk, requireTalk, subjectOf } from './talks.service';
 
-const SLIDES = ['application/pdf', 'application/vnd.openxmlformats-officedocument.presentationml.presentation', 'application/vnd.oasis.opendocument.presentation', 'application/zip'];
+const SLIDES = [
+  'application/pdf',
+  'application/vnd.openxmlformats-officedocument.presentationml.presentation',
+  'application/vnd.oasis.opendocument.presentation',
+  'application/zip',
+];
 
 /** Adds a version; earlier ones stay. @throws 404/403 for others' talks, 415 for a kind of file that does not fit. */
-export async function uploadMaterial(actor: Actor, eventId: string, talkId: string, kind: 'slides' | 'notes' | 'problems', file: ReceivedFile | undefined): Promise<Talk> {
+export async function uploadMaterial(
+  actor: Actor,
+  eventId: string,
+  talkId: string,
+  kind: 'slides' | 'notes' | 'problems',
+  file: ReceivedFile | undefined,
+): Promise<Talk> {
   const { talk, people } = await requireTalk(eventId, talkId);
   if (!canReadTalk(actor, subjectOf(talk, people))) throw notFound('This talk');
   if (!canUpload(actor, subjectOf(talk, people))) throw forbidden('Nothing can be uploaded to this talk.');
@@ -28,11 +39,37 @@ export async function uploadMaterial(actor: Actor, eventId: string, talkId: stri
   await transaction(async () => {
     const material =
       (await MaterialRow.findOne({ where: { talkId, kind } })) ??
-      (await MaterialRow.create({ id: newId(), talkId, kind, visibility: kind === 'slides' ? 'organisers' : 'participants', licence: 'all_rights' }));
-    const last = (await MaterialVersionRow.max<number, MaterialVersionRow>('number', { where: { materialId: material.id } })) ?? 0;
+      (await MaterialRow.create({
+        id: newId(),
+        talkId,
+        kind,
+        visibility: kind === 'slides' ? 'organisers' : 'participants',
+        licence: 'all_rights',
+      }));
+    const last =
+      (await MaterialVersionRow.max<number, MaterialVersionRow>('number', {
+        where: { materialId: material.id },
+      })) ?? 0;
     const { originalName, bytes, sha256, type } = file;
-    await MaterialVersionRow.create({ id: newId(), materialId: material.id, number: last + 1, fileName: originalName, bytes, sha256, type, storedName, uploadedBy: actor.accountId });
-    await recordAudit({ actor, action: 'talks.material_uploaded', subject: 'talk', subjectId: talkId, eventId, after: { kind, number: last + 1, fileName: originalName, sha256 } });
+    await MaterialVersionRow.create({
+      id: newId(),
+      materialId: material.id,
+      number: last + 1,
+      fileName: originalName,
+      bytes,
+      sha256,
+      type,
+      storedName,
+      uploadedBy: actor.accountId,
+    });
+    await recordAudit({
+      actor,
+      action: 'talks.material_uploaded',
+      subject: 'talk',
+      subjectId: talkId,
+      eventId,
+      after: { kind, number: last + 1, fileName: originalName, sha256 },
+    });
   });
   return readTalk(actor, eventId, talkId);
 }
@@ -43,7 +80,11 @@ export async function setMaterialAccess(
   talkId: string,
   materialId: string,
   version: number,
-  input: { visibility: 'organisers' | 'participants' | 'public'; visibleFrom: string | null; licence: 'all_rights' | 'cc_by' | 'cc_by_sa' | 'cc_by_nc' },
+  input: {
+    visibility: 'organisers' | 'participants' | 'public';
+    visibleFrom: string | null;
+    licence: 'all_rights' | 'cc_by' | 'cc_by_sa' | 'cc_by_nc';
+  },
 ): Promise<Talk & { version: number }> {
   await transaction(async () => {
     const { talk, people } = await requireTalk(eventId, talkId);
@@ -54,19 +95,34 @@ export async function setMaterialAccess(
     sameVersion(material.version, version);
     const before = { visibility: material.visibility, licence: material.licence };
     await material.update(input);
-    await recordAudit({ actor, action: 'talks.material_access', subject: 'talk', subjectId: talkId, eventId, before, after: input });
+    await recordAudit({
+      actor,
+      action: 'talks.material_access',
+      subject: 'talk',
+      subjectId: talkId,
+      eventId,
+      before,
+      after: input,
+    });
   });
   return readTalk(actor, eventId, talkId);
 }
 
 /** Whether the reader takes part in the event; told by the registration, which is a higher feature (routes.ts). */
-const readers: { isParticipant(eventId: string, accountId: string): Promise<boolean> } = { isParticipant: async () => false };
+const readers: { isParticipant(eventId: string, accountId: string): Promise<boolean> } = {
+  isParticipant: async () => false,
+};
 export function knowParticipantsBy(isParticipant: typeof readers.isParticipant): void {
   readers.isParticipant = isParticipant;
 }
 
 /** The bytes of a version, after the policy. @throws 404 for everybody who may not see it. */
-export async function downloadMaterial(actor: Actor | null, eventId: string, versionId: string, now: Date): Promise<FileResponse> {
+export async function downloadMaterial(
+  actor: Actor | null,
+  eventId: string,
+  versionId: string,
+  now: Date,
+): Promise<FileResponse> {
   const version = await MaterialVersionRow.findByPk(versionId);
   const material = version && (await MaterialRow.findByPk(version.materialId));
   const talk = material && (await TalkRow.findOne({ where: { id: material.talkId, eventId } }));
@@ -79,22 +135,50 @@ export async function downloadMaterial(actor: Actor | null, eventId: string, ver
     eventPublic: event.state !== 'draft',
   };
   if (!canDownload(actor, subjectOf(talk, people), material, reader)) throw notFound('This file');
-  return fileResponse({ storedName: version.storedName, downloadName: version.fileName, type: version.type, inline: version.type === 'application/pdf' });
+  return fileResponse({
+    storedName: version.storedName,
+    downloadName: version.fileName,
+    type: version.type,
+    inline: version.type === 'application/pdf',
+  });
 }
 
 /** Version of the sentence that is agreed to; a change of it needs a new consent. */
 const CONSENT_TEXT = 'recording/1';
 
 /** Gives or withdraws consent to recording; the history is kept. Only the speaker can. */
-export async function setRecordingConsent(actor: Actor, eventId: string, talkId: string, consent: boolean): Promise<Talk> {
+export async function setRecordingConsent(
+  actor: Actor,
+  eventId: string,
+  talkId: string,
+  consent: boolean,
+): Promise<Talk> {
   await transaction(async () => {
     const { talk, people } = await requireTalk(eventId, talkId);
     if (!canReadTalk(actor, subjectOf(talk, people))) throw notFound('This talk');
-    if (!canConsent(actor, subjectOf(talk, people))) throw forbidden('Only the speaker can agree to a recording.');
-    const open = await ConsentRow.findOne({ where: { accountId: actor.accountId, purpose: 'recording', subjectId: talkId, withdrawnAt: null } });
-    if (consent && !open) await ConsentRow.create({ id: newId(), accountId: actor.accountId, purpose: 'recording', subjectId: talkId, textVersion: CONSENT_TEXT, givenAt: new Date() });
+    if (!canConsent(actor, subjectOf(talk, people)))
+      throw forbidden('Only the speaker can agree to a recording.');
+    const open = await ConsentRow.findOne({
+      where: { accountId: actor.accountId, purpose: 'recording', subjectId: talkId, withdrawnAt: null },
+    });
+    if (consent && !open)
+      await ConsentRow.create({
+        id: newId(),
+        accountId: actor.accountId,
+        purpose: 'recording',
+        subjectId: talkId,
+        textVersion: CONSENT_TEXT,
+        givenAt: new Date(),
+      });
     if (!consent && open) await open.update({ withdrawnAt: new Date() });
-    await recordAudit({ actor, action: 'talks.recording_consent', subject: 'talk', subjectId: talkId, eventId, after: { consent } });
+    await recordAudit({
+      actor,
+      action: 'talks.recording_consent',
+      subject: 'talk',
+      subjectId: talkId,
+      eventId,
+      after: { consent },
+    });
   });
   return readTalk(actor, eventId, talkId);
 }

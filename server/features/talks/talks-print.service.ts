@@ -29,7 +29,14 @@ function formulaProblem({ paragraphs }: LatexDocument): { line: number; sentence
   for (const segment of paragraphs.flat()) {
     if (segment.type !== 'math') continue;
     try {
-      katex.renderToString(segment.tex, { displayMode: segment.display, throwOnError: true, trust: false, strict: 'ignore', maxExpand: 200, maxSize: 20 });
+      katex.renderToString(segment.tex, {
+        displayMode: segment.display,
+        throwOnError: true,
+        trust: false,
+        strict: 'ignore',
+        maxExpand: 200,
+        maxSize: 20,
+      });
     } catch (error) {
       return { line: segment.line, sentence: formulaSentence(error) };
     }
@@ -38,6 +45,9 @@ function formulaProblem({ paragraphs }: LatexDocument): { line: number; sentence
 }
 
 function formulaSentence(error: unknown): string {
-  const words = error instanceof Error ? error.message.replace(/^KaTeX parse error: /, '').replace(/ at position \d+:.*$/s, '') : 'it is not understood';
+  const words =
+    error instanceof Error
+      ? error.message.replace(/^KaTeX parse error: /, '').replace(/ at position \d+:.*$/s, '')
+      : 'it is not understood';
   return `The formula can’t be set: ${words}.`;
 }

@@ -20,7 +20,12 @@ export async function readStage(actor: Actor, slug: string): Promise<Stage> {
     venue,
     town,
     contactEmail,
-    deadlines: deadlines.map(({ kind, date, time }) => ({ kind, date, time, at: localToInstant(date, time, timeZone) })),
+    deadlines: deadlines.map(({ kind, date, time }) => ({
+      kind,
+      date,
+      time,
+      at: localToInstant(date, time, timeZone),
+    })),
     rooms: rooms.map(({ name, shortName, capacity, features }) => ({ name, shortName, capacity, features })),
   };
 }

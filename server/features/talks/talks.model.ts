@@ -1,7 +1,17 @@
 import { Model, type Sequelize } from 'sequelize';
 import type { TalkKind, TalkPart, TalkState } from '@shared/features/talks/talks.contract';
 import type { RoomFeature } from '@shared/features/events/events.contract';
-import { at, integer, json, key, optionalAt, optionalInteger, optionalText, text, version } from '@server/db/columns';
+import {
+  at,
+  integer,
+  json,
+  key,
+  optionalAt,
+  optionalInteger,
+  optionalText,
+  text,
+  version,
+} from '@server/db/columns';
 
 export class TalkRow extends Model {
   declare id: string;
@@ -133,26 +143,76 @@ export function initialiseTalks(sequelize: Sequelize): void {
     },
     { sequelize, modelName: 'talks', version: true },
   );
-  TalkPersonRow.init({ id: key(), talkId: text(), accountId: text(), part: text(), position: integer() }, { sequelize, modelName: 'talk_people' });
+  TalkPersonRow.init(
+    { id: key(), talkId: text(), accountId: text(), part: text(), position: integer() },
+    { sequelize, modelName: 'talk_people' },
+  );
   CourseRow.init(
-    { id: key(), eventId: text(), letter: text(), title: text(), shortTitle: text(), minNights: integer(1), maxPerDay: integer(1), version: version() },
+    {
+      id: key(),
+      eventId: text(),
+      letter: text(),
+      title: text(),
+      shortTitle: text(),
+      minNights: integer(1),
+      maxPerDay: integer(1),
+      version: version(),
+    },
     { sequelize, modelName: 'courses', version: true },
   );
-  PrerequisiteRow.init({ id: key(), eventId: text(), before: text(), after: text() }, { sequelize, modelName: 'prerequisites' });
+  PrerequisiteRow.init(
+    { id: key(), eventId: text(), before: text(), after: text() },
+    { sequelize, modelName: 'prerequisites' },
+  );
   PresenceRow.init(
-    { id: key(), eventId: text(), accountId: text(), arrivesAt: optionalText(), leavesAt: optionalText(), blocked: json(), wishes: text(''), version: version() },
+    {
+      id: key(),
+      eventId: text(),
+      accountId: text(),
+      arrivesAt: optionalText(),
+      leavesAt: optionalText(),
+      blocked: json(),
+      wishes: text(''),
+      version: version(),
+    },
     { sequelize, modelName: 'presences', version: true },
   );
   MaterialRow.init(
-    { id: key(), talkId: text(), kind: text(), visibility: text('organisers'), visibleFrom: optionalText(), licence: text('all_rights'), version: version() },
+    {
+      id: key(),
+      talkId: text(),
+      kind: text(),
+      visibility: text('organisers'),
+      visibleFrom: optionalText(),
+      licence: text('all_rights'),
+      version: version(),
+    },
     { sequelize, modelName: 'materials', version: true },
   );
   MaterialVersionRow.init(
-    { id: key(), materialId: text(), number: integer(), fileName: text(), bytes: integer(), sha256: text(), type: text(), storedName: text(), uploadedBy: text() },
+    {
+      id: key(),
+      materialId: text(),
+      number: integer(),
+      fileName: text(),
+      bytes: integer(),
+      sha256: text(),
+      type: text(),
+      storedName: text(),
+      uploadedBy: text(),
+    },
     { sequelize, modelName: 'material_versions' },
   );
   ConsentRow.init(
-    { id: key(), accountId: text(), purpose: text(), subjectId: text(), textVersion: text(), givenAt: at(), withdrawnAt: optionalAt() },
+    {
+      id: key(),
+      accountId: text(),
+      purpose: text(),
+      subjectId: text(),
+      textVersion: text(),
+      givenAt: at(),
+      withdrawnAt: optionalAt(),
+    },
     { sequelize, modelName: 'consents' },
   );
 }

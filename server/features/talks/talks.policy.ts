@@ -6,29 +6,36 @@ interface Subject {
   people: readonly { accountId: string; part: string }[];
 }
 
-export const isOrganiser = (actor: Actor | null, eventId: string): boolean => holds(actor, 'organiser', eventId);
+export const isOrganiser = (actor: Actor | null, eventId: string): boolean =>
+  holds(actor, 'organiser', eventId);
 
 const hasPart = (actor: Actor | null, talk: Subject, ...parts: string[]): boolean =>
   talk.people.some((person) => person.accountId === actor?.accountId && parts.includes(person.part));
 
 /** The talk's own people and the organisers; reviewers read what is submitted. */
 export const canReadTalk = (actor: Actor | null, talk: Subject): boolean =>
-  isOrganiser(actor, talk.eventId) || hasPart(actor, talk, 'speaker', 'tutor', 'chair') || (holds(actor, 'reviewer', talk.eventId) && talk.state !== 'draft');
+  isOrganiser(actor, talk.eventId) ||
+  hasPart(actor, talk, 'speaker', 'tutor', 'chair') ||
+  (holds(actor, 'reviewer', talk.eventId) && talk.state !== 'draft');
 
 export const canEditTalk = (actor: Actor | null, talk: Subject): boolean => isOrganiser(actor, talk.eventId);
 
 /** Title and abstract: its speakers and the organisers, unless it is declined or withdrawn. */
 export const canWriteAbstract = (actor: Actor | null, talk: Subject): boolean =>
-  !['declined', 'withdrawn'].includes(talk.state) && (isOrganiser(actor, talk.eventId) || hasPart(actor, talk, 'speaker'));
+  !['declined', 'withdrawn'].includes(talk.state) &&
+  (isOrganiser(actor, talk.eventId) || hasPart(actor, talk, 'speaker'));
 
-export const canDecideTalk = (actor: Actor | null, talk: Subject): boolean => isOrganiser(actor, talk.eventId) && ['submitted', 'draft', 'declined'].includes(talk.state);
+export const canDecideTalk = (actor: Actor | null, talk: Subject): boolean =>
+  isOrganiser(actor, talk.eventId) && ['submitted', 'draft', 'declined'].includes(talk.state);
 
 export const canWithdrawTalk = (actor: Actor | null, talk: Subject): boolean =>
-  !['declined', 'withdrawn'].includes(talk.state) && (isOrganiser(actor, talk.eventId) || hasPart(actor, talk, 'speaker'));
+  !['declined', 'withdrawn'].includes(talk.state) &&
+  (isOrganiser(actor, talk.eventId) || hasPart(actor, talk, 'speaker'));
 
 /** Slides by its speakers; notes and problems by tutors, too. */
 export const canUpload = (actor: Actor | null, talk: Subject): boolean =>
-  !['declined', 'withdrawn'].includes(talk.state) && (isOrganiser(actor, talk.eventId) || hasPart(actor, talk, 'speaker', 'tutor'));
+  !['declined', 'withdrawn'].includes(talk.state) &&
+  (isOrganiser(actor, talk.eventId) || hasPart(actor, talk, 'speaker', 'tutor'));
 
 /** Consent is a person's own: nobody gives it for somebody else. */
 export const canConsent = (actor: Actor | null, talk: Subject): boolean => hasPart(actor, talk, 'speaker');

@@ -59,7 +59,10 @@ export function presentTalk(parts: TalkParts, actor: Actor | null): Talk {
   };
 }
 
-function presentMaterial({ material, versions }: TalkParts['materials'][number], persons: Map<string, PersonView>): Material {
+function presentMaterial(
+  { material, versions }: TalkParts['materials'][number],
+  persons: Map<string, PersonView>,
+): Material {
   return {
     id: material.id,
     kind: material.kind,
@@ -81,7 +84,10 @@ function presentMaterial({ material, versions }: TalkParts['materials'][number],
 }
 
 /** `Course A 4`, `Exercises A 3`, else the kind's name. */
-export function labelOf(talk: { kind: TalkRow['kind']; courseId: string | null; number: number | null }, courses: Map<string, { letter: string }>): string {
+export function labelOf(
+  talk: { kind: TalkRow['kind']; courseId: string | null; number: number | null },
+  courses: Map<string, { letter: string }>,
+): string {
   const course = talk.courseId ? courses.get(talk.courseId) : undefined;
   if (course && talk.kind === 'course_lecture') return `Course ${course.letter} ${talk.number ?? ''}`.trim();
   if (course && talk.kind === 'exercise') return `Exercises ${course.letter} ${talk.number ?? ''}`.trim();
@@ -106,7 +112,11 @@ export function presentTalkRow(
     abstractAt: talk.abstractAt?.toISOString() ?? null,
     speakers: people
       .filter((person) => person.part === (talk.kind === 'exercise' ? 'tutor' : 'speaker'))
-      .map((person) => ({ accountId: person.accountId, printedName: persons.get(person.accountId)?.printedName ?? '', affiliation: persons.get(person.accountId)?.affiliation ?? '' })),
+      .map((person) => ({
+        accountId: person.accountId,
+        printedName: persons.get(person.accountId)?.printedName ?? '',
+        affiliation: persons.get(person.accountId)?.affiliation ?? '',
+      })),
     hasSlides: withSlides.has(talk.id),
   };
 }

@@ -1,10 +1,8 @@
-import { col, fn, Op, where } from 'sequelize';
+import { Op } from 'sequelize';
 import type { RoomFeature } from '@shared/features/events/events.contract';
-import type { Talk, TalkKind, TalkListRow, TalkPart, TalkState } from '@shared/features/talks/talks.contract';
+import type { Talk, TalkKind, TalkPart, TalkState } from '@shared/features/talks/talks.contract';
 import { owesAbstract, stepRefusal } from '@shared/features/talks/talks.rules';
 import { conflict, forbidden, notFound } from '@shared/http/problem';
-import type { Page } from '@shared/http/page';
-import { foldCase } from '@shared/lib/text';
 import { transaction } from '@server/db/transaction';
 import type { Actor } from '@server/http/authorize';
 import { sameVersion } from '@server/http/serve';
@@ -12,9 +10,18 @@ import { announce } from '@server/jobs/job';
 import { accountsById, recordAudit } from '@server/features/accounts/accounts.service';
 import { eventById } from '@server/features/events/events.service';
 import { talkDecided, talkWithdrawn } from './talks.jobs';
-import { ConsentRow, CourseRow, MaterialRow, MaterialVersionRow, PrerequisiteRow, PresenceRow, TalkPersonRow, TalkRow } from './talks.model';
+import {
+  ConsentRow,
+  CourseRow,
+  MaterialRow,
+  MaterialVersionRow,
+  PrerequisiteRow,
+  PresenceRow,
+  TalkPersonRow,
+  TalkRow,
+} from './talks.model';
 import { canDecideTalk, canReadTalk, canWithdrawTalk, isOrganiser } from './talks.policy';
-import { labelOf, presentTalk, presentTalkRow } from './talks.presenter';
+import { labelOf, presentTalk } from './talks.presenter';
 
 /** A talk as the programme needs it. */
 export interface ProgrammeTalk {
@@ -41,7 +48,10 @@ export interface ProgrammeTalk {
 /** Every talk of an event with its people, in order of making. */
 export async function talksForProgramme(eventId: string): Promise<ProgrammeTalk[]> {
   const talks = await TalkRow.ofEvent(eventId);
-  const people = await TalkPersonRow.findAll({ where: { talkId: talks.map((talk) => talk.id) }, order: ['talkId', 'position'] });
+  const people = await TalkPersonRow.findAll({
+    where: { talkId: talks.map((talk) => talk.id) },
+    order: ['talkId', 'position'],
+  });
   const persons = await accountsById(people.map((person) => person.accountId));
   const byTalk = new Map<string, TalkPersonRow[]>();
   for (const person of people) byTalk.set(person.talkId, [...(byTalk.get(person.talkId) ?? []), person]);
@@ -72,22 +82,38 @@ export async function talksForProgramme(eventId: string): Promise<ProgrammeTalk[
   }));
 }
 
-export const coursesOf = (eventId: string): Promise<CourseRow[]> => CourseRow.findAll({ where: { eventId }, order: ['letter'] });
-export const prerequisitesOf = (eventId: string): Promise<PrerequisiteRow[]> => PrerequisiteRow.findAll({ where: { eventId } });
-export const presencesOf = (eventId: string): Promise<PresenceRow[]> => PresenceRow.findAll({ where: { eventId } });
+export const coursesOf = (eventId: string): Promise<CourseRow[]> =>
+  CourseRow.findAll({ where: { eventId }, order: ['letter'] });
+export const prerequisitesOf = (eventId: string): Promise<PrerequisiteRow[]> =>
+  PrerequisiteRow.findAll({ where: { eventId } });
+export const presencesOf = (eventId: string): Promise<PresenceRow[]> =>
+  PresenceRow.findAll({ where: { eventId } });
 
 /** Ids of events in which the person has a part in a talk that is on. */
-export async function speakingIn(accountId: string, parts: TalkPart[] = ['speaker', 'tutor', 'chair']): Promise<Set<string>> {
+export async function speakingIn(
+  accountId: string,
+  parts: TalkPart[] = ['speaker', 'tutor', 'chair'],
+): Promise<Set<string>> {
   const mine = await TalkPersonRow.findAll({ where: { accountId, part: parts } });
-  const talks = await TalkRow.findAll({ where: { id: mine.map((row) => row.talkId), state: { [Op.notIn]: ['declined', 'withdrawn'] } } });
+  const talks = await TalkRow.findAll({
+    where: { id: mine.map((row) => row.talkId), state: { [Op.notIn]: ['declined', 'withdrawn'] } },
+  });
   return new Set(talks.map((talk) => talk.eventId));
 }
 
 /** Talks in which a person has a part, the latest first. */
 export async function talksOfPerson(accountId: string) {
   const mine = await TalkPersonRow.findAll({ where: { accountId } });
-  const talks = await TalkRow.findAll({ where: { id: mine.map((row) => row.talkId) }, order: [['id', 'DESC']] });
-  const courses = new Map((await CourseRow.findAll({ where: { id: talks.flatMap((talk) => talk.courseId ?? []) } })).map((row) => [row.id, row]));
+  const talks = await TalkRow.findAll({
+    where: { id: mine.map((row) => row.talkId) },
+    order: [['id', 'DESC']],
+  });
+  const courses = new Map(
+    (await CourseRow.findAll({ where: { id: talks.flatMap((talk) => talk.courseId ?? []) } })).map((row) => [
+      row.id,
+      row,
+    ]),
+  );
   return Promise.all(
     talks.map(async (talk) => {
       const event = await eventById(talk.eventId);
@@ -115,7 +141,9 @@ export interface TalkCounts {
 
 /** Abstracts in and missing, by kind, of talks that are on and owe one. */
 export async function talkCounts(eventId: string): Promise<TalkCounts[]> {
-  const talks = (await TalkRow.ofEvent(eventId)).filter((talk) => owesAbstract(talk.kind) && !['declined', 'withdrawn'].includes(talk.state));
+  const talks = (await TalkRow.ofEvent(eventId)).filter(
+    (talk) => owesAbstract(talk.kind) && !['declined', 'withdrawn'].includes(talk.state),
+  );
   const kinds = [...new Set(talks.map((talk) => talk.kind))];
   return kinds.map((kind) => {
     const own = talks.filter((talk) => talk.kind === kind);
@@ -125,122 +153,116 @@ export async function talkCounts(eventId: string): Promise<TalkCounts[]> {
 }
 
 /** Loads a talk of an event with its people. @throws 404. */
-export async function requireTalk(eventId: string, talkId: string): Promise<{ talk: TalkRow; people: TalkPersonRow[] }> {
+export async function requireTalk(
+  eventId: string,
+  talkId: string,
+): Promise<{ talk: TalkRow; people: TalkPersonRow[] }> {
   const talk = await TalkRow.findOne({ where: { id: talkId, eventId } });
   if (!talk) throw notFound('This talk');
   return { talk, people: await TalkPersonRow.ofTalks(talkId) };
 }
 
-export const subjectOf = (talk: TalkRow, people: TalkPersonRow[]) => ({ eventId: talk.eventId, state: talk.state, people });
+export const subjectOf = (talk: TalkRow, people: TalkPersonRow[]) => ({
+  eventId: talk.eventId,
+  state: talk.state,
+  people,
+});
 
 /** A talk as this reader gets it. @throws 404 when it is not theirs to see. */
 export async function readTalk(actor: Actor, eventId: string, talkId: string): Promise<Talk> {
   const { talk, people } = await requireTalk(eventId, talkId);
   if (!canReadTalk(actor, subjectOf(talk, people))) throw notFound('This talk');
   const materials = await MaterialRow.findAll({ where: { talkId }, order: ['kind'] });
-  const versions = await MaterialVersionRow.findAll({ where: { materialId: materials.map((row) => row.id) }, order: [['number', 'DESC']] });
-  const persons = await accountsById([...people.map((person) => person.accountId), ...versions.map((row) => row.uploadedBy)]);
-  const consent = await ConsentRow.findOne({ where: { subjectId: talkId, purpose: 'recording', withdrawnAt: null } });
+  const versions = await MaterialVersionRow.findAll({
+    where: { materialId: materials.map((row) => row.id) },
+    order: [['number', 'DESC']],
+  });
+  const persons = await accountsById([
+    ...people.map((person) => person.accountId),
+    ...versions.map((row) => row.uploadedBy),
+  ]);
+  const consent = await ConsentRow.findOne({
+    where: { subjectId: talkId, purpose: 'recording', withdrawnAt: null },
+  });
   return presentTalk(
     {
       talk,
       eventSlug: (await eventById(eventId)).slug,
       people,
       persons,
-      materials: materials.map((material) => ({ material, versions: versions.filter((row) => row.materialId === material.id) })),
+      materials: materials.map((material) => ({
+        material,
+        versions: versions.filter((row) => row.materialId === material.id),
+      })),
       recordingConsent: consent !== null,
     },
     actor,
   );
 }
 
-/** Talks of an event, the latest first, by filters. Reviewers see no drafts. */
-export async function listTalks(
+/** Accepts or declines; the speaker hears by letter. @throws 409 when the state forbids it. */
+export async function decideTalk(
   actor: Actor,
   eventId: string,
-  query: { cursor?: string; limit: number; state?: TalkState; kind?: TalkKind; q?: string; missing?: 'abstract' | 'answer' | 'slides' },
-): Promise<Page<TalkListRow>> {
-  const named = query.q ? await talksWithPerson(eventId, query.q) : [];
-  const rows = await TalkRow.findAll({
-    where: {
-      [Op.and]: [
-        { eventId },
-        query.state ? { state: query.state } : {},
-        isOrganiser(actor, eventId) ? {} : { state: { [Op.ne]: 'draft' } },
-        query.kind ? { kind: query.kind } : {},
-        query.q ? { [Op.or]: [where(fn('instr', fn('lower', col('title')), query.q.toLowerCase()), Op.gt, 0), { id: named }] } : {},
-        query.missing === 'abstract' ? { abstractAt: null, ...OWING } : {},
-        query.missing === 'answer' ? { invitation: 'invited' } : {},
-        query.missing === 'slides' ? { id: { [Op.notIn]: await talksWithSlides(eventId) }, ...OWING } : {},
-        query.cursor ? { id: { [Op.lt]: query.cursor } } : {},
-      ],
-    },
-    order: [['id', 'DESC']],
-    limit: query.limit + 1,
-  });
-  const page = rows.slice(0, query.limit);
-  const ids = page.map((row) => row.id);
-  const [people, courses, slides] = await Promise.all([
-    TalkPersonRow.ofTalks(ids),
-    coursesOf(eventId),
-    MaterialRow.findAll({ where: { talkId: ids, kind: 'slides' }, attributes: ['talkId'] }),
-  ]);
-  const persons = await accountsById(people.map((person) => person.accountId));
-  const courseById = new Map(courses.map((course) => [course.id, course]));
-  const withSlides = new Set(slides.map((row) => row.talkId));
-  return {
-    items: page.map((talk) => presentTalkRow(talk, people.filter((person) => person.talkId === talk.id), persons, courseById, withSlides)),
-    next: rows.length > query.limit ? (page[page.length - 1]?.id ?? null) : null,
-  };
-}
-
-/** Talks that are on and come with an abstract and slides. */
-const OWING = { kind: ['plenary', 'invited', 'contributed', 'course_lecture'], state: ['draft', 'submitted', 'accepted'] };
-
-async function talksWithSlides(eventId: string): Promise<string[]> {
-  const talks = await TalkRow.findAll({ where: { eventId }, attributes: ['id'] });
-  const slides = await MaterialRow.findAll({ where: { talkId: talks.map((talk) => talk.id), kind: 'slides' }, attributes: ['talkId'] });
-  return slides.map((row) => row.talkId);
-}
-
-async function talksWithPerson(eventId: string, q: string): Promise<string[]> {
-  const people = await TalkPersonRow.findAll({ where: { talkId: (await TalkRow.findAll({ where: { eventId }, attributes: ['id'] })).map((row) => row.id) } });
-  const persons = await accountsById(people.map((person) => person.accountId));
-  return people.filter((person) => foldCase(persons.get(person.accountId)?.printedName ?? '').includes(foldCase(q))).map((person) => person.talkId);
-}
-
-/** Accepts or declines; the speaker hears by letter. @throws 409 when the state forbids it. */
-export async function decideTalk(actor: Actor, eventId: string, talkId: string, version: number | undefined, input: { decision: 'accepted' | 'declined'; note: string }): Promise<Talk> {
+  talkId: string,
+  version: number | undefined,
+  input: { decision: 'accepted' | 'declined'; note: string },
+): Promise<Talk> {
   await transaction(async () => {
     const { talk, people } = await requireTalk(eventId, talkId);
     if (!isOrganiser(actor, eventId)) throw forbidden();
     if (version !== undefined) sameVersion(talk.version, version);
     const refusal = stepRefusal(talk.state, input.decision);
-    if (refusal || !canDecideTalk(actor, subjectOf(talk, people))) throw conflict('talk.step', refusal ?? 'This talk is not waiting for a decision.');
+    if (refusal || !canDecideTalk(actor, subjectOf(talk, people)))
+      throw conflict('talk.step', refusal ?? 'This talk is not waiting for a decision.');
     const before = talk.state;
     await talk.update({ state: input.decision, decisionNote: input.note });
-    await recordAudit({ actor, action: 'talks.decided', subject: 'talk', subjectId: talkId, eventId, before: { state: before }, after: { state: input.decision } });
+    await recordAudit({
+      actor,
+      action: 'talks.decided',
+      subject: 'talk',
+      subjectId: talkId,
+      eventId,
+      before: { state: before },
+      after: { state: input.decision },
+    });
     await announce(talkDecided, { talkId, decision: input.decision, note: input.note });
   });
   return readTalk(actor, eventId, talkId);
 }
 
-export async function withdrawTalk(actor: Actor, eventId: string, talkId: string, version: number | undefined, note: string): Promise<Talk> {
+export async function withdrawTalk(
+  actor: Actor,
+  eventId: string,
+  talkId: string,
+  version: number | undefined,
+  note: string,
+): Promise<Talk> {
   await transaction(async () => {
     const { talk, people } = await requireTalk(eventId, talkId);
     if (!canReadTalk(actor, subjectOf(talk, people))) throw notFound('This talk');
-    if (!canWithdrawTalk(actor, subjectOf(talk, people))) throw conflict('talk.step', `The talk is ${talk.state}.`);
+    if (!canWithdrawTalk(actor, subjectOf(talk, people)))
+      throw conflict('talk.step', `The talk is ${talk.state}.`);
     if (version !== undefined) sameVersion(talk.version, version);
     const before = talk.state;
     await talk.update({ state: 'withdrawn', decisionNote: note });
-    await recordAudit({ actor, action: 'talks.withdrawn', subject: 'talk', subjectId: talkId, eventId, before: { state: before }, after: { note } });
+    await recordAudit({
+      actor,
+      action: 'talks.withdrawn',
+      subject: 'talk',
+      subjectId: talkId,
+      eventId,
+      before: { state: before },
+      after: { note },
+    });
     await announce(talkWithdrawn, { talkId });
   });
   return readTalk(actor, eventId, talkId);
 }
 
 /** Title of a talk, in LaTeX. */
-export const talkTitle = async (talkId: string): Promise<string> => (await TalkRow.findByPk(talkId))?.title ?? 'Talk';
+export const talkTitle = async (talkId: string): Promise<string> =>
+  (await TalkRow.findByPk(talkId))?.title ?? 'Talk';
 
 /** The event that a talk belongs to. */
 export async function eventOfTalk(talkId: string): Promise<string> {

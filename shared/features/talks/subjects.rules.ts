@@ -22,7 +22,11 @@ export function mscProblem(code: string): string | undefined {
 export function findClasses(typed: string, limit = 6): { code: string; title: string }[] {
   const words = typed.toLowerCase().split(/\s+/).filter(Boolean);
   return Object.entries(mscClasses)
-    .filter(([code, title]) => words.every((word) => code.startsWith(word.slice(0, 2)) && /^\d/.test(word) ? true : title.toLowerCase().includes(word)))
+    .filter(([code, title]) =>
+      words.every((word) =>
+        code.startsWith(word.slice(0, 2)) && /^\d/.test(word) ? true : title.toLowerCase().includes(word),
+      ),
+    )
     .map(([code, title]) => ({ code, title }))
     .sort((a, b) => a.code.localeCompare(b.code))
     .slice(0, limit);
@@ -38,11 +42,18 @@ export type Reference = { kind: 'doi' | 'arxiv'; id: string; url: string };
 
 /** A DOI or arXiv identifier, bare or as an address; undefined when it is neither. */
 export function parseReference(text: string): Reference | undefined {
-  const bare = text.trim().replace(/^(https?:\/\/(dx\.)?doi\.org\/|doi:\s*)/i, '').replace(/^(https?:\/\/arxiv\.org\/(abs|pdf)\/|arxiv:\s*)/i, '');
+  const bare = text
+    .trim()
+    .replace(/^(https?:\/\/(dx\.)?doi\.org\/|doi:\s*)/i, '')
+    .replace(/^(https?:\/\/arxiv\.org\/(abs|pdf)\/|arxiv:\s*)/i, '');
   if (DOI.test(bare)) return { kind: 'doi', id: bare, url: `https://doi.org/${bare}` };
   const match = ARXIV_NEW.exec(bare);
   const five = match && Number(match[1]) >= 15;
-  const fits = match && Number(match[2]) >= 1 && Number(match[2]) <= 12 && (match[3] as string).length === (five ? 5 : 4);
+  const fits =
+    match &&
+    Number(match[2]) >= 1 &&
+    Number(match[2]) <= 12 &&
+    (match[3] as string).length === (five ? 5 : 4);
   if (fits || ARXIV_OLD.test(bare)) return { kind: 'arxiv', id: bare, url: `https://arxiv.org/abs/${bare}` };
   return undefined;
 }

@@ -22,11 +22,35 @@ export const setMaterialAccess = endpoint({
   path: '/api/events/:event/talks/:talk/materials/:material',
   summary: 'Who may see a material, from when, under which licence.',
   params: z.object({ event: slug, talk: id, material: id }),
-  body: z.strictObject({ visibility: z.enum(visibilities), visibleFrom: localDate.nullable(), licence: z.enum(licences) }),
+  body: z.strictObject({
+    visibility: z.enum(visibilities),
+    visibleFrom: localDate.nullable(),
+    licence: z.enum(licences),
+  }),
   response: talkSchema,
   versioned: true,
 });
-export const downloadMaterial = endpoint({ id: 'talks.download', method: 'GET', path: '/api/events/:event/materials/:file', summary: 'A version of a material, for those who may see it.', params: z.object({ event: slug, file: id }), response: 'file' });
-export const setRecordingConsent = endpoint({ id: 'talks.recording', method: 'PUT', path: '/api/events/:event/talks/:talk/recording', summary: 'Give or withdraw one’s consent to being recorded.', params: ofTalk, body: z.strictObject({ consent: z.boolean() }), response: talkSchema });
+export const downloadMaterial = endpoint({
+  id: 'talks.download',
+  method: 'GET',
+  path: '/api/events/:event/materials/:file',
+  summary: 'A version of a material, for those who may see it.',
+  params: z.object({ event: slug, file: id }),
+  response: 'file',
+});
+export const setRecordingConsent = endpoint({
+  id: 'talks.recording',
+  method: 'PUT',
+  path: '/api/events/:event/talks/:talk/recording',
+  summary: 'Give or withdraw one’s consent to being recorded.',
+  params: ofTalk,
+  body: z.strictObject({ consent: z.boolean() }),
+  response: talkSchema,
+});
 
-export const talksMaterialsEndpoints = [uploadMaterial, setMaterialAccess, downloadMaterial, setRecordingConsent];
+export const talksMaterialsEndpoints = [
+  uploadMaterial,
+  setMaterialAccess,
+  downloadMaterial,
+  setRecordingConsent,
+];

@@ -14,8 +14,24 @@ export const presenceInput = z.strictObject({
 });
 export type PresenceInput = z.infer<typeof presenceInput>;
 export const presenceSchema = presenceInput.extend({ version: z.number().int() });
-export const readMyPresence = endpoint({ id: 'talks.read_presence', method: 'GET', path: '/api/events/:event/my-presence', summary: 'One’s own travel window.', params: inEvent, response: presenceSchema });
-export const saveMyPresence = endpoint({ id: 'talks.save_presence', method: 'PUT', path: '/api/events/:event/my-presence', summary: 'Save one’s own travel window.', params: inEvent, body: presenceInput, response: presenceSchema, versioned: true });
+export const readMyPresence = endpoint({
+  id: 'talks.read_presence',
+  method: 'GET',
+  path: '/api/events/:event/my-presence',
+  summary: 'One’s own travel window.',
+  params: inEvent,
+  response: presenceSchema,
+});
+export const saveMyPresence = endpoint({
+  id: 'talks.save_presence',
+  method: 'PUT',
+  path: '/api/events/:event/my-presence',
+  summary: 'Save one’s own travel window.',
+  params: inEvent,
+  body: presenceInput,
+  response: presenceSchema,
+  versioned: true,
+});
 
 /** What a speaker needs to know of an event, also before it is announced. */
 export const stageSchema = z.object({
@@ -30,9 +46,23 @@ export const stageSchema = z.object({
   town: z.string(),
   contactEmail: z.string(),
   deadlines: z.array(deadlineSchema),
-  rooms: z.array(z.object({ name: z.string(), shortName: z.string(), capacity: z.number().int(), features: z.array(roomFeature) })),
+  rooms: z.array(
+    z.object({
+      name: z.string(),
+      shortName: z.string(),
+      capacity: z.number().int(),
+      features: z.array(roomFeature),
+    }),
+  ),
 });
 export type Stage = z.infer<typeof stageSchema>;
-export const readStage = endpoint({ id: 'talks.stage', method: 'GET', path: '/api/events/:event/stage', summary: 'Dates, deadlines and rooms of an event, for those who speak there.', params: inEvent, response: stageSchema });
+export const readStage = endpoint({
+  id: 'talks.stage',
+  method: 'GET',
+  path: '/api/events/:event/stage',
+  summary: 'Dates, deadlines and rooms of an event, for those who speak there.',
+  params: inEvent,
+  response: stageSchema,
+});
 
 export const talksStayEndpoints = [readMyPresence, saveMyPresence, readStage];

@@ -5,10 +5,18 @@ import { id, slug } from '../../lib/ids';
 import { instant, localDate } from '../../lib/time';
 import { email } from '../accounts/accounts.contract';
 import { roomFeature } from '../events/events.contract';
-import { MAX_ABSTRACT } from '../../lib/latex';
-import { mscProblem, parseReference } from './subjects.rules';
+import { abstractInput, talkMinutes, talkTitle } from './talks-abstract.contract';
 
-export const talkKinds = ['plenary', 'invited', 'contributed', 'course_lecture', 'exercise', 'poster', 'discussion', 'social'] as const;
+export const talkKinds = [
+  'plenary',
+  'invited',
+  'contributed',
+  'course_lecture',
+  'exercise',
+  'poster',
+  'discussion',
+  'social',
+] as const;
 export const talkKind = z.enum(talkKinds);
 export type TalkKind = z.infer<typeof talkKind>;
 export const talkStates = ['draft', 'submitted', 'accepted', 'declined', 'withdrawn'] as const;
@@ -17,33 +25,6 @@ export type TalkState = z.infer<typeof talkState>;
 export const talkParts = ['speaker', 'chair', 'tutor'] as const;
 export const talkPart = z.enum(talkParts);
 export type TalkPart = z.infer<typeof talkPart>;
-
-export const talkTitle = z.string().trim().min(1, 'This is needed.').max(300, 'At most 300 characters.').regex(/^[^\n\r\0]*$/, 'No line breaks here.');
-export const personName = z.string().trim().min(1, 'This is needed.').max(120).regex(/^[^\p{Cc}]*$/u, 'No line breaks here.');
-export const talkMinutes = z.number().int().min(5, 'At least 5 minutes.').max(600).multipleOf(5, 'In steps of 5 minutes.');
-
-/** MSC 2020 code; the first of a talk is its main one. */
-export const mscCode = z.string().trim().superRefine((code, context) => {
-  const problem = mscProblem(code);
-  if (problem) context.addIssue({ code: 'custom', message: problem });
-});
-/** DOI or arXiv identifier. */
-export const reference = z.string().trim().max(200).refine((text) => parseReference(text) !== undefined, 'This is neither a DOI (10.1000/xyz) nor an arXiv identifier (2101.01234).');
-
-export const coAuthor = z.strictObject({ name: personName, affiliation: z.string().trim().max(200).default('') });
-
-/** What its speaker writes. */
-export const abstractInput = z.strictObject({
-  /** LaTeX as in abstracts. */
-  title: talkTitle,
-  /** LaTeX. */
-  abstract: z.string().max(MAX_ABSTRACT, `At most ${MAX_ABSTRACT} characters.`),
-  coAuthors: z.array(coAuthor).max(20),
-  msc: z.array(mscCode).max(4, 'At most 4 codes.'),
-  references: z.array(reference).max(20),
-  needs: z.array(roomFeature).max(10),
-});
-export type AbstractInput = z.infer<typeof abstractInput>;
 
 const structure = {
   kind: talkKind,
@@ -59,9 +40,20 @@ const structure = {
   /** People expected; null when not known. */
   expectedAudience: z.number().int().min(1).max(20_000).nullable(),
 };
-export const personInput = z.strictObject({ accountId: id.optional(), email: email.optional(), givenName: z.string().trim().max(120).optional(), familyName: z.string().trim().max(120).optional(), part: talkPart });
+export const personInput = z.strictObject({
+  accountId: id.optional(),
+  email: email.optional(),
+  givenName: z.string().trim().max(120).optional(),
+  familyName: z.string().trim().max(120).optional(),
+  part: talkPart,
+});
 
-export const talkPerson = z.object({ accountId: id, part: talkPart, printedName: z.string(), affiliation: z.string() });
+export const talkPerson = z.object({
+  accountId: id,
+  part: talkPart,
+  printedName: z.string(),
+  affiliation: z.string(),
+});
 export const materialVersion = z.object({
   id,
   number: z.number().int(),
@@ -108,7 +100,14 @@ export const talkSchema = z.object({
   /** The speaker agreed to be recorded. */
   recordingConsent: z.boolean(),
   version: z.number().int(),
-  can: z.object({ edit: z.boolean(), write: z.boolean(), decide: z.boolean(), withdraw: z.boolean(), upload: z.boolean(), handIn: z.boolean() }),
+  can: z.object({
+    edit: z.boolean(),
+    write: z.boolean(),
+    decide: z.boolean(),
+    withdraw: z.boolean(),
+    upload: z.boolean(),
+    handIn: z.boolean(),
+  }),
 });
 export type Talk = z.infer<typeof talkSchema>;
 
@@ -137,10 +136,22 @@ export const listTalks = endpoint({
   path: '/api/events/:event/talks',
   summary: 'Talks of an event, the latest first.',
   params: inEvent,
-  query: pageQuery.extend({ state: talkState.optional(), kind: talkKind.optional(), q: z.string().max(100).optional(), missing: z.enum(['abstract', 'answer', 'slides']).optional() }),
+  query: pageQuery.extend({
+    state: talkState.optional(),
+    kind: talkKind.optional(),
+    q: z.string().max(100).optional(),
+    missing: z.enum(['abstract', 'answer', 'slides']).optional(),
+  }),
   response: pageOf(talkRow),
 });
-export const readTalk = endpoint({ id: 'talks.read', method: 'GET', path: '/api/events/:event/talks/:talk', summary: 'One talk, for its people and the organisers.', params: ofTalk, response: talkSchema });
+export const readTalk = endpoint({
+  id: 'talks.read',
+  method: 'GET',
+  path: '/api/events/:event/talks/:talk',
+  summary: 'One talk, for its people and the organisers.',
+  params: ofTalk,
+  response: talkSchema,
+});
 export const createTalk = endpoint({
   id: 'talks.create',
   method: 'POST',
@@ -160,19 +171,49 @@ export const updateTalk = endpoint({
   response: talkSchema,
   versioned: true,
 });
-export const saveAbstract = endpoint({ id: 'talks.save_abstract', method: 'PUT', path: '/api/events/:event/talks/:talk/abstract', summary: 'Save title, abstract and subjects; saved as typed, also with mistakes in the LaTeX.', params: ofTalk, body: abstractInput, response: talkSchema, versioned: true });
-export const handInAbstract = endpoint({ id: 'talks.hand_in', method: 'POST', path: '/api/events/:event/talks/:talk/hand-in', summary: 'Hand the abstract in; refused while it has mistakes.', params: ofTalk, body: z.strictObject({}), response: talkSchema, versioned: true });
+export const saveAbstract = endpoint({
+  id: 'talks.save_abstract',
+  method: 'PUT',
+  path: '/api/events/:event/talks/:talk/abstract',
+  summary: 'Save title, abstract and subjects; saved as typed, also with mistakes in the LaTeX.',
+  params: ofTalk,
+  body: abstractInput,
+  response: talkSchema,
+  versioned: true,
+});
+export const handInAbstract = endpoint({
+  id: 'talks.hand_in',
+  method: 'POST',
+  path: '/api/events/:event/talks/:talk/hand-in',
+  summary: 'Hand the abstract in; refused while it has mistakes.',
+  params: ofTalk,
+  body: z.strictObject({}),
+  response: talkSchema,
+  versioned: true,
+});
 export const decideTalk = endpoint({
   id: 'talks.decide',
   method: 'POST',
   path: '/api/events/:event/talks/:talk/decision',
   summary: 'Accept or decline a submitted talk; the speaker gets a letter.',
   params: ofTalk,
-  body: z.strictObject({ decision: z.enum(['accepted', 'declined']), note: z.string().trim().max(2000).default('') }),
+  body: z.strictObject({
+    decision: z.enum(['accepted', 'declined']),
+    note: z.string().trim().max(2000).default(''),
+  }),
   response: talkSchema,
   versioned: true,
 });
-export const withdrawTalk = endpoint({ id: 'talks.withdraw', method: 'POST', path: '/api/events/:event/talks/:talk/withdrawal', summary: 'Withdraw a talk.', params: ofTalk, body: z.strictObject({ note: z.string().trim().max(2000).default('') }), response: talkSchema, versioned: true });
+export const withdrawTalk = endpoint({
+  id: 'talks.withdraw',
+  method: 'POST',
+  path: '/api/events/:event/talks/:talk/withdrawal',
+  summary: 'Withdraw a talk.',
+  params: ofTalk,
+  body: z.strictObject({ note: z.string().trim().max(2000).default('') }),
+  response: talkSchema,
+  versioned: true,
+});
 export const submitTalk = endpoint({
   id: 'talks.submit',
   method: 'POST',
@@ -182,9 +223,52 @@ export const submitTalk = endpoint({
   body: abstractInput,
   response: talkSchema,
 });
-export const callView = z.object({ open: z.boolean(), title: z.string(), until: instant.nullable(), timeZone: z.string(), minutes: z.number().int(), questionMinutes: z.number().int() });
-export const readCall = endpoint({ id: 'talks.call', method: 'GET', path: '/api/events/:event/call', summary: 'The call for abstracts: open or not, until when.', params: inEvent, response: callView });
-export const myTalk = z.object({ id, eventSlug: z.string(), eventTitle: z.string(), kind: talkKind, label: z.string(), title: z.string(), minutes: z.number().int(), state: talkState, part: talkPart, abstractAt: instant.nullable() });
-export const listMyTalks = endpoint({ id: 'talks.mine', method: 'GET', path: '/api/my/talks', summary: 'Talks in which the person has a part.', response: z.object({ items: z.array(myTalk) }) });
+export const callView = z.object({
+  open: z.boolean(),
+  title: z.string(),
+  until: instant.nullable(),
+  timeZone: z.string(),
+  minutes: z.number().int(),
+  questionMinutes: z.number().int(),
+});
+export const readCall = endpoint({
+  id: 'talks.call',
+  method: 'GET',
+  path: '/api/events/:event/call',
+  summary: 'The call for abstracts: open or not, until when.',
+  params: inEvent,
+  response: callView,
+});
+export const myTalk = z.object({
+  id,
+  eventSlug: z.string(),
+  eventTitle: z.string(),
+  kind: talkKind,
+  label: z.string(),
+  title: z.string(),
+  minutes: z.number().int(),
+  state: talkState,
+  part: talkPart,
+  abstractAt: instant.nullable(),
+});
+export const listMyTalks = endpoint({
+  id: 'talks.mine',
+  method: 'GET',
+  path: '/api/my/talks',
+  summary: 'Talks in which the person has a part.',
+  response: z.object({ items: z.array(myTalk) }),
+});
 
-export const talksEndpoints = [listTalks, readTalk, createTalk, updateTalk, saveAbstract, handInAbstract, decideTalk, withdrawTalk, submitTalk, readCall, listMyTalks];
+export const talksEndpoints = [
+  listTalks,
+  readTalk,
+  createTalk,
+  updateTalk,
+  saveAbstract,
+  handInAbstract,
+  decideTalk,
+  withdrawTalk,
+  submitTalk,
+  readCall,
+  listMyTalks,
+];

@@ -47,16 +47,20 @@ export function stepRefusal(from: TalkState, to: TalkState): string | undefined 
 }
 
 /** Kinds that come with an abstract that somebody owes. */
-export const owesAbstract = (kind: TalkKind): boolean => ['plenary', 'invited', 'contributed', 'course_lecture'].includes(kind);
+export const owesAbstract = (kind: TalkKind): boolean =>
+  ['plenary', 'invited', 'contributed', 'course_lecture'].includes(kind);
 
 /** Kinds that need nobody in front. */
-export const needsSpeaker = (kind: TalkKind): boolean => kind !== 'social' && kind !== 'discussion' && kind !== 'poster';
+export const needsSpeaker = (kind: TalkKind): boolean =>
+  kind !== 'social' && kind !== 'discussion' && kind !== 'poster';
 
 /**
  * A pair that closes a circle among prerequisites (before -> after), or undefined when there is none.
  * Depth-first search; `pairs` are ids.
  */
-export function prerequisiteCircle(pairs: readonly { before: string; after: string }[]): { before: string; after: string } | undefined {
+export function prerequisiteCircle(
+  pairs: readonly { before: string; after: string }[],
+): { before: string; after: string } | undefined {
   const next = new Map<string, string[]>();
   for (const { before, after } of pairs) next.set(before, [...(next.get(before) ?? []), after]);
   const state = new Map<string, 'open' | 'done'>();
@@ -80,9 +84,14 @@ export function prerequisiteCircle(pairs: readonly { before: string; after: stri
 }
 
 /** Field errors of a travel window (local date-times). */
-export function presenceErrors(presence: { arrivesAt: string | null; leavesAt: string | null; blocked: readonly { from: string; to: string }[] }): Record<string, string> {
+export function presenceErrors(presence: {
+  arrivesAt: string | null;
+  leavesAt: string | null;
+  blocked: readonly { from: string; to: string }[];
+}): Record<string, string> {
   const errors: Record<string, string> = {};
-  if (presence.arrivesAt && presence.leavesAt && presence.leavesAt <= presence.arrivesAt) errors.leavesAt = 'You leave before you arrive.';
+  if (presence.arrivesAt && presence.leavesAt && presence.leavesAt <= presence.arrivesAt)
+    errors.leavesAt = 'You leave before you arrive.';
   presence.blocked.forEach((window, index) => {
     if (window.to <= window.from) errors[`blocked.${index}.to`] = 'The end is not after the start.';
   });

@@ -1,5 +1,5 @@
 import { useDeferredValue } from 'react';
-import type { AbstractInput } from '@shared/features/talks/talks.contract';
+import type { AbstractInput } from '@shared/features/talks/talks-abstract.contract';
 import { parseReference } from '@shared/features/talks/subjects.rules';
 import { MathLine, MathText } from '@/components/math-text';
 
@@ -20,9 +20,17 @@ export function Printed({ title, authors, abstract, msc, references, level = 3 }
   const source = useDeferredValue(abstract);
   return (
     <article className="min-w-0">
-      <Heading className="font-serif text-[18px] leading-6 font-semibold">{title.trim() === '' ? 'No title yet' : <MathLine source={title} />}</Heading>
-      <p className="mb-2 font-serif text-[16px] italic">{authors.map((author) => [author.name, author.affiliation].filter(Boolean).join(', ')).join('; ')}</p>
-      {abstract.trim() === '' ? <p className="font-serif text-abstract text-ink3">No abstract yet.</p> : <MathText source={source} />}
+      <Heading className="font-serif text-[18px] leading-6 font-semibold">
+        {title.trim() === '' ? 'No title yet' : <MathLine source={title} />}
+      </Heading>
+      <p className="mb-2 font-serif text-[16px] italic">
+        {authors.map((author) => [author.name, author.affiliation].filter(Boolean).join(', ')).join('; ')}
+      </p>
+      {abstract.trim() === '' ? (
+        <p className="font-serif text-abstract text-ink3">No abstract yet.</p>
+      ) : (
+        <MathText source={source} />
+      )}
       {msc.length > 0 && <p className="mt-3 text-dense text-ink2">MSC 2020: {msc.join(', ')}</p>}
       {references.length > 0 && (
         <ul className="mt-1 text-dense text-ink2">

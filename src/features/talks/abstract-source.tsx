@@ -18,13 +18,17 @@ export function AbstractSource({ value, onChange, marks, problems, disabled, err
   const id = useId();
   const [line, setLine] = useState(0);
   const rows = useMemo(() => colouredLines(value, marks), [value, marks]);
-  const follow = (area: HTMLTextAreaElement) => setLine(area.value.slice(0, area.selectionStart).split('\n').length);
-  const text = 'font-mono text-[13px] leading-[21px] whitespace-pre-wrap break-words [overflow-wrap:anywhere]';
+  const follow = (area: HTMLTextAreaElement) =>
+    setLine(area.value.slice(0, area.selectionStart).split('\n').length);
+  const text =
+    'font-mono text-[13px] leading-[21px] whitespace-pre-wrap break-words [overflow-wrap:anywhere]';
   const described = problems.length > 0 || error ? `${id}-problems` : undefined;
   return (
     <div className="flex min-w-0 flex-col">
       <div className="mb-1 flex items-baseline justify-between gap-3">
-        <label htmlFor={id} className="font-semibold">Abstract, LaTeX</label>
+        <label htmlFor={id} className="font-semibold">
+          Abstract, LaTeX
+        </label>
         <span className="text-dense text-ink3">
           {count(wordCount(value), 'word')}, {value.length} of {MAX_ABSTRACT} characters
         </span>
@@ -32,11 +36,18 @@ export function AbstractSource({ value, onChange, marks, problems, disabled, err
       <div className="relative min-h-[340px] grow rounded-field border border-field bg-sheet focus-within:outline-2 focus-within:outline-offset-2 focus-within:outline-act">
         <div aria-hidden="true" className={`py-3 ${text}`}>
           {rows.map((pieces, index) => (
-            <div key={index} className={`grid grid-cols-[40px_1fr] pr-3 ${line === index + 1 ? 'bg-actwash' : ''}`}>
-              <span className="pr-3 text-right text-tile leading-[21px] text-ink3 select-none">{index + 1}</span>
+            <div
+              key={index}
+              className={`grid grid-cols-[40px_1fr] pr-3 ${line === index + 1 ? 'bg-actwash' : ''}`}
+            >
+              <span className="pr-3 text-right text-tile leading-[21px] text-ink3 select-none">
+                {index + 1}
+              </span>
               <span className="min-w-0">
                 {pieces.map((piece, at) => (
-                  <span key={at} className={LOOK[piece.kind]}>{piece.text}</span>
+                  <span key={at} className={LOOK[piece.kind]}>
+                    {piece.text}
+                  </span>
                 ))}
                 {'\u200b'}
               </span>
@@ -72,7 +83,11 @@ export function AbstractSource({ value, onChange, marks, problems, disabled, err
 }
 
 type Kind = LatexMark['kind'] | 'plain';
-const LOOK: Record<Kind, string> = { plain: '', math: 'text-act', unknown: 'underline decoration-alarm decoration-wavy underline-offset-4' };
+const LOOK: Record<Kind, string> = {
+  plain: '',
+  math: 'text-act',
+  unknown: 'underline decoration-alarm decoration-wavy underline-offset-4',
+};
 
 /** The source by lines, each in pieces of one colour. Marks are in order and don't overlap. */
 export function colouredLines(source: string, marks: readonly LatexMark[]): { text: string; kind: Kind }[][] {

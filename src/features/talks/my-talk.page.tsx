@@ -11,7 +11,11 @@ export function Component() {
   const query = useQuery({ ...talkQuery(event, talk), staleTime: Infinity });
   return (
     <SpeakerFrame event={event}>
-      {(stage) => <QueryView query={query} what="your talk">{(data) => <MyTalk key={data.id} stage={stage} talk={data} />}</QueryView>}
+      {(stage) => (
+        <QueryView query={query} what="your talk">
+          {(data) => <MyTalk key={data.id} stage={stage} talk={data} />}
+        </QueryView>
+      )}
     </SpeakerFrame>
   );
 }

@@ -1,4 +1,5 @@
-import type { AbstractInput, Talk } from '@shared/features/talks/talks.contract';
+import type { Talk } from '@shared/features/talks/talks.contract';
+import type { AbstractInput } from '@shared/features/talks/talks-abstract.contract';
 import type { Stage } from '@shared/features/talks/talks-stay.contract';
 import { owesAbstract } from '@shared/features/talks/talks.rules';
 import { useAccount } from '@/features/accounts/accounts.queries';
@@ -37,7 +38,10 @@ export function MyTalk({ stage, talk }: { stage: Stage; talk: Talk }) {
   const value = draft.value;
   const set = (part: Partial<AbstractInput>) => draft.change({ ...value, ...part });
   const { problems, marks } = useAbstractProblems(value.abstract);
-  const errors = { ...fieldErrors(draft.error), ...(draft.state === 'saved' ? fieldErrors(handIn.error) : {}) };
+  const errors = {
+    ...fieldErrors(draft.error),
+    ...(draft.state === 'saved' ? fieldErrors(handIn.error) : {}),
+  };
   const own = talk.people.some((person) => person.accountId === account?.id);
   const locked = !talk.can.write;
   const send = async () => {
@@ -48,26 +52,64 @@ export function MyTalk({ stage, talk }: { stage: Stage; talk: Talk }) {
   return (
     <div className="grid grid-cols-[minmax(0,1fr)_344px] max-lg:grid-cols-1">
       <div className="min-w-0 p-6 max-sm:p-4">
-        <TalkHead stage={stage} talk={talk} draft={draft} errors={errors} onHandIn={() => void send()} handIn={handIn} onTitle={(title) => set({ title })} onCoAuthors={(coAuthors) => set({ coAuthors })} />
-        {draft.state === 'stale' && <StaleNote what="this abstract" onMine={() => void draft.resolve('mine')} onTheirs={() => void draft.resolve('theirs')} />}
+        <TalkHead
+          stage={stage}
+          talk={talk}
+          draft={draft}
+          errors={errors}
+          onHandIn={() => void send()}
+          handIn={handIn}
+          onTitle={(title) => set({ title })}
+          onCoAuthors={(coAuthors) => set({ coAuthors })}
+        />
+        {draft.state === 'stale' && (
+          <StaleNote
+            what="this abstract"
+            onMine={() => void draft.resolve('mine')}
+            onTheirs={() => void draft.resolve('theirs')}
+          />
+        )}
         {owesAbstract(talk.kind) && (
           <>
             <div className="mt-4 grid gap-6 xl:grid-cols-2">
-              <AbstractSource value={value.abstract} marks={marks} problems={problems} disabled={locked} error={errors.abstract} onChange={(abstract) => set({ abstract })} />
+              <AbstractSource
+                value={value.abstract}
+                marks={marks}
+                problems={problems}
+                disabled={locked}
+                error={errors.abstract}
+                onChange={(abstract) => set({ abstract })}
+              />
               <PreviewPane {...value} authors={authorsOf(talk, value)} />
             </div>
             <div className="mt-6 grid gap-6 xl:grid-cols-2">
               <div className="grid content-start gap-6">
-                <SubjectsField codes={value.msc} disabled={locked} error={errors.msc} onChange={(msc) => set({ msc })} />
-                <ReferencesField references={value.references} disabled={locked} onChange={(references) => set({ references })} />
+                <SubjectsField
+                  codes={value.msc}
+                  disabled={locked}
+                  error={errors.msc}
+                  onChange={(msc) => set({ msc })}
+                />
+                <ReferencesField
+                  references={value.references}
+                  disabled={locked}
+                  onChange={(references) => set({ references })}
+                />
               </div>
               <Materials stage={stage} talk={talk} />
             </div>
           </>
         )}
-        {!owesAbstract(talk.kind) && <div className="mt-4"><Materials stage={stage} talk={talk} /></div>}
+        {!owesAbstract(talk.kind) && (
+          <div className="mt-4">
+            <Materials stage={stage} talk={talk} />
+          </div>
+        )}
       </div>
-      <aside aria-label="Stay, rooms and needs" className="grid content-start gap-7 border-l border-rule bg-paper p-6 max-lg:border-t max-lg:border-l-0 max-sm:p-4">
+      <aside
+        aria-label="Stay, rooms and needs"
+        className="grid content-start gap-7 border-l border-rule bg-paper p-6 max-lg:border-t max-lg:border-l-0 max-sm:p-4"
+      >
         {own && (
           <section>
             <SectionHead title={`When you are in ${stage.town}`} />
@@ -76,7 +118,12 @@ export function MyTalk({ stage, talk }: { stage: Stage; talk: Talk }) {
         )}
         <RoomsTable rooms={stage.rooms} needs={value.needs} />
         <NeedsList needs={value.needs} disabled={locked} onChange={(needs) => set({ needs })} />
-        <RecordingConsent talk={talk} own={own && talk.people.some((person) => person.accountId === account?.id && person.part === 'speaker')} />
+        <RecordingConsent
+          talk={talk}
+          own={
+            own && talk.people.some((person) => person.accountId === account?.id && person.part === 'speaker')
+          }
+        />
       </aside>
     </div>
   );
@@ -86,9 +133,15 @@ function Materials({ stage, talk }: { stage: Stage; talk: Talk }) {
   const teaches = talk.kind === 'course_lecture' || talk.kind === 'exercise';
   return (
     <div className="grid content-start gap-6">
-      {talk.kind !== 'exercise' && <MaterialsPanel talk={talk} kind="slides" wantedBy={wantedBy(stage, 'slides_due')} />}
-      {(teaches || talk.materials.some((entry) => entry.kind === 'notes')) && <MaterialsPanel talk={talk} kind="notes" />}
-      {(teaches || talk.materials.some((entry) => entry.kind === 'problems')) && <MaterialsPanel talk={talk} kind="problems" />}
+      {talk.kind !== 'exercise' && (
+        <MaterialsPanel talk={talk} kind="slides" wantedBy={wantedBy(stage, 'slides_due')} />
+      )}
+      {(teaches || talk.materials.some((entry) => entry.kind === 'notes')) && (
+        <MaterialsPanel talk={talk} kind="notes" />
+      )}
+      {(teaches || talk.materials.some((entry) => entry.kind === 'problems')) && (
+        <MaterialsPanel talk={talk} kind="problems" />
+      )}
     </div>
   );
 }

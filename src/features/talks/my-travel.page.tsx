@@ -11,7 +11,8 @@ export function Component() {
         <div className="mx-auto max-w-[680px] px-4 py-8 text-form">
           <h1 className="font-serif text-page">When you are in {stage.town}</h1>
           <p className="mt-1 mb-6 text-ink2">
-            {stage.title}, {formatDateSpan(stage.startsOn, stage.endsOn)}. Your talk is placed within this window. Only the organisers see it.
+            {stage.title}, {formatDateSpan(stage.startsOn, stage.endsOn)}. Your talk is placed within this
+            window. Only the organisers see it.
           </p>
           <PresenceForm key={stage.slug} stage={stage} />
         </div>

@@ -13,7 +13,15 @@ export const featureNames: Record<RoomFeature, { offer: string; need: string }> 
   remoteLink: { offer: 'Link to people elsewhere', need: 'A link to people elsewhere' },
 };
 
-export function NeedsList({ needs, onChange, disabled }: { needs: RoomFeature[]; onChange: (needs: RoomFeature[]) => void; disabled?: boolean }) {
+export function NeedsList({
+  needs,
+  onChange,
+  disabled,
+}: {
+  needs: RoomFeature[];
+  onChange: (needs: RoomFeature[]) => void;
+  disabled?: boolean;
+}) {
   return (
     <fieldset>
       <legend className="mb-1 font-semibold">You need</legend>
@@ -24,7 +32,11 @@ export function NeedsList({ needs, onChange, disabled }: { needs: RoomFeature[];
             label={featureNames[feature].need}
             checked={needs.includes(feature)}
             disabled={disabled}
-            onChange={(event) => onChange(event.target.checked ? [...needs, feature] : needs.filter((other) => other !== feature))}
+            onChange={(event) =>
+              onChange(
+                event.target.checked ? [...needs, feature] : needs.filter((other) => other !== feature),
+              )
+            }
           />
         ))}
       </div>
@@ -35,7 +47,9 @@ export function NeedsList({ needs, onChange, disabled }: { needs: RoomFeature[];
 /** Rooms side by side; what is asked for and missing in a room is said in the cell. */
 export function RoomsTable({ rooms, needs }: { rooms: Stage['rooms']; needs: readonly RoomFeature[] }) {
   if (rooms.length === 0) return null;
-  const shown = roomFeatures.filter((feature) => needs.includes(feature) || rooms.some((room) => room.features.includes(feature)));
+  const shown = roomFeatures.filter(
+    (feature) => needs.includes(feature) || rooms.some((room) => room.features.includes(feature)),
+  );
   return (
     <section>
       <h2 className="mb-1 font-semibold">What the rooms offer</h2>
@@ -43,14 +57,24 @@ export function RoomsTable({ rooms, needs }: { rooms: Stage['rooms']; needs: rea
         <table className="ruled text-dense">
           <thead>
             <tr>
-              <th scope="col"><span className="sr-only">Feature</span></th>
-              {rooms.map((room) => <th key={room.name} scope="col" className="num" title={room.name}>{room.shortName}</th>)}
+              <th scope="col">
+                <span className="sr-only">Feature</span>
+              </th>
+              {rooms.map((room) => (
+                <th key={room.name} scope="col" className="num" title={room.name}>
+                  {room.shortName}
+                </th>
+              ))}
             </tr>
           </thead>
           <tbody className="[&_th]:border-rule! [&_th]:font-normal! [&_tr:last-child>th]:border-b-0!">
             <tr>
               <th scope="row">Seats</th>
-              {rooms.map((room) => <td key={room.name} className="num">{room.capacity}</td>)}
+              {rooms.map((room) => (
+                <td key={room.name} className="num">
+                  {room.capacity}
+                </td>
+              ))}
             </tr>
             {shown.map((feature) => (
               <tr key={feature}>
@@ -58,7 +82,11 @@ export function RoomsTable({ rooms, needs }: { rooms: Stage['rooms']; needs: rea
                 {rooms.map((room) => {
                   const there = room.features.includes(feature);
                   const lacks = !there && needs.includes(feature);
-                  return <td key={room.name} className={`num ${lacks ? 'font-semibold text-caution' : ''}`}>{there ? 'yes' : lacks ? 'no ◇' : 'no'}</td>;
+                  return (
+                    <td key={room.name} className={`num ${lacks ? 'font-semibold text-caution' : ''}`}>
+                      {there ? 'yes' : lacks ? 'no ◇' : 'no'}
+                    </td>
+                  );
                 })}
               </tr>
             ))}

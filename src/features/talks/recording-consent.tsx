@@ -9,7 +9,12 @@ export function RecordingConsent({ talk, own }: { talk: Talk; own: boolean }) {
   const consent = useConsent();
   // The tick follows the hand at once; a refusal takes it back.
   const [wanted, setWanted] = useState(talk.recordingConsent);
-  if (!own) return <p className="text-dense text-ink2">Recording: {talk.recordingConsent ? 'the speaker has agreed.' : 'no consent of the speaker.'}</p>;
+  if (!own)
+    return (
+      <p className="text-dense text-ink2">
+        Recording: {talk.recordingConsent ? 'the speaker has agreed.' : 'no consent of the speaker.'}
+      </p>
+    );
   return (
     <Checkbox
       label="May be recorded"
@@ -18,7 +23,15 @@ export function RecordingConsent({ talk, own }: { talk: Talk; own: boolean }) {
       onChange={(event) => {
         const agrees = event.target.checked;
         setWanted(agrees);
-        consent.mutate({ talk, consent: agrees }, { onError: (error) => { setWanted(!agrees); sayFailure(error); } });
+        consent.mutate(
+          { talk, consent: agrees },
+          {
+            onError: (error) => {
+              setWanted(!agrees);
+              sayFailure(error);
+            },
+          },
+        );
       }}
     />
   );

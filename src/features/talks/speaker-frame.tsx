@@ -16,7 +16,13 @@ const tab = ({ isActive }: { isActive: boolean }): string =>
 /** The event's name, the speaker's own pages and the run-up line above them. */
 export function SpeakerFrame({ event, children }: { event: string; children: (stage: Stage) => ReactNode }) {
   const stage = useQuery(stageQuery(event));
-  const mine = useQuery(myTalksQuery).data?.items.filter((talk) => talk.eventSlug === event && talk.part === 'speaker' && !['declined', 'withdrawn'].includes(talk.state)) ?? [];
+  const mine =
+    useQuery(myTalksQuery).data?.items.filter(
+      (talk) =>
+        talk.eventSlug === event &&
+        talk.part === 'speaker' &&
+        !['declined', 'withdrawn'].includes(talk.state),
+    ) ?? [];
   const sameLabel = (label: string): boolean => mine.filter((talk) => talk.label === label).length > 1;
   return (
     <QueryView query={stage} what="the event">
@@ -27,11 +33,19 @@ export function SpeakerFrame({ event, children }: { event: string; children: (st
             <nav aria-label="Your part" className="flex max-w-full gap-4 overflow-x-auto">
               {mine.slice(0, 8).map((talk) => (
                 <NavLink key={talk.id} className={tab} to={`/events/${event}/my-talks/${talk.id}`}>
-                  {mine.length === 1 ? 'My talk' : sameLabel(talk.label) ? excerpt(plainLatex(talk.title), 26) : talk.label}
+                  {mine.length === 1
+                    ? 'My talk'
+                    : sameLabel(talk.label)
+                      ? excerpt(plainLatex(talk.title), 26)
+                      : talk.label}
                 </NavLink>
               ))}
-              <NavLink className={tab} to={`/events/${event}/my-travel`}>My travel</NavLink>
-              <NavLink className={tab} to={`/events/${event}/programme`}>Programme</NavLink>
+              <NavLink className={tab} to={`/events/${event}/my-travel`}>
+                My travel
+              </NavLink>
+              <NavLink className={tab} to={`/events/${event}/programme`}>
+                Programme
+              </NavLink>
             </nav>
           </div>
           <Line stage={data} talk={mine[0]?.id} />
@@ -45,7 +59,9 @@ export function SpeakerFrame({ event, children }: { event: string; children: (st
 /** Deadlines that concern a speaker. */
 function Line({ stage, talk }: { stage: Stage; talk: string | undefined }) {
   const today = instantToLocal(new Date(), stage.timeZone).date;
-  const own = stage.deadlines.filter((deadline) => ['abstracts_due', 'slides_due', 'programme_final'].includes(deadline.kind));
+  const own = stage.deadlines.filter((deadline) =>
+    ['abstracts_due', 'slides_due', 'programme_final'].includes(deadline.kind),
+  );
   const dates = [today, stage.startsOn, stage.endsOn, ...own.map((deadline) => deadline.date)].sort();
   const next = own.filter((deadline) => deadline.date >= today).sort((a, b) => a.at.localeCompare(b.at))[0];
   const to = talk ? `/events/${stage.slug}/my-talks/${talk}` : `/events/${stage.slug}/my-travel`;
@@ -54,8 +70,18 @@ function Line({ stage, talk }: { stage: Stage; talk: string | undefined }) {
       from={addDays(dates[0] as string, -7)}
       to={addDays(dates[dates.length - 1] as string, 7)}
       today={today}
-      marks={own.map((deadline) => ({ date: deadline.date, label: deadlineNames[deadline.kind], href: to, own: true }))}
-      event={{ startsOn: stage.startsOn, endsOn: stage.endsOn, label: formatDateSpan(stage.startsOn, stage.endsOn, false), href: to }}
+      marks={own.map((deadline) => ({
+        date: deadline.date,
+        label: deadlineNames[deadline.kind],
+        href: to,
+        own: true,
+      }))}
+      event={{
+        startsOn: stage.startsOn,
+        endsOn: stage.endsOn,
+        label: formatDateSpan(stage.startsOn, stage.endsOn, false),
+        href: to,
+      }}
       sentence={`${formatDate(today)}.${next ? ` ${deadlineNames[next.kind]} in ${count(daysBetween(today, next.date), 'day')}.` : ''}`}
     />
   );

@@ -7,7 +7,17 @@ const MOST = 4;
 const classOf = (code: string): string => mscClasses[code.slice(0, 2)] ?? '';
 
 /** MSC 2020 codes: the first is the main one. Typing words finds the class; the code itself is typed. */
-export function SubjectsField({ codes, onChange, disabled, error }: { codes: string[]; onChange: (codes: string[]) => void; disabled?: boolean; error?: string }) {
+export function SubjectsField({
+  codes,
+  onChange,
+  disabled,
+  error,
+}: {
+  codes: string[];
+  onChange: (codes: string[]) => void;
+  disabled?: boolean;
+  error?: string;
+}) {
   const [typed, setTyped] = useState('');
   const [wrong, setWrong] = useState<string>();
   const listId = useId();
@@ -32,8 +42,27 @@ export function SubjectsField({ codes, onChange, disabled, error }: { codes: str
           <li key={code} className="flex items-baseline gap-3 border-b border-rule py-1.5 last:border-b-0">
             <b className="w-12 shrink-0 font-semibold">{code}</b>
             <span className="min-w-0 grow text-ink2">{classOf(code)}</span>
-            {index === 0 ? <b className="font-semibold">first</b> : !disabled && <Button variant="link" onClick={() => onChange([code, ...codes.filter((other) => other !== code)])}>Make first</Button>}
-            {!disabled && <Button variant="link" aria-label={`Remove ${code}`} onClick={() => onChange(codes.filter((other) => other !== code))}>Remove</Button>}
+            {index === 0 ? (
+              <b className="font-semibold">first</b>
+            ) : (
+              !disabled && (
+                <Button
+                  variant="link"
+                  onClick={() => onChange([code, ...codes.filter((other) => other !== code)])}
+                >
+                  Make first
+                </Button>
+              )
+            )}
+            {!disabled && (
+              <Button
+                variant="link"
+                aria-label={`Remove ${code}`}
+                onClick={() => onChange(codes.filter((other) => other !== code))}
+              >
+                Remove
+              </Button>
+            )}
           </li>
         ))}
         {codes.length === 0 && <li className="py-1.5 text-ink3">No subject yet.</li>}
@@ -59,13 +88,19 @@ export function SubjectsField({ codes, onChange, disabled, error }: { codes: str
                 add();
               }}
             />
-            <Button className="min-h-[30px]" onClick={add}>Add the code</Button>
+            <Button className="min-h-[30px]" onClick={add}>
+              Add the code
+            </Button>
           </div>
           {found.length > 0 && (
             <ul id={listId} className="mt-1 border border-field text-dense shadow-float">
               {found.map(({ code, title }) => (
                 <li key={code}>
-                  <button type="button" className="flex min-h-[28px] w-full gap-3 px-2 py-1 text-left hover:bg-actwash" onClick={() => setTyped(code)}>
+                  <button
+                    type="button"
+                    className="flex min-h-[28px] w-full gap-3 px-2 py-1 text-left hover:bg-actwash"
+                    onClick={() => setTyped(code)}
+                  >
                     <b className="w-8 font-semibold">{code}</b> {title}
                   </button>
                 </li>
@@ -75,7 +110,8 @@ export function SubjectsField({ codes, onChange, disabled, error }: { codes: str
         </div>
       )}
       <p className="mt-1 text-dense text-ink3">
-        Classes of the Mathematics Subject Classification 2020 by Mathematical Reviews and zbMATH Open, CC BY-NC-SA; finer codes are checked by their form only.
+        Classes of the Mathematics Subject Classification 2020 by Mathematical Reviews and zbMATH Open, CC
+        BY-NC-SA; finer codes are checked by their form only.
       </p>
     </section>
   );

@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useEffect, useState, type FormEvent } from 'react';
 import { Link, useNavigate, useParams } from 'react-router-dom';
-import { abstractInput, type AbstractInput } from '@shared/features/talks/talks.contract';
+import { abstractInput, type AbstractInput } from '@shared/features/talks/talks-abstract.contract';
 import { useAccount } from '@/features/accounts/accounts.queries';
 import { Button } from '@/components/button';
 import { Input } from '@/components/field';
@@ -29,10 +29,19 @@ export function Component() {
           <>
             <h1 className="font-serif text-page">Submit a talk</h1>
             <p className="mt-1 mb-6 text-form text-ink2">
-              {call.title}. Contributed talks take {call.minutes} minutes, {call.questionMinutes} of them for questions.
+              {call.title}. Contributed talks take {call.minutes} minutes, {call.questionMinutes} of them for
+              questions.
               {call.until && <> Open until {deadlineWords(call.until, call.timeZone)}.</>}
             </p>
-            {call.open ? <SubmitForm event={event} /> : <EmptyState title="The call for abstracts is closed." fact={call.until ? `It ended ${deadlineWords(call.until, call.timeZone)}.` : undefined} action={<Link to={`/events/${event}`}>Open the event’s page</Link>} />}
+            {call.open ? (
+              <SubmitForm event={event} />
+            ) : (
+              <EmptyState
+                title="The call for abstracts is closed."
+                fact={call.until ? `It ended ${deadlineWords(call.until, call.timeZone)}.` : undefined}
+                action={<Link to={`/events/${event}`}>Open the event’s page</Link>}
+              />
+            )}
           </>
         )}
       </QueryView>
@@ -57,22 +66,45 @@ function SubmitForm({ event }: { event: string }) {
       },
     });
   };
-  const authors = [{ name: account?.printedName ?? '', affiliation: account?.affiliation ?? '' }, ...value.coAuthors];
+  const authors = [
+    { name: account?.printedName ?? '', affiliation: account?.affiliation ?? '' },
+    ...value.coAuthors,
+  ];
   return (
     <form noValidate onSubmit={send} className="grid gap-6">
-      <Input label="Title, LaTeX" value={value.title} maxLength={300} error={errors.title} onChange={(e) => set({ title: e.target.value })} />
+      <Input
+        label="Title, LaTeX"
+        value={value.title}
+        maxLength={300}
+        error={errors.title}
+        onChange={(e) => set({ title: e.target.value })}
+      />
       <CoAuthors coAuthors={value.coAuthors} onChange={(coAuthors) => set({ coAuthors })} />
       <div className="grid gap-6 lg:grid-cols-2">
-        <AbstractSource value={value.abstract} marks={marks} problems={problems} error={errors.abstract} onChange={(abstract) => set({ abstract })} />
+        <AbstractSource
+          value={value.abstract}
+          marks={marks}
+          problems={problems}
+          error={errors.abstract}
+          onChange={(abstract) => set({ abstract })}
+        />
         <PreviewPane {...value} authors={authors} />
         <SubjectsField codes={value.msc} error={errors.msc} onChange={(msc) => set({ msc })} />
         <ReferencesField references={value.references} onChange={(references) => set({ references })} />
       </div>
       <NeedsList needs={value.needs} onChange={(needs) => set({ needs })} />
-      {submit.error && <p role="alert" className="font-semibold text-alarm">Not submitted. {sentenceOf(submit.error)}</p>}
+      {submit.error && (
+        <p role="alert" className="font-semibold text-alarm">
+          Not submitted. {sentenceOf(submit.error)}
+        </p>
+      )}
       <div className="flex flex-wrap items-center gap-3">
-        <Button type="submit" variant="primary" sizing="form" busy={submit.isPending}>Submit the talk</Button>
-        <span className="text-ink3">What you type is kept in this browser until you submit. The committee decides; you hear by mail.</span>
+        <Button type="submit" variant="primary" sizing="form" busy={submit.isPending}>
+          Submit the talk
+        </Button>
+        <span className="text-ink3">
+          What you type is kept in this browser until you submit. The committee decides; you hear by mail.
+        </span>
       </div>
     </form>
   );

@@ -3,7 +3,8 @@ import { talkKindNames, talkStateNames } from '@shared/features/talks/talks.rule
 import type { TalkFilter } from './talks.queries';
 
 const missing = ['abstract', 'answer', 'slides'] as const;
-const one = <V extends string>(allowed: readonly V[], text: string | null): V | undefined => allowed.find((value) => value === text);
+const one = <V extends string>(allowed: readonly V[], text: string | null): V | undefined =>
+  allowed.find((value) => value === text);
 
 /** The filter that an address holds; what is not known is left out. */
 export function filterOf(params: URLSearchParams): TalkFilter {

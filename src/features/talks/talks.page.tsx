@@ -30,12 +30,24 @@ export function Component() {
     <>
       <PageBar
         title="Talks"
-        controls={<Segmented label="View" value={view} onChange={(next) => setParams(next === 'courses' ? { view: 'courses' } : {})} options={[{ value: 'talks', label: 'Talks' }, { value: 'courses', label: 'Lecture courses' }]} />}
+        controls={
+          <Segmented
+            label="View"
+            value={view}
+            onChange={(next) => setParams(next === 'courses' ? { view: 'courses' } : {})}
+            options={[
+              { value: 'talks', label: 'Talks' },
+              { value: 'courses', label: 'Lecture courses' },
+            ]}
+          />
+        }
         actions={
           <>
             <Remind event={event} />
             <Button onClick={() => setDialog('add')}>Add a talk …</Button>
-            <Button variant="primary" onClick={() => setDialog('invite')}>Invite a speaker …</Button>
+            <Button variant="primary" onClick={() => setDialog('invite')}>
+              Invite a speaker …
+            </Button>
           </>
         }
       />
@@ -44,14 +56,29 @@ export function Component() {
       ) : (
         <div className="grid grow grid-cols-[minmax(0,1fr)_420px] max-lg:grid-cols-1">
           <div className={`min-w-0 p-6 max-sm:p-4 ${chosen ? 'max-lg:hidden' : ''}`}>
-            <TalksList event={event} params={params} setParams={setParams} chosen={chosen} onChoose={choose} />
+            <TalksList
+              event={event}
+              params={params}
+              setParams={setParams}
+              chosen={chosen}
+              onChoose={choose}
+            />
           </div>
-          <aside aria-label="The chosen talk" className={`min-w-0 border-l border-rule bg-paper p-6 max-lg:border-l-0 max-sm:p-4 ${chosen ? '' : 'max-lg:hidden'}`}>
-            {chosen ? <TalkRecord key={chosen} event={event} talkId={chosen} onClose={() => choose(undefined)} /> : <p className="font-serif text-[18px] text-ink3">Choose a talk to see its abstract and files.</p>}
+          <aside
+            aria-label="The chosen talk"
+            className={`min-w-0 border-l border-rule bg-paper p-6 max-lg:border-l-0 max-sm:p-4 ${chosen ? '' : 'max-lg:hidden'}`}
+          >
+            {chosen ? (
+              <TalkRecord key={chosen} event={event} talkId={chosen} onClose={() => choose(undefined)} />
+            ) : (
+              <p className="font-serif text-[18px] text-ink3">Choose a talk to see its abstract and files.</p>
+            )}
           </aside>
         </div>
       )}
-      {dialog === 'invite' && <InviteDialog event={event} onClose={() => setDialog(undefined)} onDone={choose} />}
+      {dialog === 'invite' && (
+        <InviteDialog event={event} onClose={() => setDialog(undefined)} onDone={choose} />
+      )}
       {dialog === 'add' && <TalkDialog event={event} onClose={() => setDialog(undefined)} onDone={choose} />}
     </>
   );
@@ -61,8 +88,17 @@ function Remind({ event }: { event: string }) {
   const remind = useRemind(event);
   const run = () =>
     remind.mutate(undefined, {
-      onSuccess: ({ written }) => toast(written === 0 ? 'Nobody owes an abstract.' : `${count(written, 'letter')} on the way; nobody gets two on one day.`),
+      onSuccess: ({ written }) =>
+        toast(
+          written === 0
+            ? 'Nobody owes an abstract.'
+            : `${count(written, 'letter')} on the way; nobody gets two on one day.`,
+        ),
       onError: sayFailure,
     });
-  return <Button busy={remind.isPending} onClick={run}>Remind who owes an abstract</Button>;
+  return (
+    <Button busy={remind.isPending} onClick={run}>
+      Remind who owes an abstract
+    </Button>
+  );
 }

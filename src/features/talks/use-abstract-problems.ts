@@ -12,7 +12,10 @@ export function useAbstractProblems(source: string): { problems: AbstractProblem
   const parsed = useMemo(() => parseLatex(source), [source]);
   // Setting every formula takes longer than a key stroke may: it follows when there is time.
   const later = useDeferredValue(parsed);
-  const formulas = useMemo(() => later.paragraphs.flat().filter((segment) => segment.type === 'math'), [later]);
+  const formulas = useMemo(
+    () => later.paragraphs.flat().filter((segment) => segment.type === 'math'),
+    [later],
+  );
   const katex = useKatex(formulas.length > 0);
   const unset = useMemo(() => {
     if (!katex) return [];

@@ -23,7 +23,13 @@ export function useAutosave<V>({ initial, version, save, reload, delay = 1200 }:
   const [savedAt, setSavedAt] = useState<Date>();
   const [error, setError] = useState<unknown>();
   const [theirs, setTheirs] = useState<V>();
-  const work = useRef({ value: initial, base: JSON.stringify(initial), version, busy: undefined as Promise<boolean> | undefined, timer: 0 as unknown as ReturnType<typeof setTimeout> });
+  const work = useRef({
+    value: initial,
+    base: JSON.stringify(initial),
+    version,
+    busy: undefined as Promise<boolean> | undefined,
+    timer: 0 as unknown as ReturnType<typeof setTimeout>,
+  });
   const calls = useRef({ save, reload });
   useEffect(() => {
     calls.current = { save, reload };
@@ -88,7 +94,8 @@ export function useAutosave<V>({ initial, version, save, reload, delay = 1200 }:
   );
 
   useEffect(() => {
-    const leaving = (event: BeforeUnloadEvent) => JSON.stringify(work.current.value) !== work.current.base && event.preventDefault();
+    const leaving = (event: BeforeUnloadEvent) =>
+      JSON.stringify(work.current.value) !== work.current.base && event.preventDefault();
     const job = work.current;
     addEventListener('beforeunload', leaving);
     return () => {
@@ -109,7 +116,11 @@ class Stale extends Error {
   }
 }
 
-async function saveOrRebase<V>(job: { base: string; version: number }, value: V, calls: Pick<Options<V>, 'save' | 'reload'>): Promise<number> {
+async function saveOrRebase<V>(
+  job: { base: string; version: number },
+  value: V,
+  calls: Pick<Options<V>, 'save' | 'reload'>,
+): Promise<number> {
   try {
     return await calls.save(value, job.version);
   } catch (failure) {
@@ -121,4 +132,5 @@ async function saveOrRebase<V>(job: { base: string; version: number }, value: V,
 }
 
 /** The server trims lines: spaces at the ends are no change by somebody else. */
-const withoutEdges = (value: unknown): string => JSON.stringify(value, (_key, part: unknown) => (typeof part === 'string' ? part.trim() : part));
+const withoutEdges = (value: unknown): string =>
+  JSON.stringify(value, (_key, part: unknown) => (typeof part === 'string' ? part.trim() : part));

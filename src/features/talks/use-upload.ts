@@ -22,12 +22,21 @@ export function useMaterialUpload(talk: Talk, kind: (typeof materialKinds)[numbe
 
   const start = (file: File) => {
     setError(undefined);
-    if (file.size > MAX_UPLOAD) return setError(`${file.name} has ${formatBytes(file.size)}; at most ${formatBytes(MAX_UPLOAD)} are taken.`);
+    if (file.size > MAX_UPLOAD)
+      return setError(
+        `${file.name} has ${formatBytes(file.size)}; at most ${formatBytes(MAX_UPLOAD)} are taken.`,
+      );
     if (file.size === 0) return setError(`${file.name} is empty.`);
     stopper.current = new AbortController();
     setTravelling({ name: file.name, bytes: file.size, share: 0, startedAt: Date.now() });
     upload.mutate(
-      { talk, kind, file, signal: stopper.current.signal, onProgress: (share) => setTravelling((now) => now && { ...now, share }) },
+      {
+        talk,
+        kind,
+        file,
+        signal: stopper.current.signal,
+        onProgress: (share) => setTravelling((now) => now && { ...now, share }),
+      },
       {
         onError: (failure) => {
           if (failure.name === 'AbortError') return;

@@ -24,14 +24,24 @@ beforeAll(async () => {
 beforeEach(async () => {
   await t.reset();
   event = await buildEvent();
-  organiser = await t.signIn(await buildAccount({}, [{ role: 'organiser', scope: 'event', scopeId: event.id }]));
+  organiser = await t.signIn(
+    await buildAccount({}, [{ role: 'organiser', scope: 'event', scopeId: event.id }]),
+  );
   ({ speaker, talk, version } = await submitted(t, event.slug));
 });
 
 const ofTalk = () => ({ params: { event: event.slug, talk } });
-const upload = (client: Client, content: Buffer, name: string, kind: 'slides' | 'notes' = 'slides') => client.call(materials.uploadMaterial, { ...ofTalk(), body: { kind }, file: { field: 'file', name, content } });
+const upload = (client: Client, content: Buffer, name: string, kind: 'slides' | 'notes' = 'slides') =>
+  client.call(materials.uploadMaterial, {
+    ...ofTalk(),
+    body: { kind },
+    file: { field: 'file', name, content },
+  });
 const address = (file: string) => `/api/events/${event.slug}/materials/${file}`;
-const PNG = Buffer.from('iVBORw0KGgoAAAANSUhEUgAAAAEAAAABCAYAAAAfFcSJAAAADUlEQVR42mNk+M9QDwADhgGAWjR9awAAAABJRU5ErkJggg==', 'base64');
+const PNG = Buffer.from(
+  'iVBORw0KGgoAAAANSUhEUgAAAAEAAAABCAYAAAAfFcSJAAAADUlEQVR42mNk+M9QDwADhgGAWjR9awAAAABJRU5ErkJggg==',
+  'base64',
+);
 
 describe('C3 what is taken', () => {
   it.each([
@@ -44,18 +54,37 @@ describe('C3 what is taken', () => {
   ])('%s is refused and kept nowhere', async (_name, content, name, status) => {
     const before = kept();
     const refused = await upload(speaker, content, name);
-    expect([refused.status, problemOf(refused).fields]).toEqual([status, { file: expect.any(String) as string }]);
+    expect([refused.status, problemOf(refused).fields]).toEqual([
+      status,
+      { file: expect.any(String) as string },
+    ]);
     expect(kept()).toBe(before);
   });
 
   it('a picture is taken as notes, without the folders that its name carries', async () => {
     const taken = await upload(speaker, PNG, '..\\..\\etc\\sketch.png', 'notes');
-    expect(taken.body.materials).toMatchObject([{ kind: 'notes', visibility: 'participants', versions: [{ fileName: 'sketch.png', type: 'image/png', sha256: createHash('sha256').update(PNG).digest('hex') }] }]);
+    expect(taken.body.materials).toMatchObject([
+      {
+        kind: 'notes',
+        visibility: 'participants',
+        versions: [
+          {
+            fileName: 'sketch.png',
+            type: 'image/png',
+            sha256: createHash('sha256').update(PNG).digest('hex'),
+          },
+        ],
+      },
+    ]);
   });
 
   it('more than the limit is refused while it arrives', async () => {
     const before = kept();
-    const refused = await upload(speaker, Buffer.concat([pdf, Buffer.alloc(materials.MAX_UPLOAD)]), 'big.pdf');
+    const refused = await upload(
+      speaker,
+      Buffer.concat([pdf, Buffer.alloc(materials.MAX_UPLOAD)]),
+      'big.pdf',
+    );
     expect(refused.status).toBe(413);
     expect(kept()).toBe(before);
   });
@@ -86,13 +115,25 @@ describe('C3 versions', () => {
     const { body } = await upload(speaker, second, 'b.pdf');
     const [b, a] = body.materials[0]?.versions ?? [];
     expect([b?.number, b?.fileName, a?.number, a?.fileName]).toEqual([2, 'b.pdf', 1, 'a.pdf']);
-    const old = await speaker.get(address(a?.id ?? '')).buffer().parse(bytes);
-    expect(createHash('sha256').update(old.body as Buffer).digest('hex')).toBe(a?.sha256);
-    expect(old.headers).toMatchObject({ 'content-type': 'application/pdf', 'x-content-type-options': 'nosniff' });
+    const old = await speaker
+      .get(address(a?.id ?? ''))
+      .buffer()
+      .parse(bytes);
+    expect(
+      createHash('sha256')
+        .update(old.body as Buffer)
+        .digest('hex'),
+    ).toBe(a?.sha256);
+    expect(old.headers).toMatchObject({
+      'content-type': 'application/pdf',
+      'x-content-type-options': 'nosniff',
+    });
     expect(old.headers['content-security-policy']).toContain('sandbox');
     const { MaterialVersionRow } = await import('../../../server/features/talks/talks.model');
     const { transaction } = await import('../../../server/db/transaction');
-    await expect(transaction(() => MaterialVersionRow.update({ fileName: 'c.pdf' }, { where: { id: a?.id } }))).rejects.toMatchObject({ parent: { message: expect.stringContaining('never overwritten') as string } });
+    await expect(
+      transaction(() => MaterialVersionRow.update({ fileName: 'c.pdf' }, { where: { id: a?.id } })),
+    ).rejects.toMatchObject({ parent: { message: expect.stringContaining('never overwritten') as string } });
   });
 });
 
@@ -105,7 +146,12 @@ const bytes = (answer: unknown, done: (error: Error | null, body: Buffer) => voi
 
 describe('C3 who may see it', () => {
   const tomorrow = addDays(new Date().toISOString().slice(0, 10), 2);
-  const cases: [talk: 'accepted' | 'submitted', visibility: 'organisers' | 'participants' | 'public', from: string | null, seen: string[]][] = [
+  const cases: [
+    talk: 'accepted' | 'submitted',
+    visibility: 'organisers' | 'participants' | 'public',
+    from: string | null,
+    seen: string[],
+  ][] = [
     ['accepted', 'organisers', null, ['organiser', 'speaker']],
     ['accepted', 'participants', null, ['organiser', 'speaker', 'participant']],
     ['accepted', 'participants', tomorrow, ['organiser', 'speaker']],
@@ -114,34 +160,70 @@ describe('C3 who may see it', () => {
     ['submitted', 'public', null, ['organiser', 'speaker']],
   ];
   it.each(cases)('%s talk, %s, from %s: %j', async (state, visibility, visibleFrom, seen) => {
-    if (state === 'accepted') await organiser.call(contract.decideTalk, { ...ofTalk(), version, body: { decision: 'accepted' } });
+    if (state === 'accepted')
+      await organiser.call(contract.decideTalk, { ...ofTalk(), version, body: { decision: 'accepted' } });
     const { body } = await upload(speaker, pdf, 'a.pdf');
     const material = body.materials[0] as contract.Material;
-    const set = await speaker.call(materials.setMaterialAccess, { params: { event: event.slug, talk, material: material.id }, version: material.version, body: { visibility, visibleFrom, licence: 'cc_by' } });
+    const set = await speaker.call(materials.setMaterialAccess, {
+      params: { event: event.slug, talk, material: material.id },
+      version: material.version,
+      body: { visibility, visibleFrom, licence: 'cc_by' },
+    });
     expect(set.status, JSON.stringify(set.body)).toBe(200);
     const account = await buildAccount();
     knowParticipantsBy(async (_event, id) => id === account.id);
-    const readers = { organiser, speaker, participant: await t.signIn(account), other: await t.signIn(await buildAccount()), stranger: t.stranger };
-    const statuses = await Promise.all(Object.entries(readers).map(async ([name, client]) => [name, (await client.get(address(material.versions[0]?.id ?? ''))).status]));
-    expect(Object.fromEntries(statuses)).toEqual(Object.fromEntries(Object.keys(readers).map((name) => [name, seen.includes(name) ? 200 : 404])));
+    const readers = {
+      organiser,
+      speaker,
+      participant: await t.signIn(account),
+      other: await t.signIn(await buildAccount()),
+      stranger: t.stranger,
+    };
+    const statuses = await Promise.all(
+      Object.entries(readers).map(async ([name, client]) => [
+        name,
+        (await client.get(address(material.versions[0]?.id ?? ''))).status,
+      ]),
+    );
+    expect(Object.fromEntries(statuses)).toEqual(
+      Object.fromEntries(Object.keys(readers).map((name) => [name, seen.includes(name) ? 200 : 404])),
+    );
   });
 
   it('is set by the talk’s people on the version they saw', async () => {
     const { body } = await upload(speaker, pdf, 'a.pdf');
     const material = body.materials[0] as contract.Material;
-    const at = { params: { event: event.slug, talk, material: material.id }, body: { visibility: 'public' as const, visibleFrom: null, licence: 'cc_by' as const } };
+    const at = {
+      params: { event: event.slug, talk, material: material.id },
+      body: { visibility: 'public' as const, visibleFrom: null, licence: 'cc_by' as const },
+    };
     const other = await t.signIn(await buildAccount());
-    expect((await other.call(materials.setMaterialAccess, { ...at, version: material.version })).status).toBe(404);
+    expect((await other.call(materials.setMaterialAccess, { ...at, version: material.version })).status).toBe(
+      404,
+    );
     expect((await speaker.call(materials.setMaterialAccess, at)).status).toBe(428);
-    expect((await speaker.call(materials.setMaterialAccess, { ...at, version: material.version })).status).toBe(200);
-    expect((await speaker.call(materials.setMaterialAccess, { ...at, version: material.version })).status).toBe(412);
-    expect((await speaker.call(materials.setMaterialAccess, { ...at, version: material.version + 1, body: { ...at.body, licence: 'mine' } })).status).toBe(422);
+    expect(
+      (await speaker.call(materials.setMaterialAccess, { ...at, version: material.version })).status,
+    ).toBe(200);
+    expect(
+      (await speaker.call(materials.setMaterialAccess, { ...at, version: material.version })).status,
+    ).toBe(412);
+    expect(
+      (
+        await speaker.call(materials.setMaterialAccess, {
+          ...at,
+          version: material.version + 1,
+          body: { ...at.body, licence: 'mine' },
+        })
+      ).status,
+    ).toBe(422);
   });
 });
 
 describe('recording', () => {
   it('is agreed to by the speaker only, can be withdrawn, and the history stays', async () => {
-    const set = (client: Client, consent: boolean) => client.call(materials.setRecordingConsent, { ...ofTalk(), body: { consent } });
+    const set = (client: Client, consent: boolean) =>
+      client.call(materials.setRecordingConsent, { ...ofTalk(), body: { consent } });
     expect((await set(organiser, true)).status).toBe(403);
     expect((await set(speaker, true)).body.recordingConsent).toBe(true);
     expect((await set(speaker, true)).body.recordingConsent).toBe(true);

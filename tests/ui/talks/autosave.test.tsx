@@ -29,7 +29,15 @@ afterEach(() => void vi.useRealTimers());
 const pass = (ms: number) => act(() => vi.advanceTimersByTimeAsync(ms));
 
 function start(there: ReturnType<typeof server>) {
-  return renderHook(() => useAutosave<Text>({ initial: there.state.value, version: there.state.version, save: there.save, reload: there.reload, delay: 1000 }));
+  return renderHook(() =>
+    useAutosave<Text>({
+      initial: there.state.value,
+      version: there.state.version,
+      save: there.save,
+      reload: there.reload,
+      delay: 1000,
+    }),
+  );
 }
 
 describe('useAutosave', () => {
@@ -89,18 +97,25 @@ describe('useAutosave', () => {
     expect(there.state.value.text).toBe('mine');
   });
 
-  it.each(['mine', 'theirs'] as const)('asks when somebody else changed the same text: %s', async (choice) => {
-    const there = server('a');
-    const { result } = start(there);
-    there.otherSaves({ text: 'theirs' });
-    act(() => result.current.change({ text: 'mine' }));
-    await pass(1000);
-    expect(result.current).toMatchObject({ state: 'stale', value: { text: 'mine' }, theirs: { text: 'theirs' } });
-    expect(there.state.value.text).toBe('theirs');
-    await act(() => result.current.resolve(choice));
-    expect(result.current).toMatchObject({ state: 'saved', value: { text: choice } });
-    expect(there.state.value.text).toBe(choice);
-  });
+  it.each(['mine', 'theirs'] as const)(
+    'asks when somebody else changed the same text: %s',
+    async (choice) => {
+      const there = server('a');
+      const { result } = start(there);
+      there.otherSaves({ text: 'theirs' });
+      act(() => result.current.change({ text: 'mine' }));
+      await pass(1000);
+      expect(result.current).toMatchObject({
+        state: 'stale',
+        value: { text: 'mine' },
+        theirs: { text: 'theirs' },
+      });
+      expect(there.state.value.text).toBe('theirs');
+      await act(() => result.current.resolve(choice));
+      expect(result.current).toMatchObject({ state: 'saved', value: { text: choice } });
+      expect(there.state.value.text).toBe(choice);
+    },
+  );
 
   it('saves what is left when the page is left', async () => {
     const there = server('a');

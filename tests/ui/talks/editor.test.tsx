@@ -30,7 +30,9 @@ describe('the abstract', () => {
     expect(field.getAttribute('aria-invalid')).toBeNull();
     await userEvent.type(field, ' \\textsc{{hand}');
     const said = document.getElementById(field.getAttribute('aria-describedby') ?? '');
-    expect(said?.textContent).toBe('Line 3: \\textsc is not known here. Use \\emph, or write the word plainly.');
+    expect(said?.textContent).toBe(
+      'Line 3: \\textsc is not known here. Use \\emph, or write the word plainly.',
+    );
     expect(screen.getByTitle('Not known here').textContent).toBe('\\textsc{hand}');
   });
 
@@ -62,7 +64,12 @@ describe('the abstract', () => {
       { from: 15, to: 20, kind: 'unknown' },
     ]);
     expect(lines.map((pieces) => pieces.map((piece) => piece.text).join('')).join('\n')).toBe(source);
-    expect(lines.map((pieces) => pieces.map((piece) => piece.kind))).toEqual([['plain', 'math'], ['math'], ['math'], ['unknown']]);
+    expect(lines.map((pieces) => pieces.map((piece) => piece.kind))).toEqual([
+      ['plain', 'math'],
+      ['math'],
+      ['math'],
+      ['unknown'],
+    ]);
   });
 });
 
@@ -82,7 +89,10 @@ describe('subjects and references', () => {
     await userEvent.type(field, 'C23{Enter}');
     expect(screen.getByText('52C23')).toBeTruthy();
     await userEvent.click(screen.getByRole('button', { name: 'Make first' }));
-    expect(screen.getAllByRole('listitem').map((item) => item.textContent?.slice(0, 5))).toEqual(['52C23', '37E05']);
+    expect(screen.getAllByRole('listitem').map((item) => item.textContent?.slice(0, 5))).toEqual([
+      '52C23',
+      '37E05',
+    ]);
   });
 
   it('takes a DOI as an address and refuses it twice', async () => {
@@ -99,7 +109,12 @@ describe('subjects and references', () => {
 
 it('a file over the limit is refused before anything is sent', async () => {
   const fetched = vi.spyOn(globalThis, 'fetch');
-  const talk = { id: '01890000-0000-7000-8000-000000000001', eventSlug: 'x', materials: [], can: { upload: true } } as unknown as Talk;
+  const talk = {
+    id: '01890000-0000-7000-8000-000000000001',
+    eventSlug: 'x',
+    materials: [],
+    can: { upload: true },
+  } as unknown as Talk;
   render(
     <QueryClientProvider client={new QueryClient()}>
       <MaterialsPanel talk={talk} kind="slides" />
