@@ -13,6 +13,8 @@ import { registrationRoutes } from './features/registration/registration.routes'
 import { isParticipant } from './features/registration/registration.service';
 import { knowParticipantsBy } from './features/talks/talks-materials.service';
 import { feedRoutes } from './features/messages/messages-feeds.routes';
+import { grantsRoutes } from './features/grants/grants.routes';
+import { fundIdOf, fundsById } from './features/grants/grants-funds.service';
 import { messagesRoutes } from './features/messages/messages.routes';
 import { unsubscribeRoutes } from './features/messages/messages-unsubscribe.routes';
 import { runupRoutes } from './features/runup/runup.routes';
@@ -26,6 +28,7 @@ export function mountRoutes(router: Router): void {
   programmeRoutes(router);
   financeRoutes(router);
   registrationRoutes(router);
+  grantsRoutes(router);
   messagesRoutes(router);
   feedRoutes(router);
   runupRoutes(router);
@@ -34,11 +37,12 @@ export function mountRoutes(router: Router): void {
 
 /** How doors find what a path names; here, because the doors know no feature. */
 export function introduceScopes(): void {
-  resolveScopesWith({ event: eventIdOf, fund: async () => null });
+  resolveScopesWith({ event: eventIdOf, fund: fundIdOf });
   knowParticipantsBy(isParticipant);
   knowAboutEvents({ placedRooms, feeCategories: countFeeCategories });
   nameScopesWith(async (ids) => {
-    const events = await eventsById(ids);
-    return new Map([...events].map(([id, event]) => [id, { key: event.slug, title: event.title }]));
+    const list = [...ids];
+    const [events, funds] = [await eventsById(list), await fundsById(list)];
+    return new Map([...[...events].map(([id, event]) => [id, { key: event.slug, title: event.title }] as const), ...[...funds].map(([id, fund]) => [id, { key: id, title: fund.name }] as const)]);
   });
 }

@@ -3,6 +3,7 @@ import { financeEndpoints } from './features/finance/finance.contract';
 import { registrationEndpoints } from './features/registration/registration.contract';
 import { messagesEndpoints } from './features/messages/messages.contract';
 import { runupEndpoints } from './features/runup/runup.contract';
+import { grantsEndpoints } from './features/grants/grants.contract';
 import { accountsEndpoints } from './features/accounts/accounts.contract';
 import { eventsEndpoints } from './features/events/events.contract';
 import { talksCoursesEndpoints } from './features/talks/talks-courses.contract';
@@ -13,4 +14,4 @@ import { talksEndpoints } from './features/talks/talks.contract';
 import { programmeEndpoints } from './features/programme/programme.contract';
 
 /** Every operation of the API: the documentation and the tests walk this list. One line per feature. */
-export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints, ...talksEndpoints, ...talksInvitationEndpoints, ...talksStayEndpoints, ...talksCoursesEndpoints, ...talksMaterialsEndpoints, ...programmeEndpoints, ...financeEndpoints, ...registrationEndpoints, ...messagesEndpoints, ...runupEndpoints];
+export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints, ...talksEndpoints, ...talksInvitationEndpoints, ...talksStayEndpoints, ...talksCoursesEndpoints, ...talksMaterialsEndpoints, ...programmeEndpoints, ...financeEndpoints, ...registrationEndpoints, ...grantsEndpoints, ...messagesEndpoints, ...runupEndpoints];

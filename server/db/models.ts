@@ -5,6 +5,7 @@ import { initialiseAccounts } from '../features/accounts/accounts.model';
 import { initialiseEvents } from '../features/events/events.model';
 import { initialiseFinance } from '../features/finance/finance.model';
 import { initialiseRegistration } from '../features/registration/registration.model';
+import { initialiseGrants } from '../features/grants/grants.model';
 import { initialiseMessagesFeature } from '../features/messages/messages.model';
 import { initialiseTalks } from '../features/talks/talks.model';
 import { initialiseProgramme } from '../features/programme/programme.model';
@@ -19,6 +20,7 @@ export function initialiseModels(): void {
   initialiseProgramme(sequelize);
   initialiseFinance(sequelize);
   initialiseRegistration(sequelize);
+  initialiseGrants(sequelize);
   initialiseMessagesFeature(sequelize);
 }
 
