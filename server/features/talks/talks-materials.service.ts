@@ -1,3 +1,4 @@
+import type { VisibleMaterial } from '@shared/features/talks/talks-materials.contract';
 import type { Talk } from '@shared/features/talks/talks.contract';
 import { instantToLocal } from '@shared/lib/time';
 import { forbidden, invalid, notFound, Problem } from '@shared/http/problem';
@@ -9,7 +10,7 @@ import { fileResponse, keepUpload, type FileResponse, type ReceivedFile } from '
 import { recordAudit } from '@server/features/accounts/accounts.service';
 import { eventById } from '@server/features/events/events.service';
 import { ConsentRow, MaterialRow, MaterialVersionRow, TalkPersonRow, TalkRow } from './talks.model';
-import { canConsent, canDownload, canReadTalk, canUpload } from './talks.policy';
+import { canConsent, canDownload, canReadTalk, canUpload, isOrganiser } from './talks.policy';
 import { readTalk, requireTalk, subjectOf } from './talks.service';
 
 const SLIDES = [
@@ -116,6 +117,63 @@ export function knowParticipantsBy(isParticipant: typeof readers.isParticipant):
   readers.isParticipant = isParticipant;
 }
 
+async function readerOf(actor: Actor | null, eventId: string, now: Date) {
+  const event = await eventById(eventId);
+  return {
+    isParticipant: actor ? await readers.isParticipant(eventId, actor.accountId) : false,
+    today: instantToLocal(now, event.timeZone).date,
+    eventPublic: event.state !== 'draft',
+  };
+}
+
+/** What this reader may download of an event's accepted talks, the newest version of each. @throws 404 for outsiders of a draft event. */
+export async function visibleMaterials(
+  actor: Actor | null,
+  eventId: string,
+  now: Date,
+): Promise<VisibleMaterial[]> {
+  const reader = await readerOf(actor, eventId, now);
+  if (!reader.eventPublic && !isOrganiser(actor, eventId)) throw notFound('This event');
+  const talks = new Map(
+    (await TalkRow.findAll({ where: { eventId, state: 'accepted' } })).map((talk) => [talk.id, talk]),
+  );
+  const people = await TalkPersonRow.ofTalks([...talks.keys()]);
+  const materials = (
+    await MaterialRow.findAll({ where: { talkId: [...talks.keys()] }, order: ['talkId', 'kind'] })
+  ).filter((material) =>
+    canDownload(
+      actor,
+      subjectOf(
+        talks.get(material.talkId) as TalkRow,
+        people.filter((person) => person.talkId === material.talkId),
+      ),
+      material,
+      reader,
+    ),
+  );
+  const versions = await MaterialVersionRow.findAll({
+    where: { materialId: materials.map((material) => material.id) },
+    order: ['number'],
+  });
+  const newest = new Map(versions.map((version) => [version.materialId, version]));
+  return materials.flatMap((material) => {
+    const version = newest.get(material.id);
+    if (!version) return [];
+    const { fileName, type, bytes } = version;
+    return [
+      {
+        talkId: material.talkId,
+        kind: material.kind,
+        file: version.id,
+        fileName,
+        type,
+        bytes,
+        licence: material.licence,
+      },
+    ];
+  });
+}
+
 /** The bytes of a version, after the policy. @throws 404 for everybody who may not see it. */
 export async function downloadMaterial(
   actor: Actor | null,
@@ -127,13 +185,8 @@ export async function downloadMaterial(
   const material = version && (await MaterialRow.findByPk(version.materialId));
   const talk = material && (await TalkRow.findOne({ where: { id: material.talkId, eventId } }));
   if (!version || !material || !talk) throw notFound('This file');
-  const event = await eventById(eventId);
   const people = await TalkPersonRow.ofTalks(talk.id);
-  const reader = {
-    isParticipant: actor ? await readers.isParticipant(eventId, actor.accountId) : false,
-    today: instantToLocal(now, event.timeZone).date,
-    eventPublic: event.state !== 'draft',
-  };
+  const reader = await readerOf(actor, eventId, now);
   if (!canDownload(actor, subjectOf(talk, people), material, reader)) throw notFound('This file');
   return fileResponse({
     storedName: version.storedName,

@@ -22,6 +22,7 @@ import {
   setMaterialAccess,
   setRecordingConsent,
   uploadMaterial,
+  visibleMaterials,
 } from './talks-materials.service';
 import { handInAbstract, readCall, saveAbstract, submitTalk } from './talks-abstract.service';
 import { readStage } from './talks-stage.service';
@@ -146,6 +147,12 @@ function courseRoutes(router: Router): void {
 }
 
 function materialRoutes(router: Router): void {
+  serve(router, materials.listMaterials, {
+    access: anyone,
+    handle: async ({ maybeActor, eventId, now }) => ({
+      items: await visibleMaterials(maybeActor, eventId, now),
+    }),
+  });
   serve(router, materials.uploadMaterial, {
     access: signedIn,
     handle: ({ actor, eventId, params, body, file }) =>

@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { endpoint } from '../../http/endpoint';
 import { id, slug } from '../../lib/ids';
 import { localDate } from '../../lib/time';
-import { licences, materialKinds, ofTalk, talkSchema, visibilities } from './talks.contract';
+import { inEvent, licences, materialKinds, ofTalk, talkSchema, visibilities } from './talks.contract';
 
 /** Bytes of one file, at most. */
 export const MAX_UPLOAD = 60_000_000;
@@ -48,7 +48,30 @@ export const setRecordingConsent = endpoint({
   response: talkSchema,
 });
 
+/** The newest version of a material that the reader may see. */
+export const visibleMaterial = z.object({
+  talkId: id,
+  kind: z.enum(materialKinds),
+  /** For the download address. */
+  file: id,
+  fileName: z.string(),
+  /** Real type by content. */
+  type: z.string(),
+  bytes: z.number().int(),
+  licence: z.enum(licences),
+});
+export type VisibleMaterial = z.infer<typeof visibleMaterial>;
+export const listMaterials = endpoint({
+  id: 'talks.materials',
+  method: 'GET',
+  path: '/api/events/:event/materials',
+  summary: 'Slides, notes and problem sheets of accepted talks that the reader may see, newest versions.',
+  params: inEvent,
+  response: z.object({ items: z.array(visibleMaterial) }),
+});
+
 export const talksMaterialsEndpoints = [
+  listMaterials,
   uploadMaterial,
   setMaterialAccess,
   downloadMaterial,

@@ -1,4 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
+import { Link } from 'react-router-dom';
 import type { PresenceInput, Stage } from '@shared/features/talks/talks-stay.contract';
 import { presenceErrors } from '@shared/features/talks/talks.rules';
 import { addDays } from '@shared/lib/time';
@@ -66,6 +67,11 @@ function Form({ stage, presence, compact }: { stage: Stage; presence: Presence; 
         />
       </div>
       <StayBar startsOn={stage.startsOn} endsOn={stage.endsOn} stay={stay} />
+      {compact && (
+        <Link className="text-dense" to={`/events/${stage.slug}/my-travel`}>
+          Times away and wishes
+        </Link>
+      )}
       {!compact && (
         <Away stage={stage} stay={stay} errors={errors} onChange={(blocked) => set({ blocked })} />
       )}

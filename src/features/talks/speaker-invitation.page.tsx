@@ -62,7 +62,7 @@ function Invitation({ token, offer }: { token: string; offer: Offer }) {
       {
         onSuccess: (result) =>
           result.answer === 'accepted' &&
-          result.session.account &&
+          result.session.account?.email === offer.email &&
           void navigate(`/events/${result.eventSlug}/my-talks/${result.talkId}`, { replace: true }),
       },
     );

@@ -92,7 +92,7 @@ function Remind({ event }: { event: string }) {
         toast(
           written === 0
             ? 'Nobody owes an abstract.'
-            : `${count(written, 'letter')} on the way; nobody gets two on one day.`,
+            : `${count(written, 'abstract')} owed. Each speaker gets at most one letter a day about it.`,
         ),
       onError: sayFailure,
     });

@@ -60,6 +60,12 @@ export const coursesQuery = (event: string) =>
     queryKey: ['talks', 'courses', event],
     queryFn: ({ signal }) => call(courses.listCourses, { params: { event }, signal }),
   });
+/** Newest versions that the reader may download, of all accepted talks of an event. */
+export const materialsQuery = (event: string) =>
+  queryOptions({
+    queryKey: ['talks', 'materials', event],
+    queryFn: ({ signal }) => call(materials.listMaterials, { params: { event }, signal }),
+  });
 export const myTalksQuery = queryOptions({
   queryKey: ['talks', 'mine'],
   queryFn: ({ signal }) => call(contract.listMyTalks, { signal }),

@@ -105,6 +105,14 @@ export function useAutosave<V>({ initial, version, save, reload, delay = 1200 }:
     };
   }, [flush]);
 
+  // What arrived after this began (saved when the page before was left) is taken over while nothing is typed here.
+  useEffect(() => {
+    const job = work.current;
+    if (version <= job.version || job.busy || JSON.stringify(job.value) !== job.base) return;
+    Object.assign(job, { value: initial, base: JSON.stringify(initial), version });
+    setValue(initial);
+  }, [initial, version]);
+
   /** After another operation on the same thing has raised its version. */
   const setVersion = useCallback((next: number) => void (work.current.version = next), []);
   return { value, change, state, savedAt, error, theirs, flush, resolve, setVersion };

@@ -188,6 +188,21 @@ describe('C3 who may see it', () => {
     expect(Object.fromEntries(statuses)).toEqual(
       Object.fromEntries(Object.keys(readers).map((name) => [name, seen.includes(name) ? 200 : 404])),
     );
+    const listed = await Promise.all(
+      Object.entries(readers).map(async ([name, client]) => {
+        const { items } = (await client.call(materials.listMaterials, { params: { event: event.slug } }))
+          .body;
+        return items.some((item) => item.file === material.versions[0]?.id) ? [name] : [];
+      }),
+    );
+    expect(listed.flat()).toEqual(state === 'accepted' ? seen : []);
+  });
+
+  it('of a draft event nothing is told', async () => {
+    const draft = await buildEvent({}, 'draft');
+    const at = { params: { event: draft.slug } };
+    expect((await t.stranger.call(materials.listMaterials, at)).status).toBe(404);
+    expect((await speaker.call(materials.listMaterials, at)).status).toBe(404);
   });
 
   it('is set by the talk’s people on the version they saw', async () => {

@@ -117,6 +117,23 @@ describe('useAutosave', () => {
     },
   );
 
+  it('takes over what arrives later while nothing is typed, and never over what is', async () => {
+    const there = server('a');
+    const { result, rerender } = renderHook(
+      ({ value, version }: { value: Text; version: number }) =>
+        useAutosave<Text>({ initial: value, version, save: there.save, reload: there.reload, delay: 1000 }),
+      { initialProps: { value: { text: 'a' }, version: 1 } },
+    );
+    there.otherSaves({ text: 'from before' });
+    rerender({ value: { text: 'from before' }, version: 2 });
+    expect(result.current.value.text).toBe('from before');
+    act(() => result.current.change({ text: 'typed' }));
+    rerender({ value: { text: 'something else' }, version: 9 });
+    expect(result.current.value.text).toBe('typed');
+    await pass(1000);
+    expect(there.state.value.text).toBe('typed');
+  });
+
   it('saves what is left when the page is left', async () => {
     const there = server('a');
     const { result, unmount } = start(there);
