@@ -1,3 +1,4 @@
+import { sun } from '@shared/lib/sun';
 import { env } from '../env';
 
 export interface LetterParts {
@@ -47,6 +48,15 @@ function plain({ heading, paragraphs, action, facts, after, footer }: LetterPart
   return `${blocks.join('\n\n')}\n`;
 }
 
+/** The sun's height of the day on a rule from midwinter to midsummer. A table, because mail programs show neither SVG nor positions. */
+function markOfTheDay(now: Date): string {
+  const share = Math.round((50 * (sun(now).declination + 23.44)) / 23.44);
+  const cell = (width: number): string => `<td style="width:${Math.min(100, Math.max(0, width))}%;padding:0"><div style="border-top:1px solid #13201b;font-size:0;line-height:0">&nbsp;</div></td>`;
+  const disc = '<td style="padding:0"><div style="width:9px;height:9px;border-radius:5px;background:#b97500;font-size:0;line-height:0">&nbsp;</div></td>';
+  return `<table role="presentation" aria-hidden="true" cellspacing="0" cellpadding="0" style="width:120px;border-collapse:collapse;margin:0 0 14px"><tr>${cell(share)}${disc}${cell(100 - share)}</tr></table>
+`;
+}
+
 const SERIF = "'STIX Two Text',Georgia,'Times New Roman',serif";
 const SANS = "'IBM Plex Sans',system-ui,-apple-system,'Segoe UI',sans-serif";
 
@@ -65,7 +75,7 @@ function html({ heading, paragraphs, action, facts, after, footer }: LetterParts
     : '';
   return `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width,initial-scale=1"><title>${escapeHtml(heading)}</title></head>
 <body style="margin:0;background:#f4f6f2;color:#13201b;font:15px/1.5 ${SANS}"><div style="max-width:560px;margin:0 auto;padding:28px 22px;background:#fcfdfb">
-<p style="margin:0 0 6px;font-size:13px;color:#586660">${escapeHtml(env.INSTITUTE_NAME)}</p>
+${markOfTheDay(new Date())}<p style="margin:0 0 6px;font-size:13px;color:#586660">${escapeHtml(env.INSTITUTE_NAME)}</p>
 <h1 style="font:500 24px/1.25 ${SERIF};margin:0 0 18px">${escapeHtml(heading)}</h1>
 ${paragraphs.map(p).join('\n')}${table}${button}${(after ?? []).map(p).join('\n')}
 <p style="margin:24px 0 0;padding-top:12px;border-top:1px solid #cfd6ce;font-size:12px;color:#586660">${escapeHtml(footer ?? env.INSTITUTE_NAME)}<br>${escapeHtml(env.OFFICE_EMAIL)}</p>

@@ -37,7 +37,7 @@ export function calendarLetter(data: {
   };
 }
 
-/** A letter that an organiser wrote; its first line is not repeated as a heading. */
+/** A letter that an organiser wrote, its fields filled in. */
 export function freeLetter({ subject, text, event }: { subject: string; text: string; event: { title: string; contactEmail: string } }) {
   const paragraphs = text.replace(/\r\n?/g, '\n').split(/\n{2,}/).map((paragraph) => paragraph.trim()).filter(Boolean);
   return { subject, ...layoutLetter({ heading: subject, paragraphs, footer: `You get this because you take part in ${event.title}. Answers go to ${event.contactEmail}.` }) };

@@ -53,8 +53,8 @@ export function MessageList({ event }: { event: string | null }) {
 
 const columns: Column<MessageListRow>[] = [
   { key: 'to', head: 'To', cell: (row) => <><b className="font-semibold">{row.toName}</b> <span className="text-ink3">{row.toAddress}</span></> },
-  { key: 'subject', head: 'Subject', cell: (row) => <span className="break-words">{row.subject}</span> },
-  { key: 'calendar', head: 'Calendar', cell: (row) => (row.hasCalendar ? 'with invitation' : '·') },
+  { key: 'subject', head: 'Subject', className: 'min-w-[170px]', cell: (row) => <span className="break-words">{row.subject}</span> },
+  { key: 'calendar', head: 'Calendar', className: 'max-sm:hidden', cell: (row) => (row.hasCalendar ? 'with invitation' : '·') },
   { key: 'state', head: 'State', cell: (row) => <StateCell row={row} /> },
   { key: 'when', head: 'When', cell: (row) => <span className="whitespace-nowrap">{ownTime(row.sentAt ?? row.queuedAt)}</span> },
 ];

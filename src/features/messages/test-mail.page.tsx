@@ -21,7 +21,7 @@ export function Component() {
     <>
       <PageBar title="Test mail" facts="Letters of this demonstration arrive here; none leaves this computer" />
       <div className="grid grid-cols-[minmax(280px,380px)_minmax(0,1fr)] max-md:grid-cols-1">
-        <div className={`border-r border-rule p-4 pl-6 max-md:border-r-0 max-md:px-4 ${mail ? 'max-md:hidden' : ''}`}>
+        <div className={`min-w-0 border-r border-rule p-4 pl-6 max-md:border-r-0 max-md:px-4 ${mail ? 'max-md:hidden' : ''}`}>
           <Input dense label="Find" hideLabel placeholder="Address or subject" value={q} onChange={(e) => set('q', e.target.value, true)} />
           <QueryView query={query} what="the test mailbox">
             {({ items }) => items.length === 0 ? <EmptyState title={q ? 'No letter like that.' : 'No letter has come yet.'} fact="Whatever the application sends appears here within seconds." /> : <Letters items={items} chosen={mail} onOpen={(id) => set('mail', id)} />}
@@ -49,7 +49,7 @@ function Letters({ items, chosen, onOpen }: { items: TestMailRow[]; chosen: stri
             type="button"
             aria-current={item.id === chosen ? 'true' : undefined}
             onClick={() => onOpen(item.id)}
-            className={`grid w-full gap-0.5 py-2 pr-2 pl-2 text-left hover:bg-wash ${item.id === chosen ? 'border-l-[3px] border-ink bg-wash' : ''}`}
+            className={`grid w-full grid-cols-[minmax(0,1fr)] gap-0.5 py-2 pr-2 pl-2 text-left hover:bg-wash ${item.id === chosen ? 'border-l-[3px] border-ink bg-wash' : ''}`}
           >
             <span className="flex justify-between gap-3 text-dense text-ink3"><span className="min-w-0 truncate">{item.to}</span><span className="whitespace-nowrap">{ownTime(item.at)}</span></span>
             <span className="break-words">{item.subject}</span>
