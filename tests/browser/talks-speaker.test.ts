@@ -171,3 +171,44 @@ it('C1 a talk is submitted to the call, and the committee’s answer goes out by
   expect(letter?.text).toContain('We look forward to it.');
   await organiser.context().close();
 });
+
+it('C4 the organiser makes two lecture courses and says what is heard before what; a circle is refused in words', async () => {
+  const organiser = await app.pageFor('organiser@example.org', { viewport: { width: 1440, height: 900 } });
+  await organiser.goto(`${app.url}/organise/${slug}/talks?view=courses`);
+  await organiser.getByText('No lecture courses.').waitFor();
+  for (const [letter, title] of [
+    ['A', 'Tilings and $\\Delta$'],
+    ['B', 'Knots'],
+  ] as const) {
+    await organiser.getByRole('button', { name: 'Create a lecture course …' }).click();
+    const dialog = organiser.getByRole('dialog');
+    await dialog.getByLabel('Letter').fill(letter);
+    await dialog.getByLabel('Title, LaTeX').fill(title);
+    await dialog.getByLabel('Short title').fill(title.slice(0, 7));
+    await dialog.getByLabel('Lectures', { exact: true }).fill('2');
+    await dialog.getByLabel('With an exercise session to each lecture').uncheck();
+    await dialog.getByRole('button', { name: 'Create the course' }).click();
+    await dialog.getByText('Name at least one lecturer.').waitFor();
+    await dialog.getByLabel('Given name').fill('Ben');
+    await dialog.getByLabel('Family name').fill('Osei');
+    await dialog.getByLabel('E-mail address').fill('ben@example.org');
+    await dialog.getByRole('button', { name: 'Add the person' }).click();
+    await expectNoViolation(organiser);
+    await dialog.getByRole('button', { name: 'Create the course' }).click();
+    await organiser.getByText(`Course ${letter} is saved.`).waitFor();
+  }
+  const before = organiser.getByLabel('This lecture');
+  const after = organiser.getByLabel('before this one');
+  await before.selectOption({ label: 'A 2 Tilings and Δ, lecture 2' });
+  await after.selectOption({ label: 'B 1 Knots, lecture 1' });
+  await organiser.getByRole('button', { name: 'Add the pair' }).click();
+  await before.selectOption({ label: 'B 1 Knots, lecture 1' });
+  await after.selectOption({ label: 'A 2 Tilings and Δ, lecture 2' });
+  await organiser.getByText(/This closes a circle/).waitFor();
+  expect(await organiser.getByRole('button', { name: 'Add the pair' }).isDisabled()).toBe(true);
+  await organiser.getByRole('button', { name: 'Save the pairs' }).click();
+  await organiser.getByText('Saved what is heard before what.').waitFor();
+  await organiser.reload();
+  await organiser.getByText('A 2 Tilings and Δ, lecture 2 before B 1 Knots, lecture 1').waitFor();
+  await organiser.context().close();
+});
