@@ -25,7 +25,7 @@ beforeEach(async () => {
 });
 afterEach(() => mailbox.stop());
 
-async function post(message: nodemailer.SendMailOptions): Promise<void> {
+async function post(message: Record<string, unknown>): Promise<void> {
   const transport = nodemailer.createTransport({ host: '127.0.0.1', port: mailbox.port, ignoreTLS: true });
   await transport.sendMail({ from: 'somebody@example.org', subject: 'Hello', text: 'Hello', ...message });
   transport.close();
