@@ -10,6 +10,7 @@ import { demoDates, seedEvents } from './20-events';
 import { seedConferenceTalks, seedSchoolTalks, seedWorkshopTalks } from './30-talks';
 import { seedProgramme } from './40-programme';
 import { seedRegistrations } from './50-registration';
+import { seedGrants } from './60-grants';
 
 /**
  * Fills an empty database with the invented demo scenario, all through the services, dates relative to now. Does
@@ -25,6 +26,7 @@ export async function seedDemo({ scale = 1, now = new Date() }: { scale?: number
   await seedWorkshopTalks(cast, events.workshop);
   const runJobs = async (): Promise<void> => void (await runDueJobs(reactions));
   await seedRegistrations(cast, events, now, scale, runJobs);
+  await seedGrants(cast, events.school, now, scale);
   await seedProgramme(events.school, events.conference, events.workshop, now);
   await runJobs();
   return true;
