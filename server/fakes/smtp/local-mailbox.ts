@@ -42,6 +42,7 @@ export async function startLocalMailbox(options: { port?: number; forget?: boole
   const box = new Mailbox(options.forget ? null : path.join(path.dirname(env.DATABASE_FILE), 'local-mailbox.jsonl'));
   const server = new SMTPServer({
     authOptional: true,
+    disableReverseLookup: true, // there is no name server to ask on loopback; waiting for one made each letter slow
     disabledCommands: ['AUTH', 'STARTTLS'],
     size: 20 * 1024 * 1024,
     onData: (stream, session, done) =>
