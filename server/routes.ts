@@ -16,6 +16,7 @@ import { feedRoutes } from './features/messages/messages-feeds.routes';
 import { grantsRoutes } from './features/grants/grants.routes';
 import { fundIdOf, fundsById } from './features/grants/grants-funds.service';
 import { messagesRoutes } from './features/messages/messages.routes';
+import { siteRoutes } from './features/site/site.routes';
 import { unsubscribeRoutes } from './features/messages/messages-unsubscribe.routes';
 import { runupRoutes } from './features/runup/runup.routes';
 import { demoAccounts } from '../seeds/demo-accounts';
@@ -32,6 +33,7 @@ export function mountRoutes(router: Router): void {
   messagesRoutes(router);
   feedRoutes(router);
   runupRoutes(router);
+  siteRoutes(router);
   unsubscribeRoutes(router);
 }
 

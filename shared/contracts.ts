@@ -2,6 +2,7 @@ import type { AnyEndpoint } from './http/endpoint';
 import { financeEndpoints } from './features/finance/finance.contract';
 import { registrationEndpoints } from './features/registration/registration.contract';
 import { messagesEndpoints } from './features/messages/messages.contract';
+import { siteEndpoints } from './features/site/site.contract';
 import { runupEndpoints } from './features/runup/runup.contract';
 import { grantsEndpoints } from './features/grants/grants.contract';
 import { accountsEndpoints } from './features/accounts/accounts.contract';
@@ -14,4 +15,4 @@ import { talksEndpoints } from './features/talks/talks.contract';
 import { programmeEndpoints } from './features/programme/programme.contract';
 
 /** Every operation of the API: the documentation and the tests walk this list. One line per feature. */
-export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints, ...talksEndpoints, ...talksInvitationEndpoints, ...talksStayEndpoints, ...talksCoursesEndpoints, ...talksMaterialsEndpoints, ...programmeEndpoints, ...financeEndpoints, ...registrationEndpoints, ...grantsEndpoints, ...messagesEndpoints, ...runupEndpoints];
+export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints, ...talksEndpoints, ...talksInvitationEndpoints, ...talksStayEndpoints, ...talksCoursesEndpoints, ...talksMaterialsEndpoints, ...programmeEndpoints, ...financeEndpoints, ...registrationEndpoints, ...grantsEndpoints, ...messagesEndpoints, ...runupEndpoints, ...siteEndpoints];
