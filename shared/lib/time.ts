@@ -32,7 +32,8 @@ export const timeZone = z
 export function localToInstant(date: string, time: string, zone: string): string {
   const local = DateTime.fromISO(`${date}T${time}`, { zone });
   if (!local.isValid) throw new RangeError(`not a time: ${date} ${time} ${zone}`);
-  return local.toUTC().toISO({ suppressMilliseconds: false }) as string;
+  const first = local.getPossibleOffsets().sort((a, b) => a.toMillis() - b.toMillis())[0] ?? local;
+  return first.toUTC().toISO({ suppressMilliseconds: false }) as string;
 }
 
 /** Local date, time and minute of the day of an instant in a zone. */
