@@ -40,7 +40,19 @@ function itemOf(event: Event, placement: Pick<PublishedPlacement, 'startsAt' | '
   };
 }
 
-const finished = (content: string): Feed => ({ content, etag: `"${createHash('sha256').update(content).digest('base64url').slice(0, 27)}"` });
+const REMEMBERED = 200;
+const written = new Map<string, Feed>();
+
+/** The feed of these items. Writing one takes far longer than looking them up, and calendar programs ask all day: the same items are written once. */
+function feedOf(name: string, items: CalendarItem[]): Feed {
+  const key = createHash('sha256').update(JSON.stringify([name, items])).digest('base64url');
+  const known = written.get(key);
+  if (known) return known;
+  const feed = { content: feedText(name, items, ORGANIZER), etag: `"${key.slice(0, 27)}"` };
+  if (written.size >= REMEMBERED) written.delete(written.keys().next().value as string);
+  written.set(key, feed);
+  return feed;
+}
 
 const hashOf = (secret: string): string => createHash('sha256').update(secret).digest('hex');
 /** 256 bits that only this server can compute, so that the owner is shown the address again though it is kept as a hash. */
@@ -78,7 +90,7 @@ export async function eventFeed(slug: string, now: Date, roomId?: string): Promi
   });
   const items = [...(programme?.placements ?? []).map((one) => ({ one, write: item(false) })), ...dropped.map((one) => ({ one, write: item(true) }))];
   const chosen = items.filter(({ one }) => !roomId || one.roomId === roomId);
-  return finished(feedText(room ? `${event.title}, ${room.name}` : event.title, chosen.map(({ one, write }) => write(one)), ORGANIZER));
+  return feedOf(room ? `${event.title}, ${room.name}` : event.title, chosen.map(({ one, write }) => write(one)));
 }
 
 const daysBefore = (now: Date): Date => new Date(now.getTime() - KEPT_DAYS * 86_400_000);
@@ -101,7 +113,7 @@ export async function personFeed(token: string, now: Date): Promise<Feed | null>
       return { ...itemOf(event, { startsAt, endsAt, roomName, title, word }), uid: row.uid, sequence: row.sequence, cancelled: row.lastMethod === 'CANCEL', stamp: row.updatedAt };
     }),
   );
-  return finished(feedText('My programme', items, ORGANIZER));
+  return feedOf('My programme', items);
 }
 
 async function publishedTitles(eventIds: string[]): Promise<Map<string, PublishedPlacement>> {

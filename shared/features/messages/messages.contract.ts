@@ -95,7 +95,7 @@ export const answerView = z.object({
   cancelled: z.boolean(),
 });
 export type AnswerView = z.infer<typeof answerView>;
-const byToken = z.object({ token: z.string().min(20).max(200) });
+const byToken = z.object({ token: z.string().min(1).max(200) });
 export const readInvitationAnswer = endpoint({ id: 'messages.read_answer', method: 'GET', path: '/api/calendar-answers/:token', summary: 'What an answer link is about.', params: byToken, response: answerView });
 export const answerInvitation = endpoint({ id: 'messages.answer', method: 'POST', path: '/api/calendar-answers/:token', summary: 'Say whether one comes; the organiser sees it.', params: byToken, body: z.strictObject({ answer: z.enum(answers) }), response: answerView });
 export const talkAnswer = z.object({
