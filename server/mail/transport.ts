@@ -33,6 +33,7 @@ export function mailTransport(): MailTransport {
 export function smtpTransport(url: string): MailTransport & { close(): void } {
   const transporter: Transporter = nodemailer.createTransport(url, {
     from: { name: env.INSTITUTE_NAME, address: env.OFFICE_EMAIL },
+    pool: true, // one greeting for many letters
     // Well below the ten minutes after which a conversation counts as cut off.
     connectionTimeout: 20_000,
     greetingTimeout: 20_000,
