@@ -4,6 +4,7 @@ import { holds, sessionQuery, useAccount } from '@/features/accounts/accounts.qu
 import { eventQuery } from '@/features/events/events.queries';
 import { Wordmark } from '@/components/mark';
 import { ErrorState, Loading } from '@/components/states';
+import { EventNav } from './event-nav';
 import { EventSwitcher } from './event-switcher';
 import { PersonMenu } from './person-menu';
 import { RunUp } from './run-up';
@@ -22,10 +23,11 @@ export function PublicLayout() {
   return (
     <div className="flex min-h-dvh flex-col bg-sheet text-form">
       <SkipLink />
-      <header className="flex min-h-[56px] items-center gap-8 border-b border-rule px-12 max-md:px-4">
+      <header className="flex min-h-[56px] flex-wrap items-center gap-x-8 border-b border-rule px-12 max-md:px-4">
         <Link to="/" className="quiet font-serif text-[16px] font-semibold text-ink">
           {session?.instituteName ?? 'Analemma'}
         </Link>
+        <EventNav />
         <div className="ml-auto">{session?.account ? <PersonMenu /> : <Link to="/sign-in">Sign in</Link>}</div>
       </header>
       <main id="work" className="grow">

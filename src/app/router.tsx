@@ -20,6 +20,11 @@ export const router = createBrowserRouter([
     children: [
       page('/sign-in', () => import('@/features/accounts/sign-in.page')),
       layout('PublicLayout', [
+        page('/', () => import('@/features/site/events.page')),
+        page('/events/:event', () => import('@/features/site/event.page')),
+        page('/events/:event/programme', () => import('@/features/site/programme.page')),
+        page('/events/:event/talks/:talk', () => import('@/features/site/talk.page')),
+        page('/events/:event/people', () => import('@/features/site/people.page')),
         page('/sign-up', () => import('@/features/accounts/sign-up.page')),
         page('/verify/:token', () => import('@/features/accounts/verify.page')),
         page('/reset', () => import('@/features/accounts/ask-reset.page')),
@@ -37,6 +42,8 @@ export const router = createBrowserRouter([
         page('/events/:event/my-talks/:talk', () => import('@/features/talks/my-talk.page')),
         page('/events/:event/my-travel', () => import('@/features/talks/my-travel.page')),
         page('/events/:event/submit', () => import('@/features/talks/submit.page')),
+        page('/events/:event/grant', () => import('@/features/grants/grant.page')),
+        page('/funds/:fund', () => import('@/features/grants/funder.page')),
       ]),
       layout('OfficeLayout', [
         page('/office/accounts', () => import('@/features/accounts/accounts.page')),
@@ -55,6 +62,7 @@ export const router = createBrowserRouter([
           page('people', () => import('@/features/events/people.page')),
           page('programme', () => import('@/features/programme/composer.page')),
           page('talks', () => import('@/features/talks/talks.page')),
+          page('grants', () => import('@/features/grants/grants.page')),
           page('messages', () => import('@/features/messages/event-messages.page')),
         ],
         '/organise/:event',
