@@ -139,9 +139,9 @@ describe('H3 awards by hand', () => {
   });
 
   it('gives the last euros of a fund once when forty organisers click at the same moment', async () => {
-    const people = [];
+    const people: Awaited<ReturnType<typeof buildApplicant>>[] = [];
     for (let n = 0; n < 8; n++) people.push(await buildApplicant(given.event, given.category, { items: [{ kind: 'travel', amountMinor: 50_000, quantity: null, note: '' }], minUsefulMinor: 0 }));
-    const clicks = Array.from({ length: 40 }, (_, n) => people[n % 8] as (typeof people)[number]);
+    const clicks = Array.from({ length: 40 }, (_, n) => people[n % 8] as Awaited<ReturnType<typeof buildApplicant>>);
     const answers = await Promise.all(clicks.map(({ id }) => organiser.call(contract.proposeAward, { ...ofFund(id), body: { lines: travel(50_000), version: null } })));
     const statuses = answers.map((answer) => answer.status);
     expect(statuses.filter((status) => status === 200)).toHaveLength(4);
