@@ -34,6 +34,7 @@ export const router = createBrowserRouter([
         page('/calendar-answer/:token', () => import('@/features/messages/calendar-answer.page')),
       ]),
       layout('PersonLayout', [
+        page('/home', () => import('@/features/site/home.page')),
         page('/organise/new', () => import('@/features/events/new-event.page')),
         page('/events/:event/register', () => import('@/features/registration/register.page')),
         page('/events/:event/registration', () => import('@/features/registration/registration.page')),
