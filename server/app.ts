@@ -1,4 +1,5 @@
 import { existsSync } from 'node:fs';
+import { readFile } from 'node:fs/promises';
 import path from 'node:path';
 import compression from 'compression';
 import express, { Router, type Express } from 'express';
@@ -7,6 +8,7 @@ import './db/models';
 import { env } from './env';
 import { actorOf } from './features/accounts/accounts-session.service';
 import { stripeWebhookRouter } from './features/finance/finance-webhook.routes';
+import { fillPage, readingPage } from './features/site/site-html.service';
 import { apiDocsPage, openApi } from './http/api-docs';
 import { csrfGuard } from './http/csrf';
 import { health } from './http/health';
@@ -82,13 +84,16 @@ function serveClient(app: Express, folder: string): void {
     express.static(path.join(folder, 'assets'), { immutable: true, maxAge: '1y', fallthrough: false, index: false }),
   );
   app.use(express.static(folder, { index: false, maxAge: '1h' }));
-  app.get(/.*/, (_req, res) => {
+  app.get(/.*/, async (req, res) => {
     const page = path.join(folder, 'index.html');
     if (!existsSync(page)) {
       res.status(503).type('text').send('The client has not been built. Run: npm run build');
       return;
     }
     res.setHeader('Cache-Control', 'no-cache');
-    res.sendFile(page);
+    // Public pages can be read without JavaScript: their text stands in the page before the script takes it over.
+    const reading = await readingPage(req.path, new Date());
+    if (reading) res.status(reading.status).type('html').send(fillPage(await readFile(page, 'utf8'), reading));
+    else res.sendFile(page);
   });
 }

@@ -16,13 +16,20 @@ export async function ensureClient(): Promise<void> {
   if (existsSync(stamp) && (await readFile(stamp, 'utf8')) === sources) return;
   process.stdout.write('Building the client ...\n');
   const { build } = await import('vite');
-  await build({ root, logLevel: 'warn' });
+  // Vite keeps a NODE_ENV that is set: tests would leave React's development build behind for everybody.
+  const before = process.env.NODE_ENV;
+  process.env.NODE_ENV = 'production';
+  try {
+    await build({ root, logLevel: 'warn' });
+  } finally {
+    process.env.NODE_ENV = before;
+  }
   await writeFile(stamp, sources);
 }
 
 /** Names, sizes and times of everything that the build reads. */
 async function fingerprint(): Promise<string> {
-  const hash = createHash('sha256');
+  const hash = createHash('sha256').update('production\n');
   for (const place of ['src', 'shared', 'index.html', 'vite.config.ts', 'package-lock.json']) {
     for (const file of await filesBelow(path.join(root, place))) {
       const { size, mtimeMs } = await stat(file);

@@ -4,6 +4,7 @@ import type { PublicEvent } from '@shared/features/site/site.contract';
 import { dayToShow } from '@shared/features/site/site.rules';
 import { eventKindNames } from '@shared/features/events/events.rules';
 import { formatDate, formatDateSpan, formatInstant, instantToLocal } from '@shared/lib/time';
+import { PageTitle } from '@/lib/page-title';
 import { LinkButton } from '@/components/button';
 import { EmptyState, QueryView } from '@/components/states';
 import { programmeOf } from '@/features/programme/programme.queries';
@@ -21,7 +22,7 @@ export function Component() {
     <QueryView query={query} what="the event">
       {(event) => (
         <>
-          <title>{event.title}</title>
+          <PageTitle text={event.title} />
           <Cover event={event} />
           <div className="grid grid-cols-[312px_1fr_260px] gap-11 px-12 py-7 max-xl:grid-cols-[1fr_260px] max-md:grid-cols-1 max-md:gap-8 max-md:px-4">
             <Courses event={event} />

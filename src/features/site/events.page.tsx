@@ -3,6 +3,7 @@ import { Link } from 'react-router-dom';
 import type { PublicEventSummary } from '@shared/features/site/site.contract';
 import { eventKindNames, eventStateNames } from '@shared/features/events/events.rules';
 import { formatDateSpan } from '@shared/lib/time';
+import { PageTitle } from '@/lib/page-title';
 import { EmptyState, QueryView } from '@/components/states';
 import { FigurePlate } from './figure-plate';
 import { publicEventsQuery } from './site.queries';
@@ -12,7 +13,7 @@ export function Component() {
   const query = useQuery(publicEventsQuery);
   return (
     <div className="px-12 py-10 max-md:px-4 max-md:py-6">
-      <title>Events</title>
+      <PageTitle text="Events" />
       <QueryView query={query} what="the events">
         {({ items }) => (
           <>

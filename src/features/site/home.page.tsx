@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
 import { eventKindNames, eventStateNames } from '@shared/features/events/events.rules';
 import { formatDateSpan } from '@shared/lib/time';
+import { PageTitle } from '@/lib/page-title';
 import { EmptyState, QueryView } from '@/components/states';
 import { MathLine } from '@/components/math-text';
 import { LinkButton } from '@/components/button';
@@ -17,7 +18,7 @@ export function Component() {
   const funds = account?.grants.filter((grant) => grant.role === 'funder' && grant.scopeId) ?? [];
   return (
     <div className="mx-auto max-w-[960px] px-6 py-8 max-md:px-4">
-      <title>Home</title>
+      <PageTitle text="Home" />
       <div className="mb-6 flex flex-wrap items-center gap-4">
         <h1 className="m-0 font-serif text-page font-medium">{account?.printedName}</h1>
         <div className="ml-auto flex flex-wrap gap-4 text-form">

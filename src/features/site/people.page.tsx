@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { Link, useParams } from 'react-router-dom';
+import { PageTitle } from '@/lib/page-title';
 import { MathLine } from '@/components/math-text';
 import { EmptyState, QueryView } from '@/components/states';
 import { publicPeopleQuery } from './site.queries';
@@ -13,7 +14,7 @@ export function Component() {
       <QueryView query={query} what="the people">
         {({ event, items }) => (
           <>
-            <title>{`People: ${event.title}`}</title>
+            <PageTitle text={`People: ${event.title}`} />
             <h1 className="m-0 mb-5 font-serif text-page font-medium">Speakers and lecturers</h1>
             {items.length === 0 && <EmptyState title="Nobody stands here yet" fact="Names follow with the published programme." />}
             {items.length > 0 && (

@@ -4,6 +4,7 @@ import { useParams } from 'react-router-dom';
 import type { PublicEvent } from '@shared/features/site/site.contract';
 import type { PublicProgramme } from '@shared/features/programme/programme.contract';
 import { formatDate, formatInstant, instantToLocal } from '@shared/lib/time';
+import { PageTitle } from '@/lib/page-title';
 import { Segmented, Select } from '@/components/field';
 import { EmptyState, QueryView } from '@/components/states';
 import { programmeOf } from '@/features/programme/programme.queries';
@@ -40,7 +41,7 @@ function Programme({ event, programme }: { event: PublicEvent; programme: Public
   const days = [...new Set(talks.map((talk) => dayIn(talk.startsAt)))].sort();
   return (
     <>
-      <title>{`Programme: ${event.title}`}</title>
+      <PageTitle text={`Programme: ${event.title}`} />
       <h1 className="m-0 font-serif text-page font-medium">{event.title}</h1>
       {programme.revision ? (
         <p className="mt-1 mb-5 text-form text-ink2">

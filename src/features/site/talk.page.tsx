@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { Link, useParams } from 'react-router-dom';
 import type { PublicTalkPage } from '@shared/features/site/site.contract';
 import { formatSpan } from '@shared/lib/time';
+import { PageTitle } from '@/lib/page-title';
 import { KindTag } from '@/components/kind-tag';
 import { MathLine, MathText } from '@/components/math-text';
 import { QueryView } from '@/components/states';
@@ -27,7 +28,7 @@ function Talk({ talk }: { talk: PublicTalkPage }) {
   const { event, placement } = talk;
   return (
     <>
-      <title>{`${plainLatex(talk.title) || talk.word}: ${event.title}`}</title>
+      <PageTitle text={`${plainLatex(talk.title) || talk.word}: ${event.title}`} />
       <p className="m-0 mb-3 text-form">
         <Link to={`/events/${event.slug}/programme`}>{event.title}</Link>
       </p>
