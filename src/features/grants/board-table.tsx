@@ -8,16 +8,17 @@ const conflictWords = { declared: 'You declared a conflict of interest.', instit
 export function BoardTable({ board, rows, chosen, onChoose }: { board: GrantBoard; rows: readonly BoardRow[]; chosen?: string; onChoose: (id: string) => void }) {
   const kinds = costKinds.filter((kind) => board.rows.some((row) => row.requested.some((line) => line.kind === kind)));
   const { currency, funds } = board;
-  const columns = 6 + kinds.length + Math.max(1, funds.length);
+  const columns = 7 + kinds.length + Math.max(1, funds.length);
   return (
     <div className="overflow-x-auto" tabIndex={-1}>
-      <table className="ruled text-dense whitespace-nowrap [&_td]:!py-[3px] [&_th]:!py-[3px]">
+      <table className="ruled row-heads text-dense whitespace-nowrap [&_td]:!py-[3px] [&_th]:!py-[3px]">
         <caption className="sr-only">Grant applications by rank; sums in {currency}</caption>
         <thead>
           <tr>
             <td colSpan={5} />
             <th scope="colgroup" colSpan={kinds.length + 1} className="!border-b !border-rule text-center">Requested, {currency}</th>
             <th scope="colgroup" colSpan={Math.max(1, funds.length)} className="!border-b !border-rule text-center">Award by fund, {currency}</th>
+            <td />
           </tr>
           <tr>
             <th scope="col" className="num">Rank</th>
@@ -29,20 +30,21 @@ export function BoardTable({ board, rows, chosen, onChoose }: { board: GrantBoar
             <th scope="col" className="num">Request</th>
             {funds.map((fund) => <th key={fund.id} scope="col" className="num" title={fund.name}>{fund.letter}</th>)}
             {funds.length === 0 && <th scope="col" className="num">No funds yet</th>}
+            <th scope="col" className="!pl-3">State</th>
           </tr>
         </thead>
-        {rows.map((row) => (
-          <tbody key={row.id} className={chosen === row.id ? 'bg-actwash' : ''}>
-            <Row row={row} board={board} kinds={kinds} columns={columns} onChoose={onChoose} />
-          </tbody>
-        ))}
+        <tbody>
+          {rows.map((row) => (
+            <Row key={row.id} row={row} board={board} kinds={kinds} columns={columns} chosen={chosen === row.id} onChoose={onChoose} />
+          ))}
+        </tbody>
       </table>
       <p className="mt-2 text-dense whitespace-normal text-ink3">n.e. not eligible · <sup className="text-alarm">c</sup> cut to the fund’s cap · – not asked for · a score shows after you have given yours{board.can.propose ? '; organisers see all means once the date for applications is past' : ''}</p>
     </div>
   );
 }
 
-function Row({ row, board, kinds, columns, onChoose }: { row: BoardRow; board: GrantBoard; kinds: readonly (typeof costKinds)[number][]; columns: number; onChoose: (id: string) => void }) {
+function Row({ row, board, kinds, columns, chosen, onChoose }: { row: BoardRow; board: GrantBoard; kinds: readonly (typeof costKinds)[number][]; columns: number; chosen: boolean; onChoose: (id: string) => void }) {
   const { currency, funds } = board;
   const { person } = row;
   if (!person) {
@@ -55,9 +57,9 @@ function Row({ row, board, kinds, columns, onChoose }: { row: BoardRow; board: G
   }
   return (
     <>
-      <tr className={row.reason ? '[&>*]:!border-b-0' : ''}>
+      <tr className={`${row.reason ? '[&>*]:!border-b-0' : ''} ${chosen ? 'bg-actwash' : ''}`}>
         <td className="num">{row.rank ?? '·'}</td>
-        <th scope="row" className="!border-b-inherit">
+        <th scope="row">
           <button type="button" className="min-h-[24px] max-w-[320px] truncate text-left font-semibold text-ink hover:underline" onClick={() => onChoose(row.id)}>
             {person.printedName} <span className="font-normal text-ink3">{person.affiliation}</span>
           </button>
@@ -69,9 +71,10 @@ function Row({ row, board, kinds, columns, onChoose }: { row: BoardRow; board: G
         <td className="num font-semibold">{formatGrant(row.requestedMinor, currency, false)}</td>
         {funds.map((fund) => <td key={fund.id} className="num"><AwardCell row={row} fundId={fund.id} letter={fund.letter} currency={currency} /></td>)}
         {funds.length === 0 && <td />}
+        <td className="!pl-3"><States row={row} /></td>
       </tr>
       {row.reason && (
-        <tr>
+        <tr className={chosen ? 'bg-actwash' : ''}>
           <td />
           <td colSpan={columns - 1} className="whitespace-normal"><b className="text-alarm">Not funded.</b> {row.reason}</td>
         </tr>
@@ -87,7 +90,15 @@ function AwardCell({ row, fundId, letter, currency }: { row: BoardRow; fundId: s
     <>
       <span className="font-semibold">{formatGrant(award.totalMinor, currency, false)}</span>
       {award.capped && <sup className="text-alarm" aria-label="cut to the cap">c</sup>}
-      <span className={`block text-dense ${award.state === 'queried' ? 'font-semibold text-caution' : 'text-ink3'}`}>{awardStateNames[award.state].toLowerCase()}</span>
     </>
   );
+}
+
+/** One word for all awards of a person where they agree, else each; without an award, what the letter said. */
+function States({ row }: { row: BoardRow }) {
+  const states = [...new Set(row.awards.map((award) => award.state))];
+  if (states.length === 0) return <span className="text-ink3">{row.decision === 'not_awarded' ? 'letter sent' : row.decision ? 'given back' : '·'}</span>;
+  return states.map((state, index) => (
+    <span key={state} className={state === 'queried' ? 'font-semibold text-caution' : 'text-ink3'}>{index > 0 && ', '}{awardStateNames[state].toLowerCase()}</span>
+  ));
 }

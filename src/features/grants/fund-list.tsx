@@ -26,7 +26,7 @@ function FundEntry({ fund, onEdit, onInvite }: { fund: Fund; onEdit: () => void;
     eligibilityWords(fund.eligibility) || 'Anyone',
     fund.capPerPersonMinor !== null && `at most ${money(fund.capPerPersonMinor)} each`,
     `pays ${listInWords(fund.covers.map((kind) => costKindNames[kind].toLowerCase()))}`,
-    ...fund.floors.map((floor) => `${floor.percent} % of ${floor.of === 'budget' ? 'the budget' : 'what is awarded'} to ${groupName(floor.group).toLowerCase()}`),
+    ...fund.floors.map((floor) => `at least ${floor.percent} % of ${floor.of === 'budget' ? 'the budget' : 'what is awarded'} to ${groupName(floor.group).toLowerCase()}`),
   ].filter(Boolean);
   return (
     <div className="border-t border-rule py-3">

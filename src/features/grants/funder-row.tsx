@@ -18,7 +18,7 @@ export function FunderRow({ award, fund, kinds, columns }: { award: FunderAward;
   return (
     <>
       <tr className={open ? 'bg-cautionwash' : ''} style={{ height: 38 }}>
-        <th scope="row" className="!border-b-0 !font-normal">{award.reference}</th>
+        <th scope="row" className="!font-normal">{award.reference}</th>
         <td>{stageNames[award.stage]}</td>
         <td>{award.region}</td>
         {fund.showScores && <td className="num">{award.score?.toFixed(1) ?? '·'}</td>}

@@ -45,7 +45,7 @@ function Awards({ fund }: { fund: FunderView }) {
         <div className="ml-auto"><ApproveRemaining fund={fund} open={open} /></div>
       </div>
       <div className="overflow-x-auto" tabIndex={-1}>
-        <table className="ruled whitespace-nowrap">
+        <table className="ruled row-heads whitespace-nowrap [&_tbody_:is(td,th)]:align-middle">
           <caption className="sr-only">Awards proposed to {fund.name}, sums in {fund.currency}</caption>
           <thead>
             <tr>

@@ -22,12 +22,12 @@ export function GrantDecision({ mine, decision }: { mine: MyGrant; decision: Dec
       ) : (
         <p>We are glad to offer you a travel grant. {decision.answerBy && <>Please answer by <b>{formatInstant(decision.answerBy, mine.timeZone)}</b> ({mine.timeZone}); after that the money goes to somebody else.</>}</p>
       )}
-      <table className="ruled my-4">
+      <table className="ruled row-heads my-4">
         <caption className="sr-only">What is awarded, in {mine.currency}</caption>
         <tbody>
           {decision.lines.map((line) => (
             <tr key={line.kind}>
-              <th scope="row" className="!border-b-rule">{costKindNames[line.kind]} <span className="font-normal text-ink3">{line.fund}</span></th>
+              <th scope="row">{costKindNames[line.kind]} <span className="font-normal text-ink3">{line.fund}</span></th>
               <td className="num">{formatGrant(line.amountMinor, mine.currency)}</td>
             </tr>
           ))}

@@ -10,12 +10,12 @@ export function GrantSummary({ mine }: { mine: MyGrant }) {
   return (
     <section aria-label="Your application" className="mt-6">
       <h2 className="mb-2 font-serif text-title">What you asked for</h2>
-      <table className="ruled">
+      <table className="ruled row-heads">
         <caption className="sr-only">Costs asked for, in {currency}</caption>
         <tbody>
           {items.map((item) => (
             <tr key={item.kind}>
-              <th scope="row" className="!border-b-rule">{costKindNames[item.kind]}{item.note && <span className="block font-normal text-ink3">{item.note}</span>}</th>
+              <th scope="row">{costKindNames[item.kind]}{item.note && <span className="block font-normal text-ink3">{item.note}</span>}</th>
               <td className="num">{formatGrant(item.amountMinor, currency)}</td>
             </tr>
           ))}

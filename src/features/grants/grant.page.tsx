@@ -56,6 +56,7 @@ function Dates({ mine }: { mine: MyGrant }) {
   return (
     <div className="grid gap-3">
       {dueAt && <p>Hand in by <b>{formatInstant(dueAt, timeZone)}</b> ({timeZone}){ownZone() !== timeZone && <>, which is {ownTime(dueAt)} where you are</>}.</p>}
+      {mine.coveredKinds.length === 0 && <Note>No fund is set up for this event yet. You can hand in; the committee says what is possible.</Note>}
       {application?.state === 'withdrawn' && <Note>You withdrew this application. Change it and hand it in again, if you like.</Note>}
     </div>
   );
