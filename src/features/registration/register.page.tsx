@@ -74,7 +74,6 @@ function emptyInput(view: DoorView, account: { printedName: string; careerStage:
 
 function Wizard({ view }: { view: DoorView }) {
   const account = useAccount();
-  const navigate = useNavigate();
   const key = `registration ${view.eventSlug}`;
   const [input, setInput] = useState<RegistrationInput>(() => ({ ...emptyInput(view, account), ...(JSON.parse(sessionStorage.getItem(key) ?? '{}') as Partial<RegistrationInput>) }));
   const [step, setStep] = useState(0);
@@ -90,19 +89,17 @@ function Wizard({ view }: { view: DoorView }) {
     setSavedAt(new Date().toTimeString().slice(0, 5));
   };
   const errors = fieldErrors(register.error);
-  const finish = () =>
-    register.mutate({ ...input, extras: input.extras.filter((extra) => extra.quantity > 0) }, {
-      onSuccess: (made) => {
-        sessionStorage.removeItem(key);
-        const home = `/events/${view.eventSlug}/registration`;
-        if (made.order?.state === 'paid') return void navigate(home);
-        pay.mutate(undefined, { onSuccess: ({ url }) => window.location.assign(url), onError: () => void navigate(home) });
-      },
-      onError: (error) => {
-        const first = Object.keys(fieldErrors(error))[0];
-        if (first) setStep(stepOf(first));
-      },
-    });
+  // Awaited, not as callbacks of mutate: this page is left as soon as the place is taken.
+  const finish = async () => {
+    try {
+      const made = await register.mutateAsync({ ...input, extras: input.extras.filter((extra) => extra.quantity > 0) });
+      sessionStorage.removeItem(key);
+      if (made.order?.state !== 'paid') window.location.assign((await pay.mutateAsync(undefined)).url);
+    } catch (error) {
+      const first = Object.keys(fieldErrors(error))[0];
+      if (first) setStep(stepOf(first));
+    }
+  };
   const props: StepProps = { view, input, change, errors };
   const Step = [YouStep, StayStep, InvoiceStep, PayStep][step] as typeof YouStep;
   return (
@@ -122,7 +119,7 @@ function Wizard({ view }: { view: DoorView }) {
           {step < 3 ? (
             <Button variant="primary" sizing="form" onClick={() => setStep(step + 1)}>Continue</Button>
           ) : (
-            <Button variant="primary" sizing="form" busy={register.isPending || pay.isPending} onClick={finish}>
+            <Button variant="primary" sizing="form" busy={register.isPending || pay.isPending} onClick={() => void finish()}>
               {price.data?.totalMinor === 0 ? 'Take the place' : 'Take the place and pay'}
             </Button>
           )}
