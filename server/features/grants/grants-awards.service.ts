@@ -1,4 +1,5 @@
-import type { AwardLine, GrantDetail } from '@shared/features/grants/grants.contract';
+import type { AwardLine } from '@shared/features/grants/grants.contract';
+import type { GrantDetail } from '@shared/features/grants/grants-committee.contract';
 import { refuseProposal } from '@shared/features/grants/grants.rules';
 import { conflict, forbidden, notFound, stale } from '@shared/http/problem';
 import { newId } from '@server/db/id';

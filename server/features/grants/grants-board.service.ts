@@ -1,4 +1,4 @@
-import type { BoardRow, GrantBoard, GrantDetail } from '@shared/features/grants/grants.contract';
+import type { BoardRow, GrantBoard, GrantDetail } from '@shared/features/grants/grants-committee.contract';
 import { notFound } from '@shared/http/problem';
 import { holds, type Actor } from '@server/http/authorize';
 import { accountsById } from '@server/features/accounts/accounts.service';

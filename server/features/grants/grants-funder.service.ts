@@ -1,4 +1,4 @@
-import type { FunderAward, FunderView } from '@shared/features/grants/grants.contract';
+import type { FunderAward, FunderView } from '@shared/features/grants/grants-funder.contract';
 import { canStepAward, conditionsOf } from '@shared/features/grants/grants.rules';
 import { conflict, invalid, notFound } from '@shared/http/problem';
 import { newId } from '@server/db/id';

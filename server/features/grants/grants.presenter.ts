@@ -1,4 +1,6 @@
-import type { BoardRow, Evidence, Fund, FunderAward } from '@shared/features/grants/grants.contract';
+import type { Evidence, Fund } from '@shared/features/grants/grants.contract';
+import type { BoardRow } from '@shared/features/grants/grants-committee.contract';
+import type { FunderAward } from '@shared/features/grants/grants-funder.contract';
 import { canStepAward, notEligibleBecause, notFundedBecause, payable, sumOf } from '@shared/features/grants/grants.rules';
 import { regionOf } from '@shared/features/grants/regions';
 import type { Actor } from '@server/http/authorize';

@@ -1,5 +1,7 @@
 import type { Router } from 'express';
 import * as contract from '@shared/features/grants/grants.contract';
+import * as committee from '@shared/features/grants/grants-committee.contract';
+import * as funding from '@shared/features/grants/grants-funder.contract';
 import { inEvent, inFund, signedIn } from '@server/http/authorize';
 import { serve } from '@server/http/serve';
 import { addEvidence, downloadEvidence, readMyGrant, removeEvidence, saveMyGrant, submitMyGrant, withdrawMyGrant } from './grants-applications.service';
@@ -10,7 +12,7 @@ import { approveAwards, decideAward, readFund } from './grants-funder.service';
 import { createFund, updateFund } from './grants-funds.service';
 import { scoreApplication } from './grants-scores.service';
 
-const committee = inEvent('organiser', 'reviewer');
+const members = inEvent('organiser', 'reviewer');
 const organisers = inEvent('organiser');
 const funder = inFund('funder');
 
@@ -25,13 +27,13 @@ export function grantsRoutes(router: Router): void {
   serve(router, contract.downloadEvidence, { access: signedIn, handle: ({ actor, eventId, params }) => downloadEvidence(actor, eventId, params.evidence) });
   serve(router, contract.createFund, { access: organisers, handle: ({ actor, params, body }) => createFund(actor, params.event, body) });
   serve(router, contract.updateFund, { access: organisers, handle: ({ actor, eventId, fundId, version, body }) => updateFund(actor, eventId, fundId, version, body) });
-  serve(router, contract.readBoard, { access: committee, handle: ({ actor, eventId, now }) => readBoard(actor, eventId, now) });
-  serve(router, contract.readGrant, { access: committee, handle: ({ actor, eventId, params, now }) => readGrant(actor, eventId, params.application, now) });
-  serve(router, contract.scoreGrant, { access: committee, handle: ({ actor, eventId, params, body }) => scoreApplication(actor, eventId, params.application, body) });
-  serve(router, contract.proposeAward, { access: organisers, handle: ({ actor, eventId, fundId, params, body, now }) => proposeAward(actor, eventId, params.application, fundId, body, now) });
-  serve(router, contract.answerQuery, { access: organisers, handle: ({ actor, eventId, params, version, body, now }) => answerQuery(actor, eventId, params.award, version, body.text, now) });
-  serve(router, contract.sendDecisions, { access: organisers, handle: ({ actor, params, body, now }) => sendDecisions(actor, params.event, body.answerBy, now) });
-  serve(router, contract.readFund, { access: funder, handle: ({ fundId }) => readFund(fundId) });
-  serve(router, contract.decideAward, { access: funder, handle: ({ actor, fundId, params, version, body, now }) => decideAward(actor, fundId, params.award, version, body, now) });
-  serve(router, contract.approveAwards, { access: funder, handle: ({ actor, fundId, body, now }) => approveAwards(actor, fundId, body.awards, now) });
+  serve(router, committee.readBoard, { access: members, handle: ({ actor, eventId, now }) => readBoard(actor, eventId, now) });
+  serve(router, committee.readGrant, { access: members, handle: ({ actor, eventId, params, now }) => readGrant(actor, eventId, params.application, now) });
+  serve(router, committee.scoreGrant, { access: members, handle: ({ actor, eventId, params, body }) => scoreApplication(actor, eventId, params.application, body) });
+  serve(router, committee.proposeAward, { access: organisers, handle: ({ actor, eventId, fundId, params, body, now }) => proposeAward(actor, eventId, params.application, fundId, body, now) });
+  serve(router, committee.answerQuery, { access: organisers, handle: ({ actor, eventId, params, version, body, now }) => answerQuery(actor, eventId, params.award, version, body.text, now) });
+  serve(router, committee.sendDecisions, { access: organisers, handle: ({ actor, params, body, now }) => sendDecisions(actor, params.event, body.answerBy, now) });
+  serve(router, funding.readFund, { access: funder, handle: ({ fundId }) => readFund(fundId) });
+  serve(router, funding.decideAward, { access: funder, handle: ({ actor, fundId, params, version, body, now }) => decideAward(actor, fundId, params.award, version, body, now) });
+  serve(router, funding.approveAwards, { access: funder, handle: ({ actor, fundId, body, now }) => approveAwards(actor, fundId, body.awards, now) });
 }

@@ -1,5 +1,6 @@
 import { useState } from 'react';
-import type { AwardLine, BoardAward, Fund, GrantDetail } from '@shared/features/grants/grants.contract';
+import type { AwardLine, Fund } from '@shared/features/grants/grants.contract';
+import type { BoardAward, GrantDetail } from '@shared/features/grants/grants-committee.contract';
 import { amountOf, awardStateNames, costKindNames, formatGrant, refuseProposal, type FundRules } from '@shared/features/grants/grants.rules';
 import { parseMinor } from '@shared/lib/money';
 import { Button } from '@/components/button';

@@ -1,4 +1,5 @@
-import { costKinds, type BoardRow, type GrantBoard } from '@shared/features/grants/grants.contract';
+import { costKinds } from '@shared/features/grants/grants.contract';
+import type { BoardRow, GrantBoard } from '@shared/features/grants/grants-committee.contract';
 import { awardStateNames, costKindNames, formatGrant, stageNames } from '@shared/features/grants/grants.rules';
 import { MoneyCell } from './money-cell';
 

@@ -1,5 +1,5 @@
 import { formatGrant } from '@shared/features/grants/grants.rules';
-import type { FunderView } from '@shared/features/grants/grants.contract';
+import type { FunderView } from '@shared/features/grants/grants-funder.contract';
 import { count } from '@shared/lib/text';
 import { formatDate, formatDateSpan, formatInstant, instantToLocal } from '@shared/lib/time';
 import { Sign } from '@/components/sign';

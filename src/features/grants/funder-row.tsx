@@ -1,6 +1,7 @@
 import { useEffect, useRef, useState } from 'react';
 import { awardStateNames, formatGrant, stageNames } from '@shared/features/grants/grants.rules';
-import type { CostKind, FunderAward, FunderView } from '@shared/features/grants/grants.contract';
+import type { CostKind } from '@shared/features/grants/grants.contract';
+import type { FunderAward, FunderView } from '@shared/features/grants/grants-funder.contract';
 import { Button } from '@/components/button';
 import { Input } from '@/components/field';
 import { Sign } from '@/components/sign';

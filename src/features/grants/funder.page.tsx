@@ -1,7 +1,8 @@
 import { useQuery } from '@tanstack/react-query';
 import { useRef, useState } from 'react';
 import { useParams } from 'react-router-dom';
-import { costKinds, type FunderAward, type FunderView } from '@shared/features/grants/grants.contract';
+import { costKinds } from '@shared/features/grants/grants.contract';
+import type { FunderAward, FunderView } from '@shared/features/grants/grants-funder.contract';
 import { costKindNames, formatGrant } from '@shared/features/grants/grants.rules';
 import { count } from '@shared/lib/text';
 import { Button } from '@/components/button';

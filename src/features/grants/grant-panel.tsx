@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
-import { downloadEvidence, type GrantBoard, type GrantDetail } from '@shared/features/grants/grants.contract';
+import { downloadEvidence } from '@shared/features/grants/grants.contract';
+import type { GrantBoard, GrantDetail } from '@shared/features/grants/grants-committee.contract';
 import { costKindNames, flagNames, formatGrant, stageNames } from '@shared/features/grants/grants.rules';
 import { Button } from '@/components/button';
 import { Facts, SectionHead } from '@/components/page-bar';

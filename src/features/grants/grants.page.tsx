@@ -1,7 +1,8 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { useParams, useSearchParams } from 'react-router-dom';
-import type { Fund, GrantBoard } from '@shared/features/grants/grants.contract';
+import type { Fund } from '@shared/features/grants/grants.contract';
+import type { GrantBoard } from '@shared/features/grants/grants-committee.contract';
 import { formatGrant } from '@shared/features/grants/grants.rules';
 import { count } from '@shared/lib/text';
 import { formatInstant } from '@shared/lib/time';

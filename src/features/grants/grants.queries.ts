@@ -1,14 +1,17 @@
 import { queryOptions, useMutation, useQueryClient, type QueryClient } from '@tanstack/react-query';
 import * as contract from '@shared/features/grants/grants.contract';
-import type { CostKind, FunderAward, FunderView, FundInput, GrantInput, MyGrant } from '@shared/features/grants/grants.contract';
+import * as committee from '@shared/features/grants/grants-committee.contract';
+import * as funding from '@shared/features/grants/grants-funder.contract';
+import type { CostKind, FundInput, GrantInput, MyGrant } from '@shared/features/grants/grants.contract';
+import type { FunderAward, FunderView } from '@shared/features/grants/grants-funder.contract';
 import type { BodyOf } from '@shared/http/endpoint';
 import { call } from '@/lib/api';
 
-export const boardQuery = (event: string) => queryOptions({ queryKey: ['grants', 'board', event], queryFn: ({ signal }) => call(contract.readBoard, { params: { event }, signal }) });
+export const boardQuery = (event: string) => queryOptions({ queryKey: ['grants', 'board', event], queryFn: ({ signal }) => call(committee.readBoard, { params: { event }, signal }) });
 export const grantQuery = (event: string, application: string) =>
-  queryOptions({ queryKey: ['grants', 'one', event, application], queryFn: ({ signal }) => call(contract.readGrant, { params: { event, application }, signal }) });
+  queryOptions({ queryKey: ['grants', 'one', event, application], queryFn: ({ signal }) => call(committee.readGrant, { params: { event, application }, signal }) });
 export const myGrantQuery = (event: string) => queryOptions({ queryKey: ['grants', 'mine', event], queryFn: ({ signal }) => call(contract.readMyGrant, { params: { event }, signal }) });
-export const fundQuery = (fund: string) => queryOptions({ queryKey: ['grants', 'fund', fund], queryFn: ({ signal }) => call(contract.readFund, { params: { fund }, signal }) });
+export const fundQuery = (fund: string) => queryOptions({ queryKey: ['grants', 'fund', fund], queryFn: ({ signal }) => call(funding.readFund, { params: { fund }, signal }) });
 
 function useMyGrantMutation<V>(event: string, mutationFn: (variables: V) => Promise<MyGrant>) {
   const client = useQueryClient();
@@ -44,19 +47,19 @@ export const useSaveFund = (event: string) =>
     fund ? call(contract.updateFund, { params: { event, fund }, version, body }) : call(contract.createFund, { params: { event }, body }),
   );
 export const useScoreGrant = (event: string, application: string) =>
-  useCommitteeMutation((body: BodyOf<typeof contract.scoreGrant>) => call(contract.scoreGrant, { params: { event, application }, body }));
+  useCommitteeMutation((body: BodyOf<typeof committee.scoreGrant>) => call(committee.scoreGrant, { params: { event, application }, body }));
 export const useProposeAward = (event: string, application: string) =>
-  useCommitteeMutation(({ fund, ...body }: { fund: string } & BodyOf<typeof contract.proposeAward>) => call(contract.proposeAward, { params: { event, application, fund }, body }));
+  useCommitteeMutation(({ fund, ...body }: { fund: string } & BodyOf<typeof committee.proposeAward>) => call(committee.proposeAward, { params: { event, application, fund }, body }));
 export const useAnswerQuery = (event: string) =>
-  useCommitteeMutation(({ award, version, text }: Versioned<{ award: string; text: string }>) => call(contract.answerQuery, { params: { event, award }, version, body: { text } }));
-export const useSendDecisions = (event: string) => useCommitteeMutation((body: BodyOf<typeof contract.sendDecisions>) => call(contract.sendDecisions, { params: { event }, body }));
+  useCommitteeMutation(({ award, version, text }: Versioned<{ award: string; text: string }>) => call(committee.answerQuery, { params: { event, award }, version, body: { text } }));
+export const useSendDecisions = (event: string) => useCommitteeMutation((body: BodyOf<typeof committee.sendDecisions>) => call(committee.sendDecisions, { params: { event }, body }));
 
 /** One decision: the row changes at once, conditions and sums are read anew. */
 export function useDecideAward(fund: string) {
   const client = useQueryClient();
   const { queryKey } = fundQuery(fund);
   return useMutation({
-    mutationFn: ({ award, ...body }: { award: FunderAward } & BodyOf<typeof contract.decideAward>) => call(contract.decideAward, { params: { fund, award: award.id }, version: award.version, body }),
+    mutationFn: ({ award, ...body }: { award: FunderAward } & BodyOf<typeof funding.decideAward>) => call(funding.decideAward, { params: { fund, award: award.id }, version: award.version, body }),
     onSuccess: (award) => client.setQueryData(queryKey, (view: FunderView | undefined) => view && { ...view, awards: view.awards.map((row) => (row.id === award.id ? award : row)) }),
     onError: () => client.invalidateQueries({ queryKey }),
   });
@@ -65,7 +68,7 @@ export function useApproveAwards(fund: string) {
   const client = useQueryClient();
   const { queryKey } = fundQuery(fund);
   return useMutation({
-    mutationFn: (awards: readonly FunderAward[]) => call(contract.approveAwards, { params: { fund }, body: { awards: awards.map(({ id, version }) => ({ id, version })) } }),
+    mutationFn: (awards: readonly FunderAward[]) => call(funding.approveAwards, { params: { fund }, body: { awards: awards.map(({ id, version }) => ({ id, version })) } }),
     onSuccess: (view) => client.setQueryData(queryKey, view),
     onError: () => client.invalidateQueries({ queryKey }),
   });

@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import type { BoardAward } from '@shared/features/grants/grants.contract';
+import type { BoardAward } from '@shared/features/grants/grants-committee.contract';
 import { Button } from '@/components/button';
 import { Textarea } from '@/components/field';
 import { toast } from '@/components/toast';

@@ -1,5 +1,5 @@
 import { useRef, useState } from 'react';
-import type { GrantDetail } from '@shared/features/grants/grants.contract';
+import type { GrantDetail } from '@shared/features/grants/grants-committee.contract';
 import { Button } from '@/components/button';
 import { Dialog } from '@/components/dialog';
 import { Select, Textarea } from '@/components/field';

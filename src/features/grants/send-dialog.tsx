@@ -1,5 +1,5 @@
 import { useRef, useState } from 'react';
-import type { GrantBoard } from '@shared/features/grants/grants.contract';
+import type { GrantBoard } from '@shared/features/grants/grants-committee.contract';
 import { count } from '@shared/lib/text';
 import { addDays, instantToLocal } from '@shared/lib/time';
 import { Button } from '@/components/button';

@@ -1,5 +1,7 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import * as contract from '../../../shared/features/grants/grants.contract';
+import * as committee from '../../../shared/features/grants/grants-committee.contract';
+import * as funding from '../../../shared/features/grants/grants-funder.contract';
 import { trialBalance } from '../../../server/features/finance/finance-ledger.service';
 import { register } from '../../../server/features/registration/registration.service';
 import { actorFor, buildAccount } from '../../support/build';
@@ -35,9 +37,9 @@ const inDays = (days: number) => new Date(Date.now() + days * 86_400_000).toISOS
 
 async function proposed(amountMinor = 98_000) {
   const made = await buildApplicant(given.event, given.category);
-  const answer = await organiser.call(contract.proposeAward, { ...ofFund(made.id), body: { lines: travel(amountMinor), version: null } });
+  const answer = await organiser.call(committee.proposeAward, { ...ofFund(made.id), body: { lines: travel(amountMinor), version: null } });
   expect(answer.status, JSON.stringify(answer.body)).toBe(200);
-  return { ...made, award: answer.body.row.awards[0] as contract.BoardAward };
+  return { ...made, award: answer.body.row.awards[0] as committee.BoardAward };
 }
 
 describe('H1 a grant application', () => {
@@ -83,11 +85,11 @@ describe('H1 a grant application', () => {
   it('says who may not: 401 for nobody, 404 outside the event, 403 for a reviewer who proposes', async () => {
     const { id } = await buildApplicant(given.event, given.category);
     const other = await t.signIn(await buildAccount());
-    expect((await t.stranger.call(contract.readBoard, at())).status).toBe(401);
-    expect((await other.call(contract.readBoard, at())).status).toBe(404);
-    expect((await funder.call(contract.readBoard, at())).status).toBe(404);
-    expect((await reviewer.call(contract.proposeAward, { ...ofFund(id), body: { lines: travel(100), version: null } })).status).toBe(403);
-    expect((await reviewer.call(contract.sendDecisions, { ...at(), body: { answerBy: inDays(10) } })).status).toBe(403);
+    expect((await t.stranger.call(committee.readBoard, at())).status).toBe(401);
+    expect((await other.call(committee.readBoard, at())).status).toBe(404);
+    expect((await funder.call(committee.readBoard, at())).status).toBe(404);
+    expect((await reviewer.call(committee.proposeAward, { ...ofFund(id), body: { lines: travel(100), version: null } })).status).toBe(403);
+    expect((await reviewer.call(committee.sendDecisions, { ...at(), body: { answerBy: inDays(10) } })).status).toBe(403);
     expect((await reviewer.call(contract.createFund, { ...at(), body: fundInput() })).status).toBe(403);
   });
 });
@@ -95,24 +97,24 @@ describe('H1 a grant application', () => {
 describe('H2 scores', () => {
   it('shows others’ scores after one’s own, and the mean to rank by', async () => {
     const { id } = await buildApplicant(given.event, given.category);
-    expect((await organiser.call(contract.scoreGrant, { ...of(id), body: { score: 9, comment: 'Strong', conflict: false } })).status).toBe(200);
-    const before = (await reviewer.call(contract.readGrant, of(id))).body;
+    expect((await organiser.call(committee.scoreGrant, { ...of(id), body: { score: 9, comment: 'Strong', conflict: false } })).status).toBe(200);
+    const before = (await reviewer.call(committee.readGrant, of(id))).body;
     expect([before.row.score, before.reviews]).toEqual([null, null]);
-    expect((await reviewer.call(contract.scoreGrant, { ...of(id), body: { score: 11, comment: '', conflict: false } })).status).toBe(422);
-    expect(fields(await reviewer.call(contract.scoreGrant, { ...of(id), body: { score: null, comment: '', conflict: false } }))).toEqual({ score: 'Give a score from 1 to 10, or declare a conflict of interest.' });
-    await reviewer.call(contract.scoreGrant, { ...of(id), body: { score: 8, comment: '', conflict: false } });
-    const after = (await reviewer.call(contract.readGrant, of(id))).body;
+    expect((await reviewer.call(committee.scoreGrant, { ...of(id), body: { score: 11, comment: '', conflict: false } })).status).toBe(422);
+    expect(fields(await reviewer.call(committee.scoreGrant, { ...of(id), body: { score: null, comment: '', conflict: false } }))).toEqual({ score: 'Give a score from 1 to 10, or declare a conflict of interest.' });
+    await reviewer.call(committee.scoreGrant, { ...of(id), body: { score: 8, comment: '', conflict: false } });
+    const after = (await reviewer.call(committee.readGrant, of(id))).body;
     expect([after.row.score, after.reviews]).toEqual([8.5, [{ reviewer: given.organiser.printedName, score: 9, comment: 'Strong' }]]);
   });
 
   it('hides an application in conflict: declared, same institution, one’s own', async () => {
     const { id } = await buildApplicant(given.event, given.category);
     const near = await buildApplicant(given.event, given.category, {}, { affiliation: 'KUURA polytechnic' });
-    await reviewer.call(contract.scoreGrant, { ...of(id), body: { score: null, comment: '', conflict: true } });
-    expect((await reviewer.call(contract.readGrant, of(id))).status).toBe(404);
-    expect((await reviewer.call(contract.readGrant, of(near.id))).status).toBe(404);
-    expect((await reviewer.call(contract.scoreGrant, { ...of(near.id), body: { score: 9, comment: '', conflict: false } })).status).toBe(403);
-    const board = (await reviewer.call(contract.readBoard, at())).body;
+    await reviewer.call(committee.scoreGrant, { ...of(id), body: { score: null, comment: '', conflict: true } });
+    expect((await reviewer.call(committee.readGrant, of(id))).status).toBe(404);
+    expect((await reviewer.call(committee.readGrant, of(near.id))).status).toBe(404);
+    expect((await reviewer.call(committee.scoreGrant, { ...of(near.id), body: { score: 9, comment: '', conflict: false } })).status).toBe(403);
+    const board = (await reviewer.call(committee.readBoard, at())).body;
     expect(board.rows.map((row) => [row.person, row.requested, row.conflict])).toEqual([[null, [], 'declared'], [null, [], 'institution']]);
     expect(JSON.stringify(board.rows)).not.toContain('Viện');
   });
@@ -123,7 +125,7 @@ describe('H3 awards by hand', () => {
     const { id, award } = await proposed(90_000);
     const second = (await organiser.call(contract.createFund, { ...at(), body: fundInput({ name: 'First Journeys', covers: ['travel', 'fee'] }) })).body;
     const other = await buildApplicant(given.event, given.category, { items: [{ kind: 'travel', amountMinor: 150_000, quantity: null, note: '' }] });
-    const propose = (application: string, fund: string, lines: contract.AwardLine[], version: number | null = null) => organiser.call(contract.proposeAward, { ...ofFund(application, fund), body: { lines, version } });
+    const propose = (application: string, fund: string, lines: contract.AwardLine[], version: number | null = null) => organiser.call(committee.proposeAward, { ...ofFund(application, fund), body: { lines, version } });
     expect(detail(await propose(id, given.fund.id, travel(98_001), award.version))).toBe('Travel: 980 EUR were asked for. Award at most that.');
     expect(detail(await propose(id, second.id, travel(5_000)))).toBe('Ness Bequest pays travel for this person. One cost is paid by one fund: take it back there first.');
     expect(detail(await propose(id, second.id, [{ kind: 'accommodation', amountMinor: 5_000 }]))).toBe('First Journeys does not pay accommodation. It pays travel and fee.');
@@ -134,7 +136,7 @@ describe('H3 awards by hand', () => {
     expect((await propose(other.id, given.fund.id, travel(150_000))).status).toBe(200);
     const late = await organiser.call(contract.updateFund, { params: { event: given.event.slug, fund: given.fund.id }, version: given.fund.version, body: fundInput({ budgetMinor: 100_000 }) });
     expect(fields(late)).toEqual({ budgetMinor: '1,500 EUR are awarded from this fund. Take awards back first, or enter at least that.' });
-    const board = (await organiser.call(contract.readBoard, at())).body;
+    const board = (await organiser.call(committee.readBoard, at())).body;
     expect(board.funds[0]).toMatchObject({ letter: 'A', awardedMinor: 150_000, leftMinor: 50_000, awards: 1 });
   });
 
@@ -142,60 +144,60 @@ describe('H3 awards by hand', () => {
     const people: Awaited<ReturnType<typeof buildApplicant>>[] = [];
     for (let n = 0; n < 8; n++) people.push(await buildApplicant(given.event, given.category, { items: [{ kind: 'travel', amountMinor: 50_000, quantity: null, note: '' }], minUsefulMinor: 0 }));
     const clicks = Array.from({ length: 40 }, (_, n) => people[n % 8] as Awaited<ReturnType<typeof buildApplicant>>);
-    const answers = await Promise.all(clicks.map(({ id }) => organiser.call(contract.proposeAward, { ...ofFund(id), body: { lines: travel(50_000), version: null } })));
+    const answers = await Promise.all(clicks.map(({ id }) => organiser.call(committee.proposeAward, { ...ofFund(id), body: { lines: travel(50_000), version: null } })));
     const statuses = answers.map((answer) => answer.status);
     expect(statuses.filter((status) => status === 200)).toHaveLength(4);
     expect(new Set(statuses)).toEqual(new Set([200, 409, 412]));
-    const board = (await organiser.call(contract.readBoard, at())).body;
+    const board = (await organiser.call(committee.readBoard, at())).body;
     expect(board.funds[0]).toMatchObject({ awardedMinor: 200_000, leftMinor: 0, awards: 4 });
     expect(board.rows.filter((row) => row.awards.length === 0).map((row) => row.reason)).toEqual(Array(4).fill(null));
-    await organiser.call(contract.scoreGrant, { ...of(board.rows.find((row) => row.awards.length === 0)?.id ?? ''), body: { score: 7, comment: '', conflict: false } });
-    expect((await organiser.call(contract.readBoard, at())).body.rows.map((row) => row.reason)).toContain('No fund has enough left: A 0.');
+    await organiser.call(committee.scoreGrant, { ...of(board.rows.find((row) => row.awards.length === 0)?.id ?? ''), body: { score: 7, comment: '', conflict: false } });
+    expect((await organiser.call(committee.readBoard, at())).body.rows.map((row) => row.reason)).toContain('No fund has enough left: A 0.');
   });
 });
 
 describe('H5 the funder', () => {
   it('sees reference, stage and region, and nothing else of a person', async () => {
     await proposed();
-    const view = (await funder.call(contract.readFund, inFund())).body;
+    const view = (await funder.call(funding.readFund, inFund())).body;
     expect(Object.keys(view.awards[0] ?? {}).sort()).toEqual(['awardMinor', 'can', 'id', 'lines', 'reference', 'region', 'requested', 'requestedMinor', 'score', 'stage', 'state', 'talk', 'version']);
     expect(view.awards[0]).toMatchObject({ reference: 'T27-001', stage: 'doctoral', region: 'South-eastern Asia', awardMinor: 98_000 });
     const text = JSON.stringify(view);
     for (const secret of ['Given', 'Family', '@example.org', 'Viện', '"VN"', 'vegetarian', 'lattices and would']) expect(text).not.toContain(secret);
     const other = await t.signIn(await buildAccount({}, [{ role: 'funder', scope: 'fund', scopeId: (await organiser.call(contract.createFund, { ...at(), body: fundInput({ name: 'Second' }) })).body.id }]));
-    expect((await other.call(contract.readFund, inFund())).status).toBe(404);
-    expect((await organiser.call(contract.readFund, inFund())).status).toBe(404);
-    expect((await t.stranger.call(contract.readFund, inFund())).status).toBe(401);
+    expect((await other.call(funding.readFund, inFund())).status).toBe(404);
+    expect((await organiser.call(funding.readFund, inFund())).status).toBe(404);
+    expect((await t.stranger.call(funding.readFund, inFund())).status).toBe(401);
   });
 
   it('queries, is answered, approves, undoes; a stale click changes nothing', async () => {
     const { award, id } = await proposed();
-    const decide = (version: number, decision: 'approved' | 'queried' | 'proposed', question = '') => funder.call(contract.decideAward, { ...inFund(award.id), version, body: { decision, question } });
+    const decide = (version: number, decision: 'approved' | 'queried' | 'proposed', question = '') => funder.call(funding.decideAward, { ...inFund(award.id), version, body: { decision, question } });
     expect(fields(await decide(award.version, 'queried'))).toEqual({ question: 'Write your question.' });
     const queried = await decide(award.version, 'queried', 'Where will this person stay?');
     expect(queried.body).toMatchObject({ state: 'queried', talk: [{ from: 'funder', text: 'Where will this person stay?' }] });
     expect((await decide(award.version, 'approved')).status).toBe(412);
     await t.runJobs();
     expect(t.mail.find((mail) => mail.to === given.organiser.email)?.subject).toBe('Question about T27-001 from Ness Bequest');
-    const answered = await organiser.call(contract.answerQuery, { params: { event: given.event.slug, award: award.id }, version: queried.body.version, body: { text: 'With a colleague.' } });
+    const answered = await organiser.call(committee.answerQuery, { params: { event: given.event.slug, award: award.id }, version: queried.body.version, body: { text: 'With a colleague.' } });
     expect(answered.body.row.awards[0]?.state).toBe('proposed');
     const approved = await decide(answered.body.row.awards[0]?.version ?? -1, 'approved');
     expect(approved.body.state).toBe('approved');
-    expect(detail(await organiser.call(contract.proposeAward, { ...ofFund(id), body: { lines: travel(1), version: approved.body.version } }))).toContain('has approved this award');
+    expect(detail(await organiser.call(committee.proposeAward, { ...ofFund(id), body: { lines: travel(1), version: approved.body.version } }))).toContain('has approved this award');
     expect((await decide(approved.body.version, 'proposed')).body).toMatchObject({ state: 'proposed', can: { approve: true, undo: false } });
     const other = await organiser.call(contract.createFund, { ...at(), body: fundInput({ name: 'Second' }) });
     const client = await t.signIn(await buildAccount({}, [{ role: 'funder', scope: 'fund', scopeId: other.body.id }]));
-    expect((await client.call(contract.decideAward, { params: { fund: other.body.id, award: award.id }, version: 3, body: { decision: 'approved', question: '' } })).status).toBe(404);
+    expect((await client.call(funding.decideAward, { params: { fund: other.body.id, award: award.id }, version: 3, body: { decision: 'approved', question: '' } })).status).toBe(404);
   });
 
   it('approves the remaining as they were read, or none', async () => {
     const one = await proposed(50_000);
     const two = await proposed(60_000);
     const awards = [one, two].map(({ award }) => ({ id: award.id, version: award.version }));
-    const stale = await funder.call(contract.approveAwards, { ...inFund(), body: { awards: [awards[0], { ...awards[1], version: 9 }] } });
+    const stale = await funder.call(funding.approveAwards, { ...inFund(), body: { awards: [awards[0], { ...awards[1], version: 9 }] } });
     expect(stale.status).toBe(412);
-    expect((await funder.call(contract.readFund, inFund())).body.awards.map((award) => award.state)).toEqual(['proposed', 'proposed']);
-    const all = await funder.call(contract.approveAwards, { ...inFund(), body: { awards } });
+    expect((await funder.call(funding.readFund, inFund())).body.awards.map((award) => award.state)).toEqual(['proposed', 'proposed']);
+    const all = await funder.call(funding.approveAwards, { ...inFund(), body: { awards } });
     expect(all.body.awards.map((award) => award.state)).toEqual(['approved', 'approved']);
     expect(all.body.conditions.every((condition) => condition.met)).toBe(true);
   });
@@ -205,14 +207,14 @@ describe('H6 decisions', () => {
   it('offers, regrets and holds; the person accepts, gives back, and the fund has its money again', async () => {
     const { applicant, award } = await proposed();
     const poor = await buildApplicant(given.event, given.category);
-    await funder.call(contract.decideAward, { ...inFund(award.id), version: award.version, body: { decision: 'approved', question: '' } });
+    await funder.call(funding.decideAward, { ...inFund(award.id), version: award.version, body: { decision: 'approved', question: '' } });
     const held = await proposed(1_000);
     const me = await t.signIn(applicant);
     expect((await me.call(contract.readMyGrant, at())).body.decision).toBeNull();
-    expect(fields(await organiser.call(contract.sendDecisions, { ...at(), body: { answerBy: inDays(-1) } }))).toEqual({ answerBy: 'Choose a day after today.' });
-    const sent = await organiser.call(contract.sendDecisions, { ...at(), body: { answerBy: inDays(14) } });
+    expect(fields(await organiser.call(committee.sendDecisions, { ...at(), body: { answerBy: inDays(-1) } }))).toEqual({ answerBy: 'Choose a day after today.' });
+    const sent = await organiser.call(committee.sendDecisions, { ...at(), body: { answerBy: inDays(14) } });
     expect(sent.body).toEqual({ offered: 1, notAwarded: 1, held: 1 });
-    expect((await organiser.call(contract.sendDecisions, { ...at(), body: { answerBy: inDays(14) } })).status).toBe(409);
+    expect((await organiser.call(committee.sendDecisions, { ...at(), body: { answerBy: inDays(14) } })).status).toBe(409);
     await t.runJobs();
     const letters = (to: string) => t.mail.filter((mail) => mail.to === to).map((mail) => mail.subject).slice(1);
     expect([letters(applicant.email), letters(poor.applicant.email), letters(held.applicant.email)]).toEqual([['A travel grant for you: Conference on Lattices'], ['About your grant application: Conference on Lattices'], []]);
@@ -223,7 +225,7 @@ describe('H6 decisions', () => {
     expect((await me.call(contract.answerAward, { ...at(), version: mine.version, body: { answer: 'returned' } })).status).toBe(412);
     const returned = await me.call(contract.answerAward, { ...at(), version: accepted.body.version, body: { answer: 'returned' } });
     expect(returned.body.decision?.outcome).toBe('returned');
-    expect((await organiser.call(contract.readBoard, at())).body.funds[0]).toMatchObject({ awardedMinor: 1_000, leftMinor: 199_000 });
+    expect((await organiser.call(committee.readBoard, at())).body.funds[0]).toMatchObject({ awardedMinor: 1_000, leftMinor: 199_000 });
     const ledger = (await trialBalance()).filter((line) => line.account.startsWith('grant'));
     expect(ledger.map((line) => [line.account.split(':')[0], line.debitMinor, line.creditMinor])).toEqual([['grant commitments', 98_000, 98_000], ['grant expense', 98_000, 98_000]]);
   });

@@ -3,7 +3,7 @@ import { render, screen, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { createMemoryRouter, RouterProvider } from 'react-router-dom';
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
-import { funderView, type FunderAward, type FunderView } from '@shared/features/grants/grants.contract';
+import { funderView, type FunderAward, type FunderView } from '@shared/features/grants/grants-funder.contract';
 import { Component } from '@/features/grants/funder.page';
 
 /** The funder's page over a fake API that keeps the awards of one fund, as the contract describes them. */
