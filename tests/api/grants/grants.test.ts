@@ -3,6 +3,9 @@ import * as contract from '../../../shared/features/grants/grants.contract';
 import * as committee from '../../../shared/features/grants/grants-committee.contract';
 import * as funding from '../../../shared/features/grants/grants-funder.contract';
 import { trialBalance } from '../../../server/features/finance/finance-ledger.service';
+import { lapseAwards } from '../../../server/features/grants/grants-decisions.service';
+import { replaceDeadlines } from '../../../server/features/events/events-frame.service';
+import { systemActor } from '../../../server/features/accounts/accounts.service';
 import { register } from '../../../server/features/registration/registration.service';
 import { actorFor, buildAccount } from '../../support/build';
 import { buildApplicant, buildGrants, fundInput, grantInput } from '../../support/build-grants';
@@ -228,5 +231,50 @@ describe('H6 decisions', () => {
     expect((await organiser.call(committee.readBoard, at())).body.funds[0]).toMatchObject({ awardedMinor: 1_000, leftMinor: 199_000 });
     const ledger = (await trialBalance()).filter((line) => line.account.startsWith('grant'));
     expect(ledger.map((line) => [line.account.split(':')[0], line.debitMinor, line.creditMinor])).toEqual([['grant commitments', 98_000, 98_000], ['grant expense', 98_000, 98_000]]);
+  });
+
+  it('sends nothing while applications can still come in, and keeps the date for them', async () => {
+    const { award } = await proposed();
+    await funder.call(funding.decideAward, { ...inFund(award.id), version: award.version, body: { decision: 'approved', question: '' } });
+    const due = (days: number) => replaceDeadlines(systemActor, given.event.slug, given.event.version, [{ kind: 'grants_due', date: inDays(days), time: '23:59' }]);
+    const moved = await due(5);
+    const early = await organiser.call(committee.sendDecisions, { ...at(), body: { answerBy: inDays(14) } });
+    expect([early.status, detail(early)]).toEqual([409, 'Applications can still come in. Letters go after the date for grant applications.']);
+    await replaceDeadlines(systemActor, given.event.slug, moved.version, [{ kind: 'grants_due', date: inDays(-5), time: '23:59' }]);
+    const person = await buildAccount({ affiliation: 'Zlatna Academy' });
+    await register(await actorFor(person), given.event.slug, registrationInput(given.category), new Date());
+    const me = await t.signIn(person);
+    expect(detail(await me.call(contract.saveMyGrant, { ...at(), version: 0, body: grantInput() }))).toBe('The date for grant applications is past.');
+    expect((await organiser.call(committee.sendDecisions, { ...at(), body: { answerBy: inDays(14) } })).body).toMatchObject({ offered: 1 });
+  });
+
+  it('gives an offer that was not answered in time back to its fund, and says so', async () => {
+    const { applicant, award } = await proposed();
+    await funder.call(funding.decideAward, { ...inFund(award.id), version: award.version, body: { decision: 'approved', question: '' } });
+    await organiser.call(committee.sendDecisions, { ...at(), body: { answerBy: inDays(3) } });
+    expect(await lapseAwards(new Date(Date.now() + 2 * 86_400_000))).toBe(0);
+    expect(await lapseAwards(new Date(Date.now() + 5 * 86_400_000))).toBe(1);
+    expect(await lapseAwards(new Date(Date.now() + 5 * 86_400_000))).toBe(0);
+    await t.runJobs();
+    expect(t.mail.filter((mail) => mail.to === applicant.email).at(-1)?.subject).toBe('Grant offer out of date: Conference on Lattices');
+    const me = await t.signIn(applicant);
+    const mine = (await me.call(contract.readMyGrant, at())).body;
+    expect([mine.decision?.outcome, mine.can.accept, mine.can.return]).toEqual(['returned', false, false]);
+    expect((await organiser.call(committee.readBoard, at())).body.funds[0]?.leftMinor).toBe(200_000);
+  });
+});
+
+describe('H3 funds', () => {
+  it('are changed by organisers of their event only, with the version that was read', async () => {
+    const change = (client: Client, event: string, version: number, over = {}) => client.call(contract.updateFund, { params: { event, fund: given.fund.id }, version, body: fundInput({ name: 'Ness Gift', ...over }) });
+    expect((await change(organiser, given.event.slug, given.fund.version)).body).toMatchObject({ name: 'Ness Gift', funders: [given.funder.printedName], can: { edit: true, inviteFunder: false } });
+    expect((await change(organiser, given.event.slug, given.fund.version)).status).toBe(412);
+    expect((await change(funder, given.event.slug, 1)).status).toBe(404);
+    expect((await change(reviewer, given.event.slug, 1)).status).toBe(403);
+    expect(fields(await change(organiser, given.event.slug, 1, { currency: 'JPY' }))).toEqual({ currency: 'The event is reckoned in EUR. Enter the budget in that currency.' });
+    const other = await buildGrants();
+    const stranger = await t.signIn(other.organiser);
+    expect((await change(stranger, other.event.slug, 1)).status).toBe(404);
+    expect((await change(stranger, given.event.slug, 1)).status).toBe(404);
   });
 });
