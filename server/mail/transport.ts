@@ -31,14 +31,11 @@ export function mailTransport(): MailTransport {
 
 /** SMTP by nodemailer. The calendar part stands in the alternative and as an attachment (RFC 6047 section 2.4). */
 export function smtpTransport(url: string): MailTransport & { close(): void } {
-  const transporter: Transporter = nodemailer.createTransport(url, {
-    from: { name: env.INSTITUTE_NAME, address: env.OFFICE_EMAIL },
-    pool: true, // one greeting for many letters
-    // Well below the ten minutes after which a conversation counts as cut off.
-    connectionTimeout: 20_000,
-    greetingTimeout: 20_000,
-    socketTimeout: 120_000,
-  } as never);
+  // Options of the connection go into its address: what is passed beside an address are defaults of letters.
+  const address = new URL(url);
+  const options = { pool: 'true', maxConnections: '2', connectionTimeout: '20000', greetingTimeout: '20000', socketTimeout: '120000' };
+  for (const [name, value] of Object.entries(options)) if (!address.searchParams.has(name)) address.searchParams.set(name, value);
+  const transporter: Transporter = nodemailer.createTransport(address.href);
   return {
     close: () => transporter.close(),
     send: async (message) => {
