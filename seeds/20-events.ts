@@ -29,8 +29,8 @@ const rooms: RoomInput[] = [
   { name: 'Vey', shortName: 'V', capacity: 40, features: ['projector', 'stepFree'] },
 ];
 
-const base = { timeZone: ZONE, currency: 'EUR', venue: 'Lindgard House', town: 'Tarnholt' };
-const texts = (lead: string): EventInput['texts'] => ({
+export const base = { timeZone: ZONE, currency: 'EUR', venue: 'Lindgard House', town: 'Tarnholt' };
+export const texts = (lead: string): EventInput['texts'] => ({
   lead,
   practical: 'The institute stands by the lake, ten minutes on foot from the station. Lunch is served in the winter garden; the coffee is free. Every room has blackboards, chalk and a step-free way to the desk.',
   travel: 'Trains leave the main line for Tarnholt every hour. From the harbour a bus runs until 22:40. Bicycles can be borrowed at the desk.',
@@ -39,9 +39,9 @@ const texts = (lead: string): EventInput['texts'] => ({
 
 type Frame = [startsAt: string, endsAt: string, kind: 'session' | 'coffee' | 'lunch' | 'social', minimal: number | null];
 const schoolDay: Frame[] = [['09:00', '10:00', 'session', null], ['10:00', '10:20', 'coffee', 10], ['10:20', '12:30', 'session', null], ['12:30', '14:00', 'lunch', 60], ['14:00', '15:30', 'session', null], ['15:30', '16:00', 'coffee', 15], ['16:00', '18:15', 'session', null]];
-const conferenceDay: Frame[] = [['09:00', '10:00', 'session', null], ['10:00', '10:30', 'coffee', 15], ['10:30', '12:30', 'session', null], ['12:30', '14:00', 'lunch', 60], ['14:00', '16:00', 'session', null], ['16:00', '16:30', 'coffee', 15], ['16:30', '18:00', 'session', null]];
+export const conferenceDay: Frame[] = [['09:00', '10:00', 'session', null], ['10:00', '10:30', 'coffee', 15], ['10:30', '12:30', 'session', null], ['12:30', '14:00', 'lunch', 60], ['14:00', '16:00', 'session', null], ['16:00', '16:30', 'coffee', 15], ['16:30', '18:00', 'session', null]];
 
-async function build(cast: Cast, slug: string, input: EventInput, frames: Frame[], days: string[], deadlines: [DeadlineKind, string][], fees: FeeTableInput): Promise<EventDetail> {
+export async function build(cast: Cast, slug: string, input: EventInput, frames: Frame[], days: string[], deadlines: [DeadlineKind, string][], fees: FeeTableInput): Promise<EventDetail> {
   let event = await createEvent(systemActor, { slug, ...input });
   event = await replaceRooms(systemActor, slug, event.version, rooms);
   const blocks = days.flatMap((day) => frames.map(([startsAt, endsAt, kind, minimalMinutes]) => ({ day, startsAt, endsAt, kind, title: '', minimalMinutes })));
@@ -54,7 +54,7 @@ async function build(cast: Cast, slug: string, input: EventInput, frames: Frame[
   return changeEventState(systemActor, slug, 'announced');
 }
 
-const category = (name: string, stages: FeeTableInput['categories'][number]['stages'], earlyMinor: number, regularMinor: number, earlyUntil: string) => ({ name, stages, earlyMinor, earlyUntil, regularMinor, taxBasisPoints: 0 });
+export const category = (name: string, stages: FeeTableInput['categories'][number]['stages'], earlyMinor: number, regularMinor: number, earlyUntil: string) => ({ name, stages, earlyMinor, earlyUntil, regularMinor, taxBasisPoints: 0 });
 const extra = (name: string, priceMinor: number, capacity: number | null, hint: string) => ({ name, priceMinor, capacity, until: null, taxBasisPoints: 0, hint });
 
 export async function seedEvents(cast: Cast, dates: DemoDates, scale: number): Promise<{ school: EventDetail; conference: EventDetail; workshop: EventDetail }> {

@@ -1,13 +1,13 @@
 import type { EventDetail } from '@shared/features/events/events.contract';
 import { addDays } from '@shared/lib/time';
 import { systemActor, type PersonView } from '@server/features/accounts/accounts.service';
-import { decideTalk, withdrawTalk } from '@server/features/talks/talks.service';
+import { decideTalk, readTalk, withdrawTalk } from '@server/features/talks/talks.service';
 import { handInAbstract, saveAbstract, submitTalk } from '@server/features/talks/talks-abstract.service';
 import { createCourse, savePresence } from '@server/features/talks/talks-courses.service';
 import { inviteSpeaker } from '@server/features/talks/talks-invitation.service';
 import { createTalk } from '@server/features/talks/talks-structure.service';
 import { as, type Cast } from './10-accounts';
-import { abstractFor, courses, talkTitles } from './pools';
+import { abstractFor, courses, talkTitles, type CourseSeed } from './pools';
 
 const msc = ['05C15', '52C23', '57K10', '11H06', '52B20', '05A05', '06A07', '52C17', '05E14', '11P21'];
 const text = (n: number) => ({ title: talkTitles[n % talkTitles.length] as string, abstract: abstractFor(n), coAuthors: [], msc: [msc[n % msc.length] as string, msc[(n + 3) % msc.length] as string], references: [], needs: n % 3 === 0 ? (['projector'] as const).slice() : [] });
@@ -22,6 +22,17 @@ async function talk(event: EventDetail, kind: 'plenary' | 'invited' | 'contribut
   return made.id;
 }
 
+/** Titles with mathematics and abstracts; the last lecture of every third course is still without one. */
+async function writeLectures(event: EventDetail, course: CourseSeed, lectures: { talkId: string; number: number }[]): Promise<void> {
+  for (const { talkId, number } of lectures) {
+    const { version } = await readTalk(systemActor, event.id, talkId);
+    const n = course.letter.charCodeAt(0) + number;
+    const title = course.lectures[number - 1] as string;
+    const saved = await saveAbstract(systemActor, event.id, talkId, version, { title, abstract: abstractFor(n), coAuthors: [], msc: [course.msc], references: [], needs: [] });
+    if (number < lectures.length || n % 3 !== 0) await handInAbstract(systemActor, event.id, talkId, saved.version);
+  }
+}
+
 const blank = { courseId: null, number: null, exerciseOf: null };
 
 /** Courses, exercises, invited and contributed talks of the school, in every state. */
@@ -29,11 +40,12 @@ export async function seedSchoolTalks(cast: Cast, event: EventDetail): Promise<v
   const { crowd } = cast;
   for (const [index, course] of courses.entries()) {
     const tutor = crowd[20 + index] as PersonView;
-    await createCourse(systemActor, event.id, {
+    const made = await createCourse(systemActor, event.id, {
       letter: course.letter, title: course.title, shortTitle: course.shortTitle, minNights: 1, maxPerDay: 1, lectures: course.lectures.length, minutes: 50, exerciseMinutes: index < 4 ? 90 : null,
       lecturers: [{ accountId: (crowd[index] as PersonView).id, part: 'speaker' }],
       tutors: [{ accountId: tutor.id, part: 'tutor' }],
     });
+    await writeLectures(event, course, made.lectures);
     const arrive = addDays(event.startsOn, -1);
     await savePresence({ ...as(crowd[index] as PersonView) }, event.id, undefined, { arrivesAt: `${arrive}T17:20`, leavesAt: `${addDays(event.startsOn, index === 1 ? 3 : 11)}T${index === 1 ? '10:20' : '16:00'}`, blocked: [], wishes: index === 1 ? 'Mornings' : '' });
   }

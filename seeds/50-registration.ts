@@ -8,7 +8,7 @@ import { changeEventState } from '@server/features/events/events.service';
 import { PaymentRow } from '@server/features/finance/finance.model';
 import { bookCardPayment, feeTableOf, orderOf } from '@server/features/finance/finance.service';
 import { applyForPlace, decideApplication, listApplications, withdrawApplication } from '@server/features/registration/registration-applications.service';
-import { checkIn } from '@server/features/registration/registration-office.service';
+import { checkIn, markAbsent } from '@server/features/registration/registration-office.service';
 import { cancelRegistration, register, registrationOf } from '@server/features/registration/registration.service';
 import { as, type Cast } from './10-accounts';
 
@@ -65,9 +65,23 @@ export async function seedRegistrations(cast: Cast, events: { school: EventDetai
   await seedApplications(cast, school, now, scale);
   await runJobs();
   await arrive(conference, now, crowd.slice(0, 40 * scale));
+  await arrive(workshop, ago(60), Array.from({ length: 27 * scale }, (_, n) => crowd[(100 + n) % crowd.length] as PersonView));
   await changeEventState(systemActor, conference.slug, 'running', undefined, now);
   await changeEventState(systemActor, workshop.slug, 'running', undefined, now);
   await changeEventState(systemActor, workshop.slug, 'finished', undefined, now);
+  await markAbsent(systemActor, workshop.id);
+  await fail(conference.id, crowd[5] as PersonView);
+}
+
+/** One card was declined: the order waits for another card. */
+async function fail(eventId: string, person: PersonView): Promise<void> {
+  await transaction(async () => {
+    const registration = await registrationOf(eventId, person.id);
+    const order = registration && (await orderOf(registration.id));
+    if (!order || order.state !== 'placed') return;
+    await PaymentRow.create({ id: newId(), orderId: order.id, provider: 'stripe', providerId: `demo_declined_${order.id}`, amountMinor: order.totalMinor, currency: order.currency, state: 'failed' });
+    await order.update({ lastFailure: 'The card has not enough money.' });
+  });
 }
 
 async function seedApplications(cast: Cast, school: EventDetail, now: Date, scale: number): Promise<void> {

@@ -7,6 +7,7 @@ import { runDueJobs } from '@server/jobs/worker';
 import { introduceScopes } from '@server/routes';
 import { seedAccounts } from './10-accounts';
 import { demoDates, seedEvents } from './20-events';
+import { seedMoreEvents } from './25-more-events';
 import { seedConferenceTalks, seedSchoolTalks, seedWorkshopTalks } from './30-talks';
 import { seedProgramme } from './40-programme';
 import { seedRegistrations } from './50-registration';
@@ -21,6 +22,7 @@ export async function seedDemo({ scale = 1, now = new Date() }: { scale?: number
   introduceScopes();
   const cast = await seedAccounts(scale);
   const events = await seedEvents(cast, demoDates(now), scale);
+  await seedMoreEvents(cast, demoDates(now), now);
   await seedSchoolTalks(cast, events.school);
   await seedConferenceTalks(cast, events.conference, scale);
   await seedWorkshopTalks(cast, events.workshop);

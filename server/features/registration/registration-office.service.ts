@@ -138,6 +138,20 @@ export async function checkIn(actor: Actor, eventId: string, id: string, present
   return presentDesk(row, people.get(row.accountId));
 }
 
+/** After the end: whoever registered and was never checked in counts as absent. Returns how many. @throws 409 before. */
+export async function markAbsent(actor: Actor, eventId: string): Promise<number> {
+  const event = await eventById(eventId);
+  if (event.state !== 'finished' && event.state !== 'archived') throw conflict('registration.step', 'The event is not over yet.');
+  return transaction(async () => {
+    const rows = await RegistrationRow.findAll({ where: { eventId, state: 'registered' } });
+    for (const row of rows) {
+      await row.update({ state: 'absent' });
+      await recordAudit({ actor, action: 'registration.absent', subject: 'registration', subjectId: row.id, eventId });
+    }
+    return rows.length;
+  });
+}
+
 /** Events for which a person has registered or applied. */
 export async function registrationsOfPerson(accountId: string) {
   const rows = await RegistrationRow.findAll({ where: { accountId, state: { [Op.ne]: 'cancelled' } } });
