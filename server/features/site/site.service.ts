@@ -54,13 +54,15 @@ async function registrationFor(event: EventRow, dates: Deadlines, now: Date): Pr
     open: closed === null,
     admission: event.admission,
     closedBecause: closed,
-    feeRule: feeRule({ categories: fees.categories, currency: fees.currency, town: event.town, today, capacity: places.capacity, free: places.free }),
+    feeRule: isOver(event) ? [] : feeRule({ categories: fees.categories, currency: fees.currency, town: event.town, today, capacity: places.capacity, free: places.free }),
     currency: fees.currency,
     feeNow: amounts.length > 0 ? { leastMinor: Math.min(...amounts), mostMinor: Math.max(...amounts) } : null,
     capacity: places.capacity,
     free: places.free,
   };
 }
+
+const isOver = (event: EventRow): boolean => event.state === 'finished' || event.state === 'archived';
 
 const applicationsClosed = (event: EventRow, dueAt: string | null, now: Date): string | null =>
   event.admission === 'application' && dueAt !== null && now.toISOString() > dueAt ? 'Applications are closed. Whoever has an offer can register.' : null;

@@ -65,6 +65,11 @@ function RegisterAction({ event }: { event: PublicEvent }) {
           {admission === 'application' ? 'Apply' : 'Register'}
         </LinkButton>
       )}
+      {!open && admission === 'application' && event.state === 'open' && (
+        <LinkButton sizing="large" to={`/events/${event.slug}/register`}>
+          Register with an offer
+        </LinkButton>
+      )}
       <div className="text-[15px] leading-5">
         {closedBecause && <p className="m-0 font-semibold">{closedBecause}</p>}
         <p className="m-0 font-semibold">{first}</p>
@@ -75,7 +80,12 @@ function RegisterAction({ event }: { event: PublicEvent }) {
 }
 
 function Courses({ event }: { event: PublicEvent }) {
-  if (event.courses.length === 0) return <section className="max-xl:hidden">{<AboutPlace event={event} />}</section>;
+  if (event.courses.length === 0)
+    return (
+      <section className="max-xl:col-span-full">
+        <AboutPlace event={event} />
+      </section>
+    );
   return (
     <section className="max-xl:col-span-full">
       <h2 className="m-0 mb-2 text-form font-semibold">Lecture courses</h2>
@@ -103,7 +113,7 @@ function AboutPlace({ event }: { event: PublicEvent }) {
       <p className="my-2 font-serif text-abstract">
         {event.venue}, {event.town}
       </p>
-      <Paragraphs text={event.practical} className="my-2 font-serif text-abstract" />
+      <Paragraphs text={event.travel} className="my-2 font-serif text-abstract" />
     </>
   );
 }
@@ -141,7 +151,7 @@ function OneDay({ event }: { event: PublicEvent }) {
 function Practical({ event }: { event: PublicEvent }) {
   const items: [string, string][] = [
     ['Practical matters', event.practical],
-    ['Getting here', event.travel],
+    ['Getting here', event.courses.length > 0 ? event.travel : ''],
     ['Safeguarding', event.safeguarding],
   ];
   return (

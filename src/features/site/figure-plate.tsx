@@ -59,7 +59,7 @@ function Lattice() {
       {points
         .filter(([x, y]) => x * y < 60)
         .map(([x, y]) => (
-          <line key={`${x}/${y}`} x1={left} y1={bottom} x2={left + x * size} y2={bottom - y * size} stroke={TINT} strokeWidth="0.8" />
+          <line key={`${x}/${y}`} x1={left} y1={bottom} x2={left + x * size} y2={bottom - y * size} stroke="#32433C" strokeWidth="0.8" />
         ))}
       {points.map(([x, y]) => (
         <circle key={`${x},${y}`} cx={left + x * size} cy={bottom - y * size} r="2" fill={CHALK} />
