@@ -33,7 +33,7 @@ function Mine({ mine }: { mine: MyGrant }) {
       <p className="text-ink3"><Link to={`/events/${mine.eventSlug}`}>{mine.eventTitle}</Link>, {formatDateSpan(mine.startsOn, mine.endsOn)}</p>
       <h1 className="mt-1 mb-3 font-serif text-page max-sm:text-[26px]">Travel grant{application && <span className="ml-3 text-[18px] text-ink3">{application.reference}</span>}</h1>
       {decision ? <GrantDecision mine={mine} decision={decision} /> : <Dates mine={mine} />}
-      {writes && <GrantForm key={application?.state ?? 'new'} mine={mine} />}
+      {writes && <GrantForm key={application?.state ?? 'draft'} mine={mine} />}
       {!writes && application && application.state !== 'withdrawn' && <GrantSummary mine={mine} />}
       {mine.can.withdraw && application?.state === 'submitted' && <Withdraw mine={mine} />}
       {(writes || application?.state === 'submitted') && <DataNote />}
