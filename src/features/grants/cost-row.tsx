@@ -27,7 +27,7 @@ export function CostRow({ kind, mine, fields, errors, onChange, beforeUpload }: 
   const covered = mine.coveredKinds.length === 0 || mine.coveredKinds.includes(kind);
   if (!covered) return <p className="border-t border-rule py-3 text-ink3">{name}: no fund of this event pays it.</p>;
   return (
-    <div role="group" aria-label={name} className="border-t border-rule py-3">
+    <div role="group" aria-label={`${name}, with documents`} className="border-t border-rule py-3">
       <div className="grid grid-cols-[140px_88px_1fr] items-start gap-3 max-sm:grid-cols-2">
         <Input label={name} inputMode="decimal" value={fields.amount} onChange={(event) => onChange({ amount: event.target.value })} error={errors[`${kind}.amount`]} />
         {countedIn[kind] ? <Input label={countedIn[kind]} inputMode="numeric" value={fields.quantity} onChange={(event) => onChange({ quantity: event.target.value })} error={errors[`${kind}.quantity`]} /> : <span />}
@@ -64,7 +64,7 @@ function Documents({ kind, mine, beforeUpload }: Pick<Props, 'kind' | 'mine' | '
           <Button variant="link" busy={remove.isPending} aria-label={`Remove ${file.fileName}`} onClick={() => remove.mutate(file.id, { onError: sayFailure })}>Remove</Button>
         </p>
       ))}
-      <input ref={picker} id={id} type="file" accept=".pdf,.png,.jpg,.jpeg" className="sr-only" tabIndex={-1} aria-label={`Document for ${costKindNames[kind].toLowerCase()}`} aria-describedby={error ? `${id}-error` : undefined} onChange={(event) => { const [file] = event.target.files ?? []; if (file) void upload(file); event.target.value = ''; }} />
+      <input ref={picker} id={id} type="file" accept=".pdf,.png,.jpg,.jpeg" className="sr-only" tabIndex={-1} aria-label={`${costKindNames[kind]}: file`} aria-describedby={error ? `${id}-error` : undefined} onChange={(event) => { const [file] = event.target.files ?? []; if (file) void upload(file); event.target.value = ''; }} />
       <Button variant="link" disabled={share !== undefined} onClick={() => picker.current?.click()} aria-label={`Add a document for ${costKindNames[kind].toLowerCase()}`}>Add a document…</Button>
       <span className="ml-2 text-ink3">{share !== undefined ? `${Math.round(share * 100)} % sent` : 'PDF, PNG or JPEG, at most 10 MB'}</span>
       {error && <p id={`${id}-error`} role="alert" className="font-semibold text-alarm">{error}</p>}

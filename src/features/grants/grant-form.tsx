@@ -17,9 +17,11 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
   const [fields, setFields] = useState(() => fieldsOf(mine));
   const [errors, setErrors] = useState<Record<string, string>>({});
   const saved = useRef(JSON.stringify(inputOf(fieldsOf(mine), mine.currency).input));
+  const version = useRef(mine.version);
+  const queue = useRef<Promise<number | undefined>>(Promise.resolve(undefined));
   const save = useSaveMyGrant(mine.eventSlug);
   const submit = useSubmitMyGrant(mine.eventSlug);
-  const busy = save.isPending || submit.isPending;
+  // Not while a draft is being saved: leaving a field by pressing a button starts a save, and the press must count.
   const set = (change: Partial<GrantFields>) => setFields({ ...fields, ...change });
   const setCost = (kind: CostKind) => (change: Partial<CostFields>) => set({ costs: { ...fields.costs, [kind]: { ...fields.costs[kind], ...change } } });
   const { input, order, errors: unread } = inputOf(fields, mine.currency);
@@ -29,15 +31,15 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
     setErrors(found);
     if (Object.keys(found).length === 0) sayFailure(error);
   };
-  /** Version after the save, or undefined when it did not work. */
-  const store = async (): Promise<number | undefined> => {
+  const saveNow = async (): Promise<number | undefined> => {
     if (Object.keys(unread).length > 0) {
       setErrors(unread);
       return undefined;
     }
-    if (mine.version > 0 && JSON.stringify(input) === saved.current && mine.application?.state === 'draft') return mine.version;
+    if (version.current > 0 && JSON.stringify(input) === saved.current && mine.application?.state !== 'withdrawn') return version.current;
     try {
-      const now = await save.mutateAsync({ version: mine.version, body: input });
+      const now = await save.mutateAsync({ version: version.current, body: input });
+      version.current = now.version;
       saved.current = JSON.stringify(input);
       setErrors({});
       return now.version;
@@ -46,12 +48,18 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
       return undefined;
     }
   };
+  /** Version after the save, or undefined when it did not work. Leaving a field and pressing a button happen at once: one save after the other. */
+  const store = (): Promise<number | undefined> => {
+    const next = queue.current.then(saveNow);
+    queue.current = next;
+    return next;
+  };
   const handIn = async () => {
-    const version = await store();
-    if (version !== undefined) submit.mutate({ version }, { onSuccess: () => { toast('Your grant application is handed in.'); window.scrollTo({ top: 0 }); }, onError: failed });
+    const stored = await store();
+    if (stored !== undefined) submit.mutate({ version: stored }, { onSuccess: () => { toast('Your grant application is handed in.'); window.scrollTo({ top: 0 }); }, onError: failed });
   };
   const leave = () => {
-    if (!busy && JSON.stringify(input) !== saved.current) void store();
+    if (JSON.stringify(input) !== saved.current) void store();
   };
 
   return (
@@ -84,8 +92,8 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
         <Note kind={errors.country || errors.careerStage ? 'must' : 'wish'}>Funds ask for the country of your institution and your career stage. <Link to="/profile">Complete your profile</Link>, then hand in.</Note>
       )}
       <div className="flex flex-wrap items-center gap-3">
-        <Button type="submit" variant="primary" sizing="form" className="max-sm:w-full" busy={busy}>Hand in the application</Button>
-        <Button sizing="form" className="max-sm:w-full" disabled={busy} onClick={() => void store().then((version) => version !== undefined && toast('Draft saved.'))}>Save the draft</Button>
+        <Button type="submit" variant="primary" sizing="form" className="max-sm:w-full" busy={submit.isPending}>Hand in the application</Button>
+        <Button sizing="form" className="max-sm:w-full" disabled={submit.isPending} onClick={() => void store().then((stored) => stored !== undefined && toast('Draft saved.'))}>Save the draft</Button>
         <p aria-live="polite" className="text-dense text-ink3">{save.isPending ? 'Saving …' : mine.application ? `Saved ${ownTime(mine.application.savedAt)}` : 'Not saved yet'}</p>
       </div>
     </form>
