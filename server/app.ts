@@ -5,6 +5,7 @@ import compression from 'compression';
 import express, { Router, type Express } from 'express';
 import helmet from 'helmet';
 import './db/models';
+import { compressedAssets } from './client';
 import { env } from './env';
 import { actorOf } from './features/accounts/accounts-session.service';
 import { stripeWebhookRouter } from './features/finance/finance-webhook.routes';
@@ -81,6 +82,7 @@ export function buildApp({ clientDir, devClient }: AppParts): Express {
 function serveClient(app: Express, folder: string): void {
   app.use(
     '/assets',
+    compressedAssets(path.join(folder, 'assets')),
     express.static(path.join(folder, 'assets'), { immutable: true, maxAge: '1y', fallthrough: false, index: false }),
   );
   app.use(express.static(folder, { index: false, maxAge: '1h' }));

@@ -4,6 +4,8 @@ import { readFile, readdir, stat, writeFile } from 'node:fs/promises';
 import type { Server } from 'node:http';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
+import { promisify } from 'node:util';
+import { brotliCompress, constants, gzip } from 'node:zlib';
 import type { RequestHandler } from 'express';
 
 const root = path.resolve(path.dirname(fileURLToPath(import.meta.url)), '..');
@@ -24,12 +26,37 @@ export async function ensureClient(): Promise<void> {
   } finally {
     process.env.NODE_ENV = before;
   }
+  await compressAssets();
   await writeFile(stamp, sources);
+}
+
+/** Script and style sheets once, as small as they get: the server then only sends them. */
+async function compressAssets(): Promise<void> {
+  for (const file of (await filesBelow(path.join(clientDir, 'assets'))).filter((name) => /\.(js|css|svg)$/.test(name))) {
+    const plain = await readFile(file);
+    const quality = { params: { [constants.BROTLI_PARAM_QUALITY]: 11, [constants.BROTLI_PARAM_SIZE_HINT]: plain.length } };
+    await writeFile(`${file}.br`, await promisify(brotliCompress)(plain, quality));
+    await writeFile(`${file}.gz`, await promisify(gzip)(plain, { level: 9 }));
+  }
+}
+
+/** Sends the compressed copy of an asset that the browser takes; else the next handler sends it plain. */
+export function compressedAssets(folder: string): RequestHandler {
+  return (req, res, next) => {
+    const encoding = req.acceptsEncodings(['br', 'gzip']);
+    const name = /^\/([\w.-]+\.(?:js|css|svg))$/.exec(req.path)?.[1];
+    const file = name && encoding && path.join(folder, `${name}.${encoding === 'br' ? 'br' : 'gz'}`);
+    if (!file || !existsSync(file)) return next();
+    res.setHeader('Content-Encoding', encoding);
+    res.setHeader('Vary', 'Accept-Encoding');
+    res.type(path.extname(name));
+    res.sendFile(file, { immutable: true, maxAge: '1y' });
+  };
 }
 
 /** Names, sizes and times of everything that the build reads. */
 async function fingerprint(): Promise<string> {
-  const hash = createHash('sha256').update('production\n');
+  const hash = createHash('sha256').update('production, compressed\n');
   for (const place of ['src', 'shared', 'index.html', 'vite.config.ts', 'package-lock.json']) {
     for (const file of await filesBelow(path.join(root, place))) {
       const { size, mtimeMs } = await stat(file);

@@ -4,42 +4,10 @@ import { holds, sessionQuery, useAccount } from '@/features/accounts/accounts.qu
 import { eventQuery } from '@/features/events/events.queries';
 import { Wordmark } from '@/components/mark';
 import { ErrorState, Loading } from '@/components/states';
-import { EventNav } from './event-nav';
 import { EventSwitcher } from './event-switcher';
 import { PersonMenu } from './person-menu';
 import { RunUp } from './run-up';
-
-function SkipLink() {
-  return (
-    <a href="#work" className="skip">
-      To the content
-    </a>
-  );
-}
-
-/** Public pages: the institute's name, no workspace. */
-export function PublicLayout() {
-  const session = useQuery(sessionQuery).data;
-  return (
-    <div className="flex min-h-dvh flex-col bg-sheet text-form">
-      <SkipLink />
-      <header className="flex min-h-[56px] flex-wrap items-center gap-x-8 border-b border-rule px-12 max-md:px-4">
-        <Link to="/" className="quiet font-serif text-[16px] font-semibold text-ink">
-          {session?.instituteName ?? 'Analemma'}
-        </Link>
-        <EventNav />
-        <div className="ml-auto">{session?.account ? <PersonMenu /> : <Link to="/sign-in">Sign in</Link>}</div>
-      </header>
-      <main id="work" className="grow">
-        <Outlet />
-      </main>
-      <footer className="flex items-center gap-3 border-t border-rule bg-paper px-12 py-3 text-ui text-ink3 max-md:px-4">
-        <span>Set with</span>
-        <Wordmark height={18} />
-      </footer>
-    </div>
-  );
-}
+import { SkipLink } from './skip-link';
 
 /** Sends strangers to the sign-in page and back afterwards. */
 function SignedIn({ children }: { children: React.ReactNode }) {

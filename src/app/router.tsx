@@ -8,7 +8,7 @@ const Fallback = () => <Loading what="the page" />;
 
 const layout = (name: 'PublicLayout' | 'PersonLayout' | 'WorkspaceLayout' | 'OfficeLayout', children: RouteObject[], path?: string): RouteObject => ({
   path,
-  lazy: async () => ({ Component: (await import('./frames'))[name] }),
+  lazy: async () => ({ Component: name === 'PublicLayout' ? (await import('./public-frame')).PublicLayout : (await import('./frames'))[name] }),
   HydrateFallback: Fallback,
   children,
 });
