@@ -12,7 +12,7 @@ export function BoardTable({ board, rows, chosen, onChoose }: { board: GrantBoar
   const columns = 7 + kinds.length + Math.max(1, funds.length);
   return (
     <div className="overflow-x-auto" tabIndex={-1}>
-      <table className="ruled row-heads text-dense whitespace-nowrap [&_td]:!py-[3px] [&_th]:!py-[3px]">
+      <table className="ruled row-heads text-dense whitespace-nowrap [&_:is(td,th)]:!pr-2 [&_tbody_:is(td,th)]:!py-0 [&_tbody_:is(td,th)]:align-middle [&_tbody_:is(td,th)]:h-6">
         <caption className="sr-only">Grant applications by rank; sums in {currency}</caption>
         <thead>
           <tr>
@@ -61,7 +61,7 @@ function Row({ row, board, kinds, columns, chosen, onChoose }: { row: BoardRow; 
       <tr className={`${row.reason ? '[&>*]:!border-b-0' : ''} ${chosen ? 'bg-actwash' : ''}`}>
         <td className="num">{row.rank ?? '·'}</td>
         <th scope="row">
-          <button type="button" className="min-h-[24px] max-w-[320px] truncate text-left font-semibold text-ink hover:underline" onClick={() => onChoose(row.id)}>
+          <button type="button" className="min-h-[24px] max-w-[300px] truncate text-left font-semibold text-ink hover:underline" onClick={() => onChoose(row.id)}>
             {person.printedName} <span className="font-normal text-ink3">{person.affiliation}</span>
           </button>
         </th>
@@ -77,7 +77,7 @@ function Row({ row, board, kinds, columns, chosen, onChoose }: { row: BoardRow; 
       {row.reason && (
         <tr className={chosen ? 'bg-actwash' : ''}>
           <td />
-          <td colSpan={columns - 1} className="whitespace-normal"><b className="text-alarm">Not funded.</b> {row.reason}</td>
+          <td colSpan={columns - 1} className="!pb-1 whitespace-normal"><b className="text-alarm">Not funded.</b> {row.reason}</td>
         </tr>
       )}
     </>

@@ -44,7 +44,7 @@ function Mine({ mine }: { mine: MyGrant }) {
 /** The date in the institute's zone, then the reader's own time; or why nothing can be handed in. */
 function Dates({ mine }: { mine: MyGrant }) {
   const { application, dueAt, timeZone } = mine;
-  if (application?.state === 'submitted') return <Note kind="good">Handed in on {application.submittedAt && formatInstant(application.submittedAt, timeZone)} ({timeZone}). The committee decides and writes to you. To change something, withdraw the application, change it, and hand it in again before the date.</Note>;
+  if (application?.state === 'submitted') return <Note kind="good">Handed in on {application.submittedAt && formatInstant(application.submittedAt, timeZone)} ({timeZone}). The committee decides and writes to you. To change something, withdraw the application, change it, and hand it in again{dueAt ? ' before the date' : ''}.</Note>;
   if (mine.closedBecause) {
     return (
       <div className="grid gap-3">

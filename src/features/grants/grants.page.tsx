@@ -64,7 +64,7 @@ function Board({ event, board }: { event: string; board: GrantBoard }) {
           )}
           {board.can.propose && board.notYet && <p className="mt-3 text-dense text-ink3">{board.notYet}</p>}
         </section>
-        <aside aria-label={chosen ? 'Chosen application' : 'Funds'} className="border-rule bg-paper px-5 py-4 max-xl:border-t xl:border-l">
+        <aside aria-label={chosen ? 'Chosen application' : 'Funds'} className={`border-rule bg-paper px-5 py-4 max-xl:border-t xl:border-l ${chosen ? 'max-xl:order-first' : ''}`}>
           {chosen && <GrantPanel key={chosen.id} event={event} board={board} application={chosen.id} onClose={() => set('application', null)} />}
           <FundList funds={funds} onEdit={setEditing} />
         </aside>
