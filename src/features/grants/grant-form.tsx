@@ -81,7 +81,7 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
         <p className="mt-3 flex justify-between border-t border-ink pt-2 font-semibold"><span>Together</span><span>{formatGrant(sumOf(input.items), mine.currency)}</span></p>
         {errors.items && <p role="alert" className="font-semibold text-alarm">{errors.items}</p>}
       </fieldset>
-      <Input className="max-w-[240px]" label={`The least sum with which you can come, ${mine.currency}`} optional inputMode="decimal" hint="Empty when anything helps. Below it, no grant is proposed to you." value={fields.least} onChange={(event) => set({ least: event.target.value })} error={errors.least} />
+      <Input className="max-w-[240px]" label={`The least sum with which you can come, ${mine.currency}`} optional inputMode="decimal" hint="Empty when anything helps. The committee sees it when it proposes a sum." value={fields.least} onChange={(event) => set({ least: event.target.value })} error={errors.least} />
       <Textarea label="Why this event, and why a grant" rows={7} maxLength={4000} hint={`${fields.motivation.length} of 4,000 characters`} value={fields.motivation} onChange={(event) => set({ motivation: event.target.value })} error={errors.motivation} />
       {mine.talks.length > 0 && <Select label="The talk that you give" optional placeholder="None" options={mine.talks.map((talk) => ({ value: talk.id, label: talk.title }))} value={fields.talkId} onChange={(event) => set({ talkId: event.target.value })} error={errors.talkId} />}
       <div className="grid gap-1">
