@@ -40,7 +40,7 @@ export function Component() {
                   { key: 'name', head: 'Name', cell: (row) => <><b className="font-semibold">{row.printedName}</b> <span className="text-ink3">{row.affiliation}</span></> },
                   { key: 'role', head: 'Role', cell: (row) => roleNames[row.role] },
                   { key: 'email', head: 'E-mail', cell: (row) => row.email },
-                  { key: 'end', head: '', cell: (row) => <Button variant="link" aria-label={`End ${roleNames[row.role]} of ${row.printedName}`} onClick={() => end.mutate({ account: row.accountId, grant: row.grantId }, { onSuccess: () => toast(`${row.printedName} is no longer ${roleNames[row.role].toLowerCase()}.`), onError: sayFailure })}>End the role</Button> },
+                  { key: 'end', head: <span className="sr-only">End a role</span>, cell: (row) => <Button variant="link" aria-label={`End ${roleNames[row.role]} of ${row.printedName}`} onClick={() => end.mutate({ account: row.accountId, grant: row.grantId }, { onSuccess: () => toast(`${row.printedName} is no longer ${roleNames[row.role].toLowerCase()}.`), onError: sayFailure })}>End the role</Button> },
                 ]}
               />
             )

@@ -12,6 +12,7 @@ import { DayProgramme } from './day-programme';
 import { EventDates } from './event-dates';
 import { FigurePlate } from './figure-plate';
 import { Paragraphs } from './paragraphs';
+import { PublicView } from './public-view';
 import { publicEventQuery } from './site.queries';
 
 /** The public page of an event. */
@@ -19,7 +20,7 @@ export function Component() {
   const { event: slug = '' } = useParams();
   const query = useQuery(publicEventQuery(slug));
   return (
-    <QueryView query={query} what="the event">
+    <PublicView query={query} what="the event">
       {(event) => (
         <>
           <PageTitle text={event.title} />
@@ -35,7 +36,7 @@ export function Component() {
           <Practical event={event} />
         </>
       )}
-    </QueryView>
+    </PublicView>
   );
 }
 

@@ -2,7 +2,8 @@ import { useQuery } from '@tanstack/react-query';
 import { Link, useParams } from 'react-router-dom';
 import { PageTitle } from '@/lib/page-title';
 import { MathLine } from '@/components/math-text';
-import { EmptyState, QueryView } from '@/components/states';
+import { EmptyState } from '@/components/states';
+import { PublicView } from './public-view';
 import { publicPeopleQuery } from './site.queries';
 
 /** Everybody with a part in the published programme. */
@@ -11,7 +12,7 @@ export function Component() {
   const query = useQuery(publicPeopleQuery(slug));
   return (
     <div className="px-12 py-8 max-md:px-4">
-      <QueryView query={query} what="the people">
+      <PublicView query={query} what="the people">
         {({ event, items }) => (
           <>
             <PageTitle text={`People: ${event.title}`} />
@@ -49,7 +50,7 @@ export function Component() {
             )}
           </>
         )}
-      </QueryView>
+      </PublicView>
     </div>
   );
 }

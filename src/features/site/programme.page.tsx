@@ -10,6 +10,7 @@ import { EmptyState, QueryView } from '@/components/states';
 import { programmeOf } from '@/features/programme/programme.queries';
 import { ownZone } from '@/lib/format';
 import { DayProgramme } from './day-programme';
+import { PublicView } from './public-view';
 import { publicEventQuery } from './site.queries';
 
 /** The published programme by day and room, in the event's time or the reader's. */
@@ -19,13 +20,13 @@ export function Component() {
   const programme = useQuery(programmeOf(slug));
   return (
     <div className="px-12 py-8 max-md:px-4">
-      <QueryView query={event} what="the event">
+      <PublicView query={event} what="the event">
         {(shown) => (
           <QueryView query={programme} what="the programme">
             {(published) => <Programme event={shown} programme={published} />}
           </QueryView>
         )}
-      </QueryView>
+      </PublicView>
     </div>
   );
 }

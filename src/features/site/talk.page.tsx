@@ -5,8 +5,8 @@ import { formatSpan } from '@shared/lib/time';
 import { PageTitle } from '@/lib/page-title';
 import { KindTag } from '@/components/kind-tag';
 import { MathLine, MathText } from '@/components/math-text';
-import { QueryView } from '@/components/states';
 import { plainLatex } from '@shared/lib/latex';
+import { PublicView } from './public-view';
 import { publicTalkQuery } from './site.queries';
 
 const partWords = { speaker: '', chair: 'chair', tutor: 'exercises' } as const;
@@ -17,9 +17,9 @@ export function Component() {
   const query = useQuery(publicTalkQuery(event, talk));
   return (
     <article className="max-w-[780px] px-12 py-8 max-md:px-4">
-      <QueryView query={query} what="the talk">
+      <PublicView query={query} what="the talk">
         {(shown) => <Talk talk={shown} />}
-      </QueryView>
+      </PublicView>
     </article>
   );
 }

@@ -38,6 +38,7 @@ export function Component() {
 function Spent({ error }: { error: unknown }) {
   return (
     <>
+      <h1 className="m-0 mb-4 font-serif text-page font-medium">Invitation</h1>
       <ErrorState error={error} what="This invitation can’t be opened." />
       <p className="mt-4">
         If you have answered it, your talk is under <Link to="/home">your own pages</Link>.
