@@ -43,7 +43,8 @@ async function compressAssets(): Promise<void> {
 /** Sends the compressed copy of an asset that the browser takes; else the next handler sends it plain. */
 export function compressedAssets(folder: string): RequestHandler {
   return (req, res, next) => {
-    const encoding = req.acceptsEncodings(['br', 'gzip']);
+    // Asked one by one: of equals the negotiation would take the one that the browser names first, the larger one.
+    const encoding = req.acceptsEncodings('br') || req.acceptsEncodings('gzip');
     const name = /^\/([\w.-]+\.(?:js|css|svg))$/.exec(req.path)?.[1];
     const file = name && encoding && path.join(folder, `${name}.${encoding === 'br' ? 'br' : 'gz'}`);
     if (!file || !existsSync(file)) return next();
