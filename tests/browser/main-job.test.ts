@@ -60,6 +60,11 @@ afterAll(async () => {
 const speaker = { email: 'yuko@example.org', password: 'kites above the fjord' };
 let talkId = '';
 let speakerPage: Page;
+let participantPage: Page;
+let funderPage: Page;
+
+interface Board { rows: { id: string; person: object | null; awards: { state: string }[] }[]; funds: { id: string }[] }
+const board = async (): Promise<Board> => (await (await office.request.get(`${demo.url}/api/events/${slug}/grant-applications`)).json()) as Board;
 
 /** FullCalendar's column of a room on the lens day, at a minute of the day. */
 async function pointAt(page: Page, column: number, minute: number): Promise<{ x: number; y: number }> {
@@ -203,7 +208,62 @@ describe('the main job, from a list of names to a paid place', () => {
     await page.getByRole('heading', { name: 'You are registered and paid.' }).waitFor();
     const receipt = await mailWhen(accountOf('participant').email, (mail) => mail.subject === 'Registered: Quandle Days');
     expect(receipt.text).toContain('120.50 EUR');
-    await page.context().close();
+    participantPage = page;
+  });
+
+  it('the office opens a fund and invites its funder', async () => {
+    await office.goto(`${demo.url}/organise/${slug}/grants`);
+    await office.getByRole('button', { name: 'Add a fund…' }).click();
+    const dialog = office.getByRole('dialog');
+    await dialog.getByLabel('Name', { exact: true }).fill('Lakeside Bequest');
+    await dialog.getByLabel('Given by').fill('Lakeside Trust');
+    await dialog.getByLabel(/^Budget/).fill('1000');
+    await dialog.getByRole('checkbox', { name: 'Travel', exact: true }).check();
+    await dialog.getByRole('button', { name: 'Save the fund' }).click();
+    await office.getByText('Fund saved.').waitFor();
+    await office.getByRole('button', { name: 'Invite a funder to fund A' }).click();
+    await office.getByRole('dialog').getByLabel('E-mail').fill(accountOf('funder').email);
+    await office.getByRole('dialog').getByLabel('Given name').fill('Ragnhild');
+    await office.getByRole('dialog').getByLabel('Family name').fill('Halvardsen');
+    await office.getByRole('button', { name: 'Send the invitation' }).click();
+    const letter = await mailWhen(accountOf('funder').email, (mail) => mail.subject.includes('Lakeside Bequest'));
+    funderPage = await signIn('funder');
+    await funderPage.goto(/http:\/\/\S+\/invitation\/[\w-]+/.exec(letter.text)?.[0] ?? '');
+    await funderPage.getByRole('button', { name: 'Take the invitation' }).click();
+    await funderPage.waitForURL('**/home');
+  });
+
+  it('the participant asks for a grant, the organiser scores and proposes, the funder approves, the decision is accepted', async () => {
+    await participantPage.getByRole('link', { name: 'Ask for a travel grant' }).click();
+    await participantPage.getByRole('group', { name: 'Travel' }).getByLabel('Travel', { exact: true }).fill('480');
+    await participantPage.getByLabel('Why this event, and why a grant').fill('I work on quandles of surfaces, and my institute has no money for the journey this year.');
+    await participantPage.getByRole('button', { name: 'Hand in the application' }).click();
+    await expect.poll(async () => (await board()).rows.filter((row) => row.person).length, { timeout: 10_000 }).toBe(1);
+    await office.goto(`${demo.url}/organise/${slug}/grants?application=${(await board()).rows[0]?.id ?? ''}`);
+    await office.getByLabel('Your score').selectOption('9');
+    await office.getByRole('button', { name: 'Save your score' }).click();
+    await expect.poll(async () => JSON.stringify((await board()).rows[0])).toContain('"score":9');
+    await office.getByRole('button', { name: 'Fill in the request' }).click();
+    await office.getByLabel('Travel, EUR').waitFor();
+    expect(await office.getByLabel('Travel, EUR').inputValue()).toMatch(/^480/);
+    await office.getByRole('button', { name: 'Propose from fund A' }).click();
+    await office.getByText('Proposed, 480 EUR').waitFor();
+    const fund = (await board()).funds[0]?.id ?? '';
+    await funderPage.goto(`${demo.url}/funds/${fund}`);
+    await funderPage.getByText('480').first().waitFor();
+    expect(await funderPage.locator('main').innerText()).not.toContain('Kvaratskheli');
+    await funderPage.getByRole('button', { name: /^Approve(?! the)/ }).first().click();
+    await funderPage.getByText('Approved').first().waitFor();
+    await office.reload();
+    await office.getByRole('button', { name: 'Send the decisions…' }).click();
+    await office.getByLabel('Accept by').fill(addDays(today, 10));
+    await office.getByRole('dialog').getByRole('button', { name: /^Send 1 letter/ }).click();
+    const decision = await mailWhen(accountOf('participant').email, (mail) => mail.text.includes('Lakeside Bequest'));
+    expect(decision.text).toContain('480');
+    await participantPage.goto(`${demo.url}/events/${slug}/grant`);
+    await participantPage.getByRole('button', { name: 'Accept the grant' }).click();
+    await participantPage.getByText('You have accepted the grant.').first().waitFor();
+    expect((await board()).rows[0]?.awards[0]?.state).toBe('accepted');
   });
 
   it('the talk is moved, an update with SEQUENCE:1 arrives, and nothing else does', async () => {

@@ -7,6 +7,7 @@ import type { Actor } from '@server/http/authorize';
 import { auditOfEvent } from '@server/features/accounts/accounts.service';
 import { deadlinesOf, readEvent, requireEvent } from '@server/features/events/events.service';
 import { moneyIn, odditiesOf } from '@server/features/finance/finance.service';
+import { grantCounts } from '@server/features/grants/grants-board.service';
 import { failedMessages } from '@server/features/messages/messages.service';
 import { draftOf } from '@server/features/programme/programme.service';
 import { undecidedApplications } from '@server/features/registration/registration-applications.service';
@@ -14,14 +15,6 @@ import { placesOf, registrationsOf } from '@server/features/registration/registr
 import { presencesOf, talkCounts, talksForProgramme } from '@server/features/talks/talks.service';
 
 const DAY_MS = 86_400_000;
-
-/** How grants stand; given by routes.ts, 0 everywhere for an event without funds. */
-const known: { grants(eventId: string): Promise<{ toScore: number; toPropose: number; queried: number; approved: number }> } = {
-  grants: async () => ({ toScore: 0, toPropose: 0, queried: 0, approved: 0 }),
-};
-export function knowGrantsBy(grants: typeof known.grants): void {
-  known.grants = grants;
-}
 
 /** The overview of an event, all of it computed from the data of the features. */
 export async function overviewOf(actor: Actor, slug: string, now: Date): Promise<Overview> {
@@ -38,7 +31,7 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
     odditiesOf(event.id),
     failedMessages(event.id),
     undecidedApplications(event.id),
-    known.grants(event.id),
+    grantCounts(event.id),
     auditOfEvent(event.id, new Date(now.getTime() - DAY_MS), 12),
   ]);
   const today = instantToLocal(now, event.timeZone).date;
@@ -67,7 +60,7 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
       oddities,
       failedMessages: failed,
       speakersWithoutStay: today < event.startsOn ? [...new Map(speakers.filter((person) => person.part === 'speaker' && !stays.has(person.accountId)).map((person) => [person.accountId, person.printedName])).values()] : [],
-      grants,
+      grants: { undecided: grants.toDecline, queried: grants.queried, toTell: grants.toOffer },
     }),
     places,
     speakers: new Set(speakers.map((person) => person.accountId)).size,

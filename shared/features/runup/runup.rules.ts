@@ -23,7 +23,8 @@ export interface DutyFacts {
   oddities: number;
   failedMessages: number;
   speakersWithoutStay: readonly string[];
-  grants: { toScore: number; toPropose: number; queried: number; approved: number };
+  /** Applications handed in and without an award, questions of funders, approved awards without a letter. */
+  grants: { undecided: number; queried: number; toTell: number };
 }
 
 type Draft = Omit<Duty, 'soon'>;
@@ -44,8 +45,8 @@ export function dutiesOf(facts: DutyFacts): Duty[] {
     facts.unpaid.people > 0 && { key: 'unpaid', by: by('registration_closes'), title: `${count(facts.unpaid.people, 'person', 'people')} ${facts.unpaid.people === 1 ? 'has' : 'have'} a place and not paid`, detail: `${formatMoney(facts.unpaid.amountMinor, facts.unpaid.currency)} together`, action: 'See who', href: `${base}/registrations?state=reserved` },
     facts.speakersWithoutStay.length > 0 && { key: 'stays', by: by('programme_final'), title: `${count(facts.speakersWithoutStay.length, 'speaker')} ${facts.speakersWithoutStay.length === 1 ? 'has' : 'have'} not said when they arrive`, detail: names(facts.speakersWithoutStay), action: 'Open talks', href: `${base}/talks` },
     facts.grants.queried > 0 && { key: 'queries', by: by('grants_decided'), title: `${count(facts.grants.queried, 'question')} of a funder to answer`, detail: 'The awards wait until they are answered', action: 'Open grants', href: `${base}/grants` },
-    facts.grants.toScore + facts.grants.toPropose > 0 && { key: 'grants', by: by('grants_decided'), title: `${count(facts.grants.toScore + facts.grants.toPropose, 'grant application')} to score or to decide`, detail: `${facts.grants.toScore} without a score, ${facts.grants.toPropose} without an award`, action: 'Open grants', href: `${base}/grants` },
-    facts.grants.approved > 0 && { key: 'awards', by: by('grants_decided'), title: `${count(facts.grants.approved, 'approved award')} not yet told`, detail: 'The decision letters can go out', action: 'Open grants', href: `${base}/grants` },
+    facts.grants.undecided > 0 && { key: 'grants', by: by('grants_decided'), title: `${count(facts.grants.undecided, 'grant application')} without an award`, detail: 'Propose an award, or let the letters say that there is none', action: 'Open grants', href: `${base}/grants` },
+    facts.grants.toTell > 0 && { key: 'awards', by: by('grants_decided'), title: `${count(facts.grants.toTell, 'approved award')} not yet told`, detail: 'The decision letters can go out', action: 'Open grants', href: `${base}/grants` },
   ];
   const limit = addDays(facts.today, 7);
   return drafts

@@ -3,7 +3,7 @@ import { dutiesOf, incomeByDay, names, type DutyFacts } from '../../../shared/fe
 
 const quiet: DutyFacts = {
   slug: 'e', state: 'open', today: '2027-05-01', startsOn: '2027-07-05', endsOn: '2027-07-09', deadlines: [{ kind: 'programme_final', date: '2027-05-05' }], missingSteps: [], unanswered: [], missingAbstracts: [], submitted: 0, toBePlaced: 0, clashes: 0,
-  unpaid: { people: 0, amountMinor: 0, currency: 'EUR' }, undecidedApplications: 0, oddities: 0, failedMessages: 0, speakersWithoutStay: [], grants: { toScore: 0, toPropose: 0, queried: 0, approved: 0 },
+  unpaid: { people: 0, amountMinor: 0, currency: 'EUR' }, undecidedApplications: 0, oddities: 0, failedMessages: 0, speakersWithoutStay: [], grants: { undecided: 0, queried: 0, toTell: 0 },
 };
 
 it('nothing to do is nothing to say', () => expect(dutiesOf(quiet)).toEqual([]));
