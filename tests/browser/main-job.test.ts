@@ -235,7 +235,7 @@ describe('the main job, from a list of names to a paid place', () => {
 
   it('the participant asks for a grant, the organiser scores and proposes, the funder approves, the decision is accepted', async () => {
     await participantPage.getByRole('link', { name: 'Ask for a travel grant' }).click();
-    await participantPage.getByRole('group', { name: 'Travel' }).getByLabel('Travel', { exact: true }).fill('480');
+    await participantPage.getByRole('group', { name: /^Travel/ }).getByLabel('Travel', { exact: true }).fill('480');
     await participantPage.getByLabel('Why this event, and why a grant').fill('I work on quandles of surfaces, and my institute has no money for the journey this year.');
     await participantPage.getByRole('button', { name: 'Hand in the application' }).click();
     await expect.poll(async () => (await board()).rows.filter((row) => row.person).length, { timeout: 10_000 }).toBe(1);
