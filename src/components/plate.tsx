@@ -38,6 +38,7 @@ export function Plate() {
       <path d={path} fill="none" stroke="#EEF3EB" strokeWidth="2" />
       {MONTHS.map((month, index) => {
         const [x, y] = at(new Date(Date.UTC(year, index, 1, 12)));
+        if (Math.hypot(x - sunX, y - sunY) < 34) return null; // the sun tells the date itself
         const left = index < 3 || index === 3 || index === 6 || index === 7;
         return (
           <g key={month}>

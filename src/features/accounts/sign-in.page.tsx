@@ -27,7 +27,7 @@ export function Component() {
   const errors = fieldErrors(signIn.error);
   return (
     <div className="grid min-h-dvh lg:grid-cols-[860fr_580fr]">
-      <aside className="bg-[#101A17] max-lg:hidden">
+      <aside className="sticky top-0 h-dvh bg-[#101A17] max-lg:hidden">
         <Plate />
       </aside>
       <main className="bg-sheet px-[clamp(20px,8vw,108px)] py-[clamp(28px,9vh,96px)] text-form">
