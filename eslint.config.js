@@ -21,7 +21,14 @@ export default tseslint.config(
       ],
     },
   },
-  { files: ['src/**/*.{ts,tsx}'], plugins: { 'react-hooks': reactHooks }, rules: { ...reactHooks.configs.recommended.rules } },
-  { files: ['vite.config.ts', 'tests/support/global-setup.ts', 'eslint.config.js'], rules: { 'no-restricted-syntax': 'off' } },
+  {
+    files: ['src/**/*.{ts,tsx}'],
+    plugins: { 'react-hooks': reactHooks },
+    rules: { ...reactHooks.configs.recommended.rules },
+  },
+  {
+    files: ['vite.config.ts', 'tests/support/global-setup.ts', 'eslint.config.js'],
+    rules: { 'no-restricted-syntax': 'off' },
+  },
   { files: ['tests/run.ts', 'tests/bench/**', 'seeds/**'], rules: { 'no-console': 'off' } },
 );

@@ -9,7 +9,13 @@ const alias = { '@shared': here('shared'), '@server': here('server'), '@': here(
 export default defineConfig({
   plugins: [react(), tailwindcss()],
   resolve: { alias },
-  build: { outDir: 'dist', manifest: true, target: 'es2022', chunkSizeWarningLimit: 800, assetsInlineLimit: 0 },
+  build: {
+    outDir: 'dist',
+    manifest: true,
+    target: 'es2022',
+    chunkSizeWarningLimit: 800,
+    assetsInlineLimit: 0,
+  },
   test: {
     globals: false,
     testTimeout: 20_000,

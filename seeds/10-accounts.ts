@@ -2,7 +2,12 @@ import type { Actor } from '@server/http/authorize';
 import { transaction } from '@server/db/transaction';
 import { hashPassword } from '@server/features/accounts/accounts-sign-in.service';
 import { AccountRow } from '@server/features/accounts/accounts.model';
-import { ensureAccountForEmail, grantRole, systemActor, type PersonView } from '@server/features/accounts/accounts.service';
+import {
+  ensureAccountForEmail,
+  grantRole,
+  systemActor,
+  type PersonView,
+} from '@server/features/accounts/accounts.service';
 import { demoAccounts, demoPassword } from './demo-accounts';
 import { people } from './pools';
 
@@ -32,12 +37,34 @@ export async function seedAccounts(scale: number): Promise<Cast> {
   const by = {} as Cast['by'];
   for (const { role, email } of demoAccounts) {
     const [givenName, familyName, affiliation] = names[role] as [string, string, string];
-    by[role] = await ensureAccountForEmail({ email, givenName, familyName, affiliation, country: 'DK', careerStage: role === 'participant' ? 'doctoral' : 'faculty', timeZone: 'Europe/Copenhagen' });
-    await transaction(() => AccountRow.update({ passwordHash, emailVerifiedAt: new Date() }, { where: { id: by[role].id } }));
+    by[role] = await ensureAccountForEmail({
+      email,
+      givenName,
+      familyName,
+      affiliation,
+      country: 'DK',
+      careerStage: role === 'participant' ? 'doctoral' : 'faculty',
+      timeZone: 'Europe/Copenhagen',
+    });
+    await transaction(() =>
+      AccountRow.update({ passwordHash, emailVerifiedAt: new Date() }, { where: { id: by[role].id } }),
+    );
   }
   await transaction(async () => {
-    await grantRole({ accountId: by.administrator.id, role: 'administrator', scope: 'institute', scopeId: null, by: systemActor });
-    await grantRole({ accountId: by.finance.id, role: 'finance', scope: 'institute', scopeId: null, by: systemActor });
+    await grantRole({
+      accountId: by.administrator.id,
+      role: 'administrator',
+      scope: 'institute',
+      scopeId: null,
+      by: systemActor,
+    });
+    await grantRole({
+      accountId: by.finance.id,
+      role: 'finance',
+      scope: 'institute',
+      scopeId: null,
+      by: systemActor,
+    });
   });
   const crowd: PersonView[] = [];
   await transaction(async () => {
@@ -59,4 +86,9 @@ export async function seedAccounts(scale: number): Promise<Cast> {
 }
 
 /** Somebody acts for himself or herself. */
-export const as = (person: PersonView): Actor => ({ accountId: person.id, email: person.email, printedName: person.printedName, grants: [] });
+export const as = (person: PersonView): Actor => ({
+  accountId: person.id,
+  email: person.email,
+  printedName: person.printedName,
+  grants: [],
+});

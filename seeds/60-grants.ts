@@ -3,8 +3,19 @@ import type { AwardLine, FundInput, GrantInput } from '@shared/features/grants/g
 import { Problem } from '@shared/http/problem';
 import { addDays } from '@shared/lib/time';
 import type { Actor } from '@server/http/authorize';
-import { ensureAccountForEmail, grantRole, systemActor, type PersonView } from '@server/features/accounts/accounts.service';
-import { applyForGrant, basisOf, readMyGrant, saveMyGrant, withdrawMyGrant } from '@server/features/grants/grants-applications.service';
+import {
+  ensureAccountForEmail,
+  grantRole,
+  systemActor,
+  type PersonView,
+} from '@server/features/accounts/accounts.service';
+import {
+  applyForGrant,
+  basisOf,
+  readMyGrant,
+  saveMyGrant,
+  withdrawMyGrant,
+} from '@server/features/grants/grants-applications.service';
 import { proposeAward } from '@server/features/grants/grants-awards.service';
 import { answerAward, sendDecisions } from '@server/features/grants/grants-decisions.service';
 import { readBoard } from '@server/features/grants/grants-board.service';
@@ -14,13 +25,49 @@ import { scoreApplication } from '@server/features/grants/grants-scores.service'
 import { as, type Cast } from './10-accounts';
 
 const DAY = 86_400_000;
-const anybody = { stages: [], countries: [], notCountries: [], flagsAny: [], minScore: null } satisfies FundInput['eligibility'];
+const anybody = {
+  stages: [],
+  countries: [],
+  notCountries: [],
+  flagsAny: [],
+  minScore: null,
+} satisfies FundInput['eligibility'];
 
 /** Three invented funds, no two with the same rules. */
 const funds: FundInput[] = [
-  { name: 'Ness Bequest', funder: 'The trustees of the Ness Bequest', budgetMinor: 1_150_000, currency: 'EUR', covers: ['travel', 'accommodation', 'subsistence'], eligibility: { ...anybody, stages: ['student', 'doctoral', 'postdoc'] }, capPerPersonMinor: 110_000, floors: [], showScores: true },
-  { name: 'Varde Fund', funder: 'Varde Lighthouse Society', budgetMinor: 420_000, currency: 'EUR', covers: ['travel', 'fee'], eligibility: { ...anybody, stages: ['student', 'doctoral'], flagsAny: ['first_meeting', 'gives_talk'] }, capPerPersonMinor: 60_000, floors: [{ group: 'first_meeting', percent: 50, of: 'awarded' }], showScores: false },
-  { name: 'Long Road Fund', funder: 'Friends of the Tarnholt Institute', budgetMinor: 680_000, currency: 'EUR', covers: ['travel', 'accommodation', 'subsistence', 'fee'], eligibility: { ...anybody, notCountries: ['DK', 'NO', 'SE', 'DE', 'FR'], minScore: 5 }, capPerPersonMinor: null, floors: [{ group: 'no_other_money', percent: 40, of: 'budget' }], showScores: true },
+  {
+    name: 'Ness Bequest',
+    funder: 'The trustees of the Ness Bequest',
+    budgetMinor: 1_150_000,
+    currency: 'EUR',
+    covers: ['travel', 'accommodation', 'subsistence'],
+    eligibility: { ...anybody, stages: ['student', 'doctoral', 'postdoc'] },
+    capPerPersonMinor: 110_000,
+    floors: [],
+    showScores: true,
+  },
+  {
+    name: 'Varde Fund',
+    funder: 'Varde Lighthouse Society',
+    budgetMinor: 420_000,
+    currency: 'EUR',
+    covers: ['travel', 'fee'],
+    eligibility: { ...anybody, stages: ['student', 'doctoral'], flagsAny: ['first_meeting', 'gives_talk'] },
+    capPerPersonMinor: 60_000,
+    floors: [{ group: 'first_meeting', percent: 50, of: 'awarded' }],
+    showScores: false,
+  },
+  {
+    name: 'Long Road Fund',
+    funder: 'Friends of the Tarnholt Institute',
+    budgetMinor: 680_000,
+    currency: 'EUR',
+    covers: ['travel', 'accommodation', 'subsistence', 'fee'],
+    eligibility: { ...anybody, notCountries: ['DK', 'NO', 'SE', 'DE', 'FR'], minScore: 5 },
+    capPerPersonMinor: null,
+    floors: [{ group: 'no_other_money', percent: 40, of: 'budget' }],
+    showScores: true,
+  },
 ];
 
 const reasons = [
@@ -31,11 +78,31 @@ const reasons = [
 ];
 
 function wish(n: number): GrantInput {
-  const items: GrantInput['items'] = [{ kind: 'travel', amountMinor: 18_000 + ((n * 7_300) % 61_000), quantity: null, note: n % 2 ? 'Train both ways' : 'Flight, then the train from the main line' }];
-  if (n % 3 !== 1) items.push({ kind: 'accommodation', amountMinor: 41_800, quantity: 11, note: 'Shared room at Lindgard House' });
+  const items: GrantInput['items'] = [
+    {
+      kind: 'travel',
+      amountMinor: 18_000 + ((n * 7_300) % 61_000),
+      quantity: null,
+      note: n % 2 ? 'Train both ways' : 'Flight, then the train from the main line',
+    },
+  ];
+  if (n % 3 !== 1)
+    items.push({
+      kind: 'accommodation',
+      amountMinor: 41_800,
+      quantity: 11,
+      note: 'Shared room at Lindgard House',
+    });
   if (n % 4 === 0) items.push({ kind: 'subsistence', amountMinor: 16_500, quantity: 11, note: '' });
   if (n % 5 === 2) items.push({ kind: 'fee', amountMinor: 15_000, quantity: null, note: 'Early fee' });
-  return { motivation: reasons[n % reasons.length] as string, items, minUsefulMinor: n % 6 === 3 ? (items[0]?.amountMinor ?? 0) : 0, firstMeeting: n % 3 === 0, noOtherMoney: n % 4 < 2, talkId: null };
+  return {
+    motivation: reasons[n % reasons.length] as string,
+    items,
+    minUsefulMinor: n % 6 === 3 ? (items[0]?.amountMinor ?? 0) : 0,
+    firstMeeting: n % 3 === 0,
+    noOtherMoney: n % 4 < 2,
+    talkId: null,
+  };
 }
 
 /** The committee and the funders act as themselves: who decided what stays true in the audit trail. */
@@ -53,17 +120,27 @@ interface Wave {
 }
 
 async function handIn({ event }: Desk, { people, at }: Wave, offset: number): Promise<void> {
-  for (const [n, person] of people.entries()) await applyForGrant(as(person), event.slug, wish(n + offset), at);
+  for (const [n, person] of people.entries())
+    await applyForGrant(as(person), event.slug, wish(n + offset), at);
 }
 
 /** Both score everybody, except where they must not or declare a conflict of interest. */
 async function score({ event, organiser, reviewer }: Desk, now: Date): Promise<void> {
   for (const by of [reviewer, organiser]) {
     const { rows } = await readBoard(by, event.id, now);
-    for (const [n, row] of rows.filter((candidate) => candidate.conflict === null && candidate.myScore === null && candidate.decision === null).entries()) {
+    for (const [n, row] of rows
+      .filter(
+        (candidate) =>
+          candidate.conflict === null && candidate.myScore === null && candidate.decision === null,
+      )
+      .entries()) {
       if (by === organiser && n % 4 === 3) continue;
       const conflict = by === reviewer && n === 5;
-      const given = { score: conflict ? null : 4 + ((n * 5 + row.requested.length) % 7), comment: n % 3 === 0 ? 'Clear plan; the letter fits the courses.' : '', conflict };
+      const given = {
+        score: conflict ? null : 4 + ((n * 5 + row.requested.length) % 7),
+        comment: n % 3 === 0 ? 'Clear plan; the letter fits the courses.' : '',
+        conflict,
+      };
       await scoreApplication(by, event.id, row.id, given);
     }
   }
@@ -82,11 +159,15 @@ function linesFor(requested: AwardLine[], fund: FundInput): AwardLine[] {
 async function propose({ event, organiser, fundIds }: Desk, most: number, now: Date): Promise<void> {
   let made = 0;
   const { rows } = await readBoard(organiser, event.id, now);
-  for (const [n, row] of rows.filter((candidate) => candidate.awards.length === 0 && candidate.decision === null && candidate.person).entries()) {
+  for (const [n, row] of rows
+    .filter((candidate) => candidate.awards.length === 0 && candidate.decision === null && candidate.person)
+    .entries()) {
     for (let turn = 0; turn < funds.length && made < most; turn++) {
       const which = (n + turn) % funds.length;
       const lines = linesFor(row.requested, funds[which] as FundInput);
-      const taken = lines.length > 0 && (await tryAward(organiser, event.id, row.id, fundIds[which] as string, lines, now));
+      const taken =
+        lines.length > 0 &&
+        (await tryAward(organiser, event.id, row.id, fundIds[which] as string, lines, now));
       if (!taken) continue;
       made += 1;
       break;
@@ -94,7 +175,14 @@ async function propose({ event, organiser, fundIds }: Desk, most: number, now: D
   }
 }
 
-async function tryAward(by: Actor, eventId: string, applicationId: string, fundId: string, lines: AwardLine[], now: Date): Promise<boolean> {
+async function tryAward(
+  by: Actor,
+  eventId: string,
+  applicationId: string,
+  fundId: string,
+  lines: AwardLine[],
+  now: Date,
+): Promise<boolean> {
   try {
     await proposeAward(by, eventId, applicationId, fundId, { lines, version: null }, now);
     return true;
@@ -111,7 +199,17 @@ async function decide({ funders, fundIds }: Desk, some: boolean, now: Date): Pro
     for (const [n, award] of open.entries()) {
       if (some && n >= 3) break;
       const queried = some && n === 1;
-      await decideAward(funders[index] as Actor, fundId, award.id, award.version, { decision: queried ? 'queried' : 'approved', question: queried ? 'Is there a cheaper journey by train and ship?' : '' }, now);
+      await decideAward(
+        funders[index] as Actor,
+        fundId,
+        award.id,
+        award.version,
+        {
+          decision: queried ? 'queried' : 'approved',
+          question: queried ? 'Is there a cheaper journey by train and ship?' : '',
+        },
+        now,
+      );
     }
   }
 }
@@ -128,17 +226,48 @@ async function answer({ event }: Desk, people: PersonView[], now: Date): Promise
 }
 
 async function openDesk(cast: Cast, event: EventDetail): Promise<Desk> {
-  const person = (email: string, givenName: string, familyName: string, affiliation: string) => ensureAccountForEmail({ email, givenName, familyName, affiliation, country: 'DK', careerStage: 'other', timeZone: 'Europe/Copenhagen' });
-  const holders = [cast.by.funder, await person('varde@example.org', 'Þórdís', 'Egilsdóttir-Vik', 'Varde Lighthouse Society'), await person('longroad@example.org', 'Casimir', 'Ołtarzewski-Holm', 'Friends of the Tarnholt Institute')];
+  const person = (email: string, givenName: string, familyName: string, affiliation: string) =>
+    ensureAccountForEmail({
+      email,
+      givenName,
+      familyName,
+      affiliation,
+      country: 'DK',
+      careerStage: 'other',
+      timeZone: 'Europe/Copenhagen',
+    });
+  const holders = [
+    cast.by.funder,
+    await person('varde@example.org', 'Þórdís', 'Egilsdóttir-Vik', 'Varde Lighthouse Society'),
+    await person('longroad@example.org', 'Casimir', 'Ołtarzewski-Holm', 'Friends of the Tarnholt Institute'),
+  ];
   const fundIds: string[] = [];
   for (const [index, input] of funds.entries()) {
     const fund = await createFund(systemActor, event.slug, input);
     fundIds.push(fund.id);
-    await grantRole({ accountId: (holders[index] as PersonView).id, role: 'funder', scope: 'fund', scopeId: fund.id, by: systemActor });
+    await grantRole({
+      accountId: (holders[index] as PersonView).id,
+      role: 'funder',
+      scope: 'fund',
+      scopeId: fund.id,
+      by: systemActor,
+    });
   }
-  const holding = (who: PersonView, role: 'organiser' | 'reviewer'): Actor => ({ ...as(who), grants: [{ role, scope: 'event', scopeId: event.id }] });
-  const funders = holders.map((who, index): Actor => ({ ...as(who), grants: [{ role: 'funder', scope: 'fund', scopeId: fundIds[index] as string }] }));
-  return { event, organiser: holding(cast.by.organiser, 'organiser'), reviewer: holding(cast.by.reviewer, 'reviewer'), funders, fundIds };
+  const holding = (who: PersonView, role: 'organiser' | 'reviewer'): Actor => ({
+    ...as(who),
+    grants: [{ role, scope: 'event', scopeId: event.id }],
+  });
+  const funders = holders.map((who, index): Actor => ({
+    ...as(who),
+    grants: [{ role: 'funder', scope: 'fund', scopeId: fundIds[index] as string }],
+  }));
+  return {
+    event,
+    organiser: holding(cast.by.organiser, 'organiser'),
+    reviewer: holding(cast.by.reviewer, 'reviewer'),
+    funders,
+    fundIds,
+  };
 }
 
 /** Funds of the school, a first round that is decided and answered, a second one that the committee and the funders have in hand. */
@@ -160,7 +289,13 @@ export async function seedGrants(cast: Cast, event: EventDetail, now: Date, scal
   const [draft, leaver] = [withBasis[14 + 22 * scale], second[0]];
   if (draft) await saveMyGrant(as(draft), event.slug, 0, wish(3), ago(12));
   await score(desk, ago(5));
-  if (leaver) await withdrawMyGrant(as(leaver), event.slug, (await readMyGrant(as(leaver), event.slug, now)).version, now);
+  if (leaver)
+    await withdrawMyGrant(
+      as(leaver),
+      event.slug,
+      (await readMyGrant(as(leaver), event.slug, now)).version,
+      now,
+    );
   await propose(desk, 12, ago(3));
   await decide(desk, true, ago(1));
 }

@@ -17,7 +17,10 @@ import { seedGrants } from './60-grants';
  * Fills an empty database with the invented demo scenario, all through the services, dates relative to now. Does
  * nothing when there are accounts. `scale` 10 makes ten times as many people, talks and registrations, for measuring.
  */
-export async function seedDemo({ scale = 1, now = new Date() }: { scale?: number; now?: Date } = {}): Promise<boolean> {
+export async function seedDemo({
+  scale = 1,
+  now = new Date(),
+}: { scale?: number; now?: Date } = {}): Promise<boolean> {
   if ((await AccountRow.count()) > 0) return false;
   introduceScopes();
   const cast = await seedAccounts(scale);
@@ -38,11 +41,16 @@ export async function seedDemo({ scale = 1, now = new Date() }: { scale?: number
 async function main(): Promise<void> {
   const at = process.argv.indexOf('--scale');
   const scale = at > 0 ? Number(process.argv[at + 1]) : 1;
-  if (!Number.isInteger(scale) || scale < 1 || scale > 50) throw new Error('--scale takes a whole number from 1 to 50');
+  if (!Number.isInteger(scale) || scale < 1 || scale > 50)
+    throw new Error('--scale takes a whole number from 1 to 50');
   const started = Date.now();
   await migrate();
   const filled = await seedDemo({ scale });
-  console.log(filled ? `Filled at scale ${scale} in ${((Date.now() - started) / 1000).toFixed(1)} s.` : 'The database is not empty; nothing was changed.');
+  console.log(
+    filled
+      ? `Filled at scale ${scale} in ${((Date.now() - started) / 1000).toFixed(1)} s.`
+      : 'The database is not empty; nothing was changed.',
+  );
   await closeDatabase();
 }
 

@@ -83,7 +83,12 @@ function serveClient(app: Express, folder: string): void {
   app.use(
     '/assets',
     compressedAssets(path.join(folder, 'assets')),
-    express.static(path.join(folder, 'assets'), { immutable: true, maxAge: '1y', fallthrough: false, index: false }),
+    express.static(path.join(folder, 'assets'), {
+      immutable: true,
+      maxAge: '1y',
+      fallthrough: false,
+      index: false,
+    }),
   );
   app.use(express.static(folder, { index: false, maxAge: '1h' }));
   app.get(/.*/, async (req, res) => {
@@ -95,7 +100,11 @@ function serveClient(app: Express, folder: string): void {
     res.setHeader('Cache-Control', 'no-cache');
     // Public pages can be read without JavaScript: their text stands in the page before the script takes it over.
     const reading = await readingPage(req.path, new Date());
-    if (reading) res.status(reading.status).type('html').send(fillPage(await readFile(page, 'utf8'), reading));
+    if (reading)
+      res
+        .status(reading.status)
+        .type('html')
+        .send(fillPage(await readFile(page, 'utf8'), reading));
     else res.sendFile(page);
   });
 }

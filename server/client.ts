@@ -32,9 +32,13 @@ export async function ensureClient(): Promise<void> {
 
 /** Script and style sheets once, as small as they get: the server then only sends them. */
 async function compressAssets(): Promise<void> {
-  for (const file of (await filesBelow(path.join(clientDir, 'assets'))).filter((name) => /\.(js|css|svg)$/.test(name))) {
+  for (const file of (await filesBelow(path.join(clientDir, 'assets'))).filter((name) =>
+    /\.(js|css|svg)$/.test(name),
+  )) {
     const plain = await readFile(file);
-    const quality = { params: { [constants.BROTLI_PARAM_QUALITY]: 11, [constants.BROTLI_PARAM_SIZE_HINT]: plain.length } };
+    const quality = {
+      params: { [constants.BROTLI_PARAM_QUALITY]: 11, [constants.BROTLI_PARAM_SIZE_HINT]: plain.length },
+    };
     await writeFile(`${file}.br`, await promisify(brotliCompress)(plain, quality));
     await writeFile(`${file}.gz`, await promisify(gzip)(plain, { level: 9 }));
   }
@@ -80,6 +84,10 @@ async function filesBelow(place: string): Promise<string[]> {
 /** Vite in front of the same API, with hot reload (`npm run dev`). */
 export async function viteClient(): Promise<{ middleware: RequestHandler; attach(server: Server): void }> {
   const { createServer } = await import('vite');
-  const vite = await createServer({ root, server: { middlewareMode: true, ws: false as never }, appType: 'spa' });
+  const vite = await createServer({
+    root,
+    server: { middlewareMode: true, ws: false as never },
+    appType: 'spa',
+  });
   return { middleware: vite.middlewares as unknown as RequestHandler, attach: () => undefined };
 }

@@ -42,8 +42,14 @@ export function parseEnv(source: Record<string, string | undefined>): Env {
   const production = value.NODE_ENV === 'production';
   const demo = value.DEMO ?? !production;
   const problems = production ? productionProblems(value, demo) : [];
-  if (problems.length > 0) throw new Error(`Not fit for production:\n${problems.map((p) => `  ${p}`).join('\n')}`);
-  const host = value.HOST === '0.0.0.0' || value.HOST === '::' ? 'localhost' : value.HOST === '127.0.0.1' ? 'localhost' : value.HOST;
+  if (problems.length > 0)
+    throw new Error(`Not fit for production:\n${problems.map((p) => `  ${p}`).join('\n')}`);
+  const host =
+    value.HOST === '0.0.0.0' || value.HOST === '::'
+      ? 'localhost'
+      : value.HOST === '127.0.0.1'
+        ? 'localhost'
+        : value.HOST;
   return {
     ...value,
     DEMO: demo,
@@ -60,9 +66,12 @@ function productionProblems(value: z.infer<typeof schema>, demo: boolean): strin
   if (!value.SESSION_SECRET) problems.push('SESSION_SECRET must be set.');
   if (!value.BASE_URL) problems.push('BASE_URL must be set to the address that people use.');
   if (demo) problems.push('DEMO accounts are not allowed in production.');
-  if (!value.SMTP_URL && !fakes.has('smtp')) problems.push('SMTP_URL must be set (or ALLOW_FAKES must name smtp).');
+  if (!value.SMTP_URL && !fakes.has('smtp'))
+    problems.push('SMTP_URL must be set (or ALLOW_FAKES must name smtp).');
   if (!(value.STRIPE_SECRET_KEY && value.STRIPE_WEBHOOK_SECRET) && !fakes.has('stripe')) {
-    problems.push('STRIPE_SECRET_KEY and STRIPE_WEBHOOK_SECRET must be set (or ALLOW_FAKES must name stripe).');
+    problems.push(
+      'STRIPE_SECRET_KEY and STRIPE_WEBHOOK_SECRET must be set (or ALLOW_FAKES must name stripe).',
+    );
   }
   return problems;
 }

@@ -13,7 +13,9 @@ async function main(): Promise<void> {
   if (!vite) await ensureClient();
   const app = buildApp({ clientDir: vite ? null : clientDir, devClient: vite?.middleware });
   const server = await new Promise<Server>((resolve, reject) => {
-    const listening = app.listen(env.PORT, env.HOST, (error?: Error) => (error ? reject(error) : resolve(listening)));
+    const listening = app.listen(env.PORT, env.HOST, (error?: Error) =>
+      error ? reject(error) : resolve(listening),
+    );
   });
   vite?.attach(server);
   await services.afterListening((server.address() as AddressInfo).port);

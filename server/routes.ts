@@ -45,6 +45,9 @@ export function introduceScopes(): void {
   nameScopesWith(async (ids) => {
     const list = [...ids];
     const [events, funds] = [await eventsById(list), await fundsById(list)];
-    return new Map([...[...events].map(([id, event]) => [id, { key: event.slug, title: event.title }] as const), ...[...funds].map(([id, fund]) => [id, { key: id, title: fund.name }] as const)]);
+    return new Map([
+      ...[...events].map(([id, event]) => [id, { key: event.slug, title: event.title }] as const),
+      ...[...funds].map(([id, fund]) => [id, { key: id, title: fund.name }] as const),
+    ]);
   });
 }

@@ -17,4 +17,21 @@ import { talksEndpoints } from './features/talks/talks.contract';
 import { programmeEndpoints } from './features/programme/programme.contract';
 
 /** Every operation of the API: the documentation and the tests walk this list. One line per feature. */
-export const contracts: AnyEndpoint[] = [...accountsEndpoints, ...eventsEndpoints, ...talksEndpoints, ...talksInvitationEndpoints, ...talksStayEndpoints, ...talksCoursesEndpoints, ...talksMaterialsEndpoints, ...programmeEndpoints, ...financeEndpoints, ...registrationEndpoints, ...grantsEndpoints, ...grantsCommitteeEndpoints, ...grantsFunderEndpoints, ...messagesEndpoints, ...runupEndpoints, ...siteEndpoints];
+export const contracts: AnyEndpoint[] = [
+  ...accountsEndpoints,
+  ...eventsEndpoints,
+  ...talksEndpoints,
+  ...talksInvitationEndpoints,
+  ...talksStayEndpoints,
+  ...talksCoursesEndpoints,
+  ...talksMaterialsEndpoints,
+  ...programmeEndpoints,
+  ...financeEndpoints,
+  ...registrationEndpoints,
+  ...grantsEndpoints,
+  ...grantsCommitteeEndpoints,
+  ...grantsFunderEndpoints,
+  ...messagesEndpoints,
+  ...runupEndpoints,
+  ...siteEndpoints,
+];

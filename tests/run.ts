@@ -17,7 +17,14 @@ const steps: Step[] = [
   { name: 'lint', command: ['eslint', '--max-warnings', '0', '.'] },
 ];
 const projects = fast ? ['--project', 'node', '--project', 'ui'] : [];
-const vitest = ['vitest', 'run', ...projects, '--reporter=default', '--reporter=json', `--outputFile.json=${report}`];
+const vitest = [
+  'vitest',
+  'run',
+  ...projects,
+  '--reporter=default',
+  '--reporter=json',
+  `--outputFile.json=${report}`,
+];
 
 function run(command: string[]): Promise<number> {
   return new Promise((resolve) => {
@@ -39,7 +46,9 @@ let failed = 0;
 for (const step of steps) {
   const started = Date.now();
   const code = await run(step.command);
-  console.log(`${step.name}: ${code === 0 ? 'clean' : 'NOT clean'} (${Math.round((Date.now() - started) / 1000)} s)`);
+  console.log(
+    `${step.name}: ${code === 0 ? 'clean' : 'NOT clean'} (${Math.round((Date.now() - started) / 1000)} s)`,
+  );
   if (code === 0) passed += 1;
   else failed += 1;
 }

@@ -16,7 +16,8 @@ export interface Migration {
 /** All migrations in the order of their names, each run in its own transaction. */
 export async function migrator() {
   const files = (await readdir(folder)).filter((name) => name.endsWith('.ts')).sort();
-  const load = async (file: string) => (await import(pathToFileURL(path.join(folder, file)).href)) as Migration;
+  const load = async (file: string) =>
+    (await import(pathToFileURL(path.join(folder, file)).href)) as Migration;
   return new Umzug({
     context: sequelize.getQueryInterface(),
     storage: new SequelizeStorage({ sequelize, tableName: 'migrations' }),

@@ -54,6 +54,8 @@ export async function closeConnections(): Promise<void> {
   writer = undefined;
   for (const database of open) {
     const { closeForGood } = database as unknown as { closeForGood(done: Callback): void };
-    await new Promise<void>((resolve, reject) => closeForGood((error) => (error ? reject(error) : resolve())));
+    await new Promise<void>((resolve, reject) =>
+      closeForGood((error) => (error ? reject(error) : resolve())),
+    );
   }
 }

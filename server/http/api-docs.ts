@@ -14,18 +14,27 @@ const jsonSchema = (schema: z.ZodType, io: 'input' | 'output'): Schema => {
 function parameters(endpoint: AnyEndpoint): Json[] {
   const params = endpoint.params ? jsonSchema(endpoint.params, 'input') : { properties: {} };
   const query = endpoint.query ? jsonSchema(endpoint.query, 'input') : { properties: {} };
-  const list: Json[] = Object.entries(params.properties ?? {}).map(([name, schema]) => ({ name, in: 'path', required: true, schema }));
+  const list: Json[] = Object.entries(params.properties ?? {}).map(([name, schema]) => ({
+    name,
+    in: 'path',
+    required: true,
+    schema,
+  }));
   for (const [name, schema] of Object.entries(query.properties ?? {})) {
     list.push({ name, in: 'query', required: query.required?.includes(name) ?? false, schema });
   }
-  if (endpoint.versioned) list.push({ name: 'If-Match', in: 'header', required: true, schema: { type: 'string' } });
+  if (endpoint.versioned)
+    list.push({ name: 'If-Match', in: 'header', required: true, schema: { type: 'string' } });
   return list;
 }
 
 function requestBody(endpoint: AnyEndpoint): Json | undefined {
   if (endpoint.upload) {
     const fields = endpoint.body ? (jsonSchema(endpoint.body, 'input').properties ?? {}) : {};
-    const schema = { type: 'object', properties: { ...fields, [endpoint.upload.field]: { type: 'string', format: 'binary' } } };
+    const schema = {
+      type: 'object',
+      properties: { ...fields, [endpoint.upload.field]: { type: 'string', format: 'binary' } },
+    };
     return { content: { 'multipart/form-data': { schema } } };
   }
   if (!endpoint.body) return undefined;
@@ -33,7 +42,10 @@ function requestBody(endpoint: AnyEndpoint): Json | undefined {
 }
 
 function responses(endpoint: AnyEndpoint): Json {
-  const problem = { description: 'Problem (RFC 9457)', content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } } };
+  const problem = {
+    description: 'Problem (RFC 9457)',
+    content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } },
+  };
   if (endpoint.response === 'empty') return { '204': { description: 'Done' }, default: problem };
   const content =
     endpoint.response === 'file'
@@ -61,14 +73,19 @@ export function openApi(): Json {
   }
   made = {
     openapi: '3.1.0',
-    info: { title: 'Analemma', version: '0.1.0', description: 'Changes need the header X-CSRF-Token from GET /api/session.' },
+    info: {
+      title: 'Analemma',
+      version: '0.1.0',
+      description: 'Changes need the header X-CSRF-Token from GET /api/session.',
+    },
     paths,
     components: { schemas: { Problem: jsonSchema(problemSchema, 'output') } },
   };
   return made;
 }
 
-const escapeHtml = (text: string): string => text.replace(/[&<>"]/g, (c) => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;' })[c] as string);
+const escapeHtml = (text: string): string =>
+  text.replace(/[&<>"]/g, (c) => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;' })[c] as string);
 
 /** A page that people can read: every operation with what goes in and what comes out. */
 export function apiDocsPage(): string {
@@ -91,7 +108,10 @@ function operation(endpoint: AnyEndpoint): string {
   const part = (title: string, schema: unknown): string =>
     schema ? `<p>${title}</p><pre>${escapeHtml(JSON.stringify(schema, null, 2))}</pre>` : '';
   const body = requestBody(endpoint);
-  const response = endpoint.response === 'file' || endpoint.response === 'empty' ? endpoint.response : jsonSchema(endpoint.response, 'output');
+  const response =
+    endpoint.response === 'file' || endpoint.response === 'empty'
+      ? endpoint.response
+      : jsonSchema(endpoint.response, 'output');
   return `<details><summary><b>${endpoint.method}</b> <code>${escapeHtml(endpoint.path)}</code> ${escapeHtml(endpoint.summary)}</summary>
 ${part('Parameters', parameters(endpoint).length ? parameters(endpoint) : undefined)}${part('Body', body)}${part('Answer', response)}</details>`;
 }

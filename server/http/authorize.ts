@@ -32,7 +32,9 @@ export function holds(actor: Actor | null, role: string, scopeId?: string | null
   if (!actor) return false;
   return (
     isAdministrator(actor) ||
-    actor.grants.some((grant) => grant.role === role && (grant.scope === 'institute' || grant.scopeId === scopeId))
+    actor.grants.some(
+      (grant) => grant.role === role && (grant.scope === 'institute' || grant.scopeId === scopeId),
+    )
   );
 }
 
@@ -45,6 +47,8 @@ export function enter(access: Access, actor: Actor | null, scopeId: string | nul
   if (!actor) throw unauthenticated();
   if (access.kind === 'signedIn' || isAdministrator(actor)) return;
   if (access.roles.some((role) => holds(actor, role, scopeId))) return;
-  const insider = actor.grants.some((grant) => grant.scope === 'institute' || (scopeId && grant.scopeId === scopeId));
+  const insider = actor.grants.some(
+    (grant) => grant.scope === 'institute' || (scopeId && grant.scopeId === scopeId),
+  );
   throw insider || access.kind === 'institute' ? forbidden() : notFound();
 }

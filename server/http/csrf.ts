@@ -24,7 +24,12 @@ export function csrfToken(req: Request, res: Response): string {
 /** A fresh token, at sign-in and sign-out. */
 export function renewCsrf(res: Response): string {
   const token = randomBytes(32).toString('base64url');
-  res.cookie(COOKIE, token, { httpOnly: true, sameSite: 'lax', secure: env.BASE_URL.startsWith('https:'), path: '/' });
+  res.cookie(COOKIE, token, {
+    httpOnly: true,
+    sameSite: 'lax',
+    secure: env.BASE_URL.startsWith('https:'),
+    path: '/',
+  });
   return token;
 }
 
@@ -36,11 +41,19 @@ export const csrfGuard: RequestHandler = (req, _res, next) => {
   if (SAFE.has(req.method)) return next();
   const site = req.headers['sec-fetch-site'];
   const origin = req.headers.origin;
-  const foreign = site !== undefined ? site !== 'same-origin' && site !== 'none' : origin !== undefined && !sameOrigin(req, origin);
-  if (foreign) throw new Problem(403, 'foreign_origin', 'This change came from another site and was not carried out.');
+  const foreign =
+    site !== undefined
+      ? site !== 'same-origin' && site !== 'none'
+      : origin !== undefined && !sameOrigin(req, origin);
+  if (foreign)
+    throw new Problem(403, 'foreign_origin', 'This change came from another site and was not carried out.');
   const cookie = readCookie(req, COOKIE) ?? '';
   const header = req.get('x-csrf-token') ?? '';
-  if (cookie.length === 0 || cookie.length !== header.length || !timingSafeEqual(Buffer.from(cookie), Buffer.from(header))) {
+  if (
+    cookie.length === 0 ||
+    cookie.length !== header.length ||
+    !timingSafeEqual(Buffer.from(cookie), Buffer.from(header))
+  ) {
     throw new Problem(403, 'csrf', 'The page is out of date. Load it again, then repeat the last step.');
   }
   next();

@@ -55,10 +55,14 @@ export function sendProblem(res: Response, problem: Problem): void {
 export function asProblem(error: unknown, requestId?: string): Problem {
   if (error instanceof Problem) return error;
   const known = error as { type?: string; code?: string; name?: string; status?: number };
-  if (known.type === 'entity.too.large') return new Problem(413, 'too_large', 'This is larger than is accepted here.');
-  if (known.type === 'entity.parse.failed') return new Problem(400, 'not_json', 'The body is not valid JSON.');
-  if (known.code === 'LIMIT_FILE_SIZE') return new Problem(413, 'too_large', 'The file is larger than is accepted here.');
-  if (known.name === 'MulterError' || known.status === 400) return new Problem(400, 'not_understood', 'The request was not understood.');
+  if (known.type === 'entity.too.large')
+    return new Problem(413, 'too_large', 'This is larger than is accepted here.');
+  if (known.type === 'entity.parse.failed')
+    return new Problem(400, 'not_json', 'The body is not valid JSON.');
+  if (known.code === 'LIMIT_FILE_SIZE')
+    return new Problem(413, 'too_large', 'The file is larger than is accepted here.');
+  if (known.name === 'MulterError' || known.status === 400)
+    return new Problem(400, 'not_understood', 'The request was not understood.');
   log.error({ err: error, requestId }, 'unexpected');
   return new Problem(
     500,

@@ -22,14 +22,17 @@ export function growingDelay(options: { free: number; maxSeconds: number }) {
       const wait = Math.max(0, ...keys.map((key) => (entries.get(key)?.until ?? 0) - now));
       if (wait <= 0) return;
       const seconds = Math.ceil(wait / 1000);
-      throw new Problem(429, 'too_many_tries', `Too many tries. Try again in ${seconds} s.`, undefined, { retryAfter: seconds });
+      throw new Problem(429, 'too_many_tries', `Too many tries. Try again in ${seconds} s.`, undefined, {
+        retryAfter: seconds,
+      });
     },
     failed(keys: string[], now = Date.now()): void {
       forget(now);
       for (const key of keys) {
         const before = entries.get(key);
         const failures = before && now - before.touched < 3_600_000 ? before.failures + 1 : 1;
-        const wait = failures <= options.free ? 0 : Math.min(options.maxSeconds, 2 ** (failures - options.free - 1));
+        const wait =
+          failures <= options.free ? 0 : Math.min(options.maxSeconds, 2 ** (failures - options.free - 1));
         entries.set(key, { failures, until: now + wait * 1000, touched: now });
       }
     },

@@ -4,7 +4,10 @@ import pino from 'pino';
 import { env } from '../env';
 
 /** The one log. Never bodies, tokens or addresses. */
-export const log = pino({ level: env.NODE_ENV === 'test' ? (process.env.TEST_LOG ?? 'silent') : env.LOG_LEVEL, base: undefined });
+export const log = pino({
+  level: env.NODE_ENV === 'test' ? (process.env.TEST_LOG ?? 'silent') : env.LOG_LEVEL,
+  base: undefined,
+});
 
 /** Gives every request an id and one line: id, account, route pattern, status, milliseconds. */
 export const requestLog: RequestHandler = (req, res, next) => {

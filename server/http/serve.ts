@@ -53,7 +53,11 @@ export function resolveScopesWith(found: { event: Resolver; fund: Resolver }): v
 export const whoAsks: { find: (req: Request) => Promise<Actor | null> } = { find: async () => null };
 
 /** Mounts one endpoint: session -> access -> parse -> handler -> response. */
-export function serve<P, Q, B, R>(router: Router, endpoint: Endpoint<P, Q, B, R>, door: Door<P, Q, B, R>): void {
+export function serve<P, Q, B, R>(
+  router: Router,
+  endpoint: Endpoint<P, Q, B, R>,
+  door: Door<P, Q, B, R>,
+): void {
   doors.push({ endpoint, access: door.access });
   const method = endpoint.method.toLowerCase() as 'get' | 'post' | 'put' | 'patch' | 'delete';
   router[method](endpoint.path, async (req: Request, res: Response) => {
@@ -65,7 +69,8 @@ export function serve<P, Q, B, R>(router: Router, endpoint: Endpoint<P, Q, B, R>
       const eventId = await scopeOf(req, 'event');
       const fundId = await scopeOf(req, 'fund');
       enter(door.access, maybeActor, door.access.kind === 'fund' ? fundId : eventId);
-      if (eventId === null || fundId === null) throw new Problem(404, 'not_found', 'This does not exist, or is not yours to see.');
+      if (eventId === null || fundId === null)
+        throw new Problem(404, 'not_found', 'This does not exist, or is not yours to see.');
       if (endpoint.upload) file = await receiveUpload(req, res, endpoint.upload);
       const answer = await door.handle({
         actor: maybeActor as Actor,

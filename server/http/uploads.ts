@@ -46,7 +46,9 @@ export async function receiveUpload(
     limits: { fileSize: limits.maxBytes, files: 1, fields: 30, fieldSize: 100_000, parts: 32 },
     defParamCharset: 'utf8',
   }).single(limits.field);
-  await new Promise<void>((resolve, reject) => parser(req, res, (error: unknown) => (error ? reject(error) : resolve())));
+  await new Promise<void>((resolve, reject) =>
+    parser(req, res, (error: unknown) => (error ? reject(error) : resolve())),
+  );
   req.body = { ...(req.body as object) };
   if (!req.file) return undefined;
   const file = { path: req.file.path, originalName: cleanName(req.file.originalname), bytes: req.file.size };
@@ -69,9 +71,14 @@ async function realType(file: string, name: string): Promise<string> {
   const extension = name.split('.').pop()?.toLowerCase() ?? '';
   const allowed = found && ACCEPTED[found.mime];
   if (!allowed) {
-    throw new Problem(415, 'upload.kind', 'Accepted are PDF, PPTX, ODP, KEY, ZIP, PNG and JPEG; the content of this file is none of them.', {
-      file: 'Accepted are PDF, PPTX, ODP, KEY, ZIP, PNG and JPEG; the content of this file is none of them.',
-    });
+    throw new Problem(
+      415,
+      'upload.kind',
+      'Accepted are PDF, PPTX, ODP, KEY, ZIP, PNG and JPEG; the content of this file is none of them.',
+      {
+        file: 'Accepted are PDF, PPTX, ODP, KEY, ZIP, PNG and JPEG; the content of this file is none of them.',
+      },
+    );
   }
   if (!allowed.includes(extension)) {
     const message = `The name says .${extension}, but the content is ${allowed.join(' or ')}. Rename or export the file again.`;
@@ -149,6 +156,11 @@ export async function sendFile(req: Request, res: Response, file: FileResponse):
   });
   res.setHeader('Content-Length', String(size));
   await new Promise<void>((resolve, reject) => {
-    createReadStream(stored).on('error', reject).pipe(res).on('finish', resolve).on('close', resolve).on('error', reject);
+    createReadStream(stored)
+      .on('error', reject)
+      .pipe(res)
+      .on('finish', resolve)
+      .on('close', resolve)
+      .on('error', reject);
   });
 }

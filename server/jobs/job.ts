@@ -49,7 +49,11 @@ export interface Reaction<P = never> {
   react(payload: P, job: { id: string }): Promise<void>;
 }
 
-export const on = <P>(fact: Fact<P>, name: string, react: Reaction<P>['react']): Reaction<P> => ({ fact, name, react });
+export const on = <P>(fact: Fact<P>, name: string, react: Reaction<P>['react']): Reaction<P> => ({
+  fact,
+  name,
+  react,
+});
 
 const listeners = new Set<() => void>();
 /** The worker asks to be woken when something was queued. */

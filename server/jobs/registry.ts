@@ -5,4 +5,9 @@ import { messageReactions } from '../features/messages/messages.jobs';
 import type { Reaction } from './job';
 
 /** The one table that binds facts to reactions: one line per reaction list. */
-export const reactions: readonly Reaction[] = [...talkReactions, ...registrationReactions, ...grantReactions, ...messageReactions];
+export const reactions: readonly Reaction[] = [
+  ...talkReactions,
+  ...registrationReactions,
+  ...grantReactions,
+  ...messageReactions,
+];

@@ -14,7 +14,9 @@ export function scheduler(periodic: readonly Periodic[]): (now: Date) => Promise
     for (const job of periodic) {
       if (now.getTime() - (lastRun.get(job.name) ?? 0) < job.everySeconds * 1000) continue;
       lastRun.set(job.name, now.getTime());
-      await job.run(now).catch((error: unknown) => log.error({ err: error, job: job.name }, 'periodic job failed'));
+      await job
+        .run(now)
+        .catch((error: unknown) => log.error({ err: error, job: job.name }, 'periodic job failed'));
     }
   };
 }

@@ -10,7 +10,10 @@ const MAX_ATTEMPTS = 8;
 const backOff = (attempts: number): number => Math.min(600, 2 ** attempts);
 
 /** Carries out what is due, one job after the other, until nothing is. Returns how many ran. */
-export async function runDueJobs(reactions: readonly Reaction[], now: () => Date = () => new Date()): Promise<number> {
+export async function runDueJobs(
+  reactions: readonly Reaction[],
+  now: () => Date = () => new Date(),
+): Promise<number> {
   for (let ran = 0; ; ran++) {
     const job = await JobRow.findOne({
       where: { state: 'queued', runAt: { [Op.lte]: now() } },
@@ -30,14 +33,22 @@ async function expand(job: JobRow, reactions: readonly Reaction[]): Promise<void
   await transaction(async () => {
     for (const reaction of reactions.filter((candidate) => candidate.fact.name === fact)) {
       const name = `reaction:${fact}:${reaction.name}`;
-      await JobRow.create({ id: newId(), name, payload: job.payload, key: `${job.id}:${reaction.name}`, runAt: job.runAt });
+      await JobRow.create({
+        id: newId(),
+        name,
+        payload: job.payload,
+        key: `${job.id}:${reaction.name}`,
+        runAt: job.runAt,
+      });
     }
     await job.update({ state: 'done' });
   });
 }
 
 async function carryOut(job: JobRow, reactions: readonly Reaction[], now: () => Date): Promise<void> {
-  const reaction = reactions.find((candidate) => `reaction:${candidate.fact.name}:${candidate.name}` === job.name);
+  const reaction = reactions.find(
+    (candidate) => `reaction:${candidate.fact.name}:${candidate.name}` === job.name,
+  );
   try {
     if (!reaction) throw new Error(`nobody reacts: ${job.name}`);
     await reaction.react(job.payload as never, { id: job.id });

@@ -20,7 +20,9 @@ export function backOffSeconds(attempts: number, random: () => number = Math.ran
 
 /** Letters whose conversation an earlier process did not live to finish: due again at once. Called when a process starts. */
 export async function recoverInterrupted(now = new Date()): Promise<number> {
-  const [changed] = await transaction(() => MessageRow.update({ nextAt: now }, { where: { state: 'sending', nextAt: { [Op.gt]: now } } }));
+  const [changed] = await transaction(() =>
+    MessageRow.update({ nextAt: now }, { where: { state: 'sending', nextAt: { [Op.gt]: now } } }),
+  );
   return changed;
 }
 
@@ -46,14 +48,21 @@ export async function dispatchMail(now: () => Date = () => new Date()): Promise<
 }
 
 function claim(now: Date): Promise<MessageRow | null> {
-  return MessageRow.findOne({ where: due(now), attributes: ['id'], order: ['nextAt', 'id'] }).then((found) => {
-    if (!found) return null;
-    return transaction(async () => {
-      const row = await MessageRow.findOne({ where: { [Op.and]: [{ id: found.id }, due(now)] } });
-      if (row) await row.update({ state: 'sending', attempts: row.attempts + 1, nextAt: new Date(now.getTime() + STUCK_MS) });
-      return row;
-    });
-  });
+  return MessageRow.findOne({ where: due(now), attributes: ['id'], order: ['nextAt', 'id'] }).then(
+    (found) => {
+      if (!found) return null;
+      return transaction(async () => {
+        const row = await MessageRow.findOne({ where: { [Op.and]: [{ id: found.id }, due(now)] } });
+        if (row)
+          await row.update({
+            state: 'sending',
+            attempts: row.attempts + 1,
+            nextAt: new Date(now.getTime() + STUCK_MS),
+          });
+        return row;
+      });
+    },
+  );
 }
 
 const due = (now: Date) => ({ state: ['queued', 'sending'], nextAt: { [Op.lte]: now } });
@@ -78,11 +87,16 @@ export const isPermanent = ({ responseCode = 0, code, command = '' }: SmtpError)
 async function send(row: MessageRow, now: () => Date): Promise<void> {
   try {
     const reply = await mailTransport().send(wireMessage(row));
-    await transaction(() => row.update({ state: 'sent', sentAt: now(), serverReply: reply.slice(0, 500), lastError: null }));
+    await transaction(() =>
+      row.update({ state: 'sent', sentAt: now(), serverReply: reply.slice(0, 500), lastError: null }),
+    );
   } catch (error) {
     const { responseCode, message } = error as SmtpError;
     const failed = isPermanent(error as SmtpError) || row.attempts >= MAX_ATTEMPTS;
-    log.warn({ message: row.id, responseCode, attempts: row.attempts }, failed ? 'letter failed' : 'letter delayed');
+    log.warn(
+      { message: row.id, responseCode, attempts: row.attempts },
+      failed ? 'letter failed' : 'letter delayed',
+    );
     await transaction(() =>
       row.update({
         state: failed ? 'failed' : 'queued',
@@ -99,7 +113,10 @@ export function wireMessage(row: MessageRow): WireMessage {
     subject: row.subject,
     text: row.text,
     html: row.html,
-    calendar: row.calendarMethod && row.calendarContent ? { method: row.calendarMethod, content: row.calendarContent } : null,
+    calendar:
+      row.calendarMethod && row.calendarContent
+        ? { method: row.calendarMethod, content: row.calendarContent }
+        : null,
     replyTo: row.replyTo,
     unsubscribeUrl: row.unsubscribeUrl,
     messageId: row.messageId,
@@ -109,7 +126,10 @@ export function wireMessage(row: MessageRow): WireMessage {
 /** Queues a failed letter again, by hand. */
 export async function retryMessage(id: string): Promise<boolean> {
   const [changed] = await transaction(() =>
-    MessageRow.update({ state: 'queued', attempts: 0, nextAt: new Date(), lastError: null }, { where: { id, state: 'failed' } }),
+    MessageRow.update(
+      { state: 'queued', attempts: 0, nextAt: new Date(), lastError: null },
+      { where: { id, state: 'failed' } },
+    ),
   );
   return changed === 1;
 }

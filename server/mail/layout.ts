@@ -15,7 +15,10 @@ export interface LetterParts {
 }
 
 export const escapeHtml = (text: string): string =>
-  text.replace(/[&<>"']/g, (c) => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', "'": '&#39;' })[c] as string);
+  text.replace(
+    /[&<>"']/g,
+    (c) => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', "'": '&#39;' })[c] as string,
+  );
 
 /** Plain text and HTML of a letter from one source: one column, serif title, the house's colours, nothing loaded from anywhere. */
 export function layoutLetter(parts: LetterParts): { text: string; html: string } {
@@ -25,12 +28,24 @@ export function layoutLetter(parts: LetterParts): { text: string; html: string }
 
 /** A value that is not there stops the letter by name, before anybody is written to; types alone do not stop a template literal. */
 function refuseMissing({ heading, paragraphs, action, facts, after }: LetterParts): void {
-  const needed: [string, unknown][] = [['heading', heading], ...(action ? ([['action', action.label], ['address of the action', action.url]] as [string, unknown][]) : [])];
+  const needed: [string, unknown][] = [
+    ['heading', heading],
+    ...(action
+      ? ([
+          ['action', action.label],
+          ['address of the action', action.url],
+        ] as [string, unknown][])
+      : []),
+  ];
   const others: [string, unknown][] = [
-    ...[...paragraphs, ...(after ?? [])].map((text, index): [string, unknown] => [`paragraph ${index + 1}`, text]),
+    ...[...paragraphs, ...(after ?? [])].map((text, index): [string, unknown] => [
+      `paragraph ${index + 1}`,
+      text,
+    ]),
     ...(facts ?? []).map(([label, value]): [string, unknown] => [label, value]),
   ];
-  const lacks = ([, value]: [string, unknown]): boolean => typeof value !== 'string' || value === 'undefined' || value === 'null';
+  const lacks = ([, value]: [string, unknown]): boolean =>
+    typeof value !== 'string' || value === 'undefined' || value === 'null';
   const missing = needed.find(([, value]) => !value) ?? [...needed, ...others].find(lacks);
   if (missing) throw new Error(`letter: no ${missing[0]}`);
 }
@@ -40,7 +55,9 @@ function plain({ heading, paragraphs, action, facts, after, footer }: LetterPart
   const blocks = [
     heading,
     ...paragraphs,
-    ...(facts?.length ? [facts.map(([label, value]) => `${`${label}:`.padEnd(width + 2)}${value}`).join('\n')] : []),
+    ...(facts?.length
+      ? [facts.map(([label, value]) => `${`${label}:`.padEnd(width + 2)}${value}`).join('\n')]
+      : []),
     ...(action ? [`${action.label}:\n${action.url}`] : []),
     ...(after ?? []),
     `-- \n${footer ?? env.INSTITUTE_NAME}\n${env.OFFICE_EMAIL}`,
@@ -51,8 +68,10 @@ function plain({ heading, paragraphs, action, facts, after, footer }: LetterPart
 /** The sun's height of the day on a rule from midwinter to midsummer. A table, because mail programs show neither SVG nor positions. */
 function markOfTheDay(now: Date): string {
   const share = Math.round((50 * (sun(now).declination + 23.44)) / 23.44);
-  const cell = (width: number): string => `<td style="width:${Math.min(100, Math.max(0, width))}%;padding:0"><div style="border-top:1px solid #13201b;font-size:0;line-height:0">&nbsp;</div></td>`;
-  const disc = '<td style="padding:0"><div style="width:9px;height:9px;border-radius:5px;background:#b97500;font-size:0;line-height:0">&nbsp;</div></td>';
+  const cell = (width: number): string =>
+    `<td style="width:${Math.min(100, Math.max(0, width))}%;padding:0"><div style="border-top:1px solid #13201b;font-size:0;line-height:0">&nbsp;</div></td>`;
+  const disc =
+    '<td style="padding:0"><div style="width:9px;height:9px;border-radius:5px;background:#b97500;font-size:0;line-height:0">&nbsp;</div></td>';
   return `<table role="presentation" aria-hidden="true" cellspacing="0" cellpadding="0" style="width:120px;border-collapse:collapse;margin:0 0 14px"><tr>${cell(share)}${disc}${cell(100 - share)}</tr></table>
 `;
 }

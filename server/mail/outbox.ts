@@ -56,17 +56,24 @@ export function queueMessage(message: OutgoingMessage): Promise<void> {
 }
 
 function refuseBroken(message: OutgoingMessage): void {
-  const headers = { subject: message.mail.subject, name: message.to.name, address: message.to.address, replyTo: message.replyTo ?? '' };
+  const headers = {
+    subject: message.mail.subject,
+    name: message.to.name,
+    address: message.to.address,
+    replyTo: message.replyTo ?? '',
+  };
   for (const [field, value] of Object.entries(headers)) {
     if (/[\r\n\0]/.test(value)) throw new Error(`${message.letter}: a line break in ${field}`);
   }
   for (const address of [message.to.address, message.replyTo]) {
-    if (address !== undefined && !ADDRESS.test(address)) throw new Error(`${message.letter}: not an address: ${address}`);
+    if (address !== undefined && !ADDRESS.test(address))
+      throw new Error(`${message.letter}: not an address: ${address}`);
   }
   for (const [field, value] of Object.entries(message.mail)) {
     if (typeof value !== 'string' || value.trim() === '') throw new Error(`${message.letter}: no ${field}`);
     // The word "undefined" may well stand in a title; these two never do.
-    if (/\bInvalid DateTime\b|\[object Object\]/.test(value)) throw new Error(`${message.letter}: a missing value in ${field}`);
+    if (/\bInvalid DateTime\b|\[object Object\]/.test(value))
+      throw new Error(`${message.letter}: a missing value in ${field}`);
   }
 }
 

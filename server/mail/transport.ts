@@ -33,8 +33,15 @@ export function mailTransport(): MailTransport {
 export function smtpTransport(url: string): MailTransport & { close(): void } {
   // Options of the connection go into its address: what is passed beside an address are defaults of letters.
   const address = new URL(url);
-  const options = { pool: 'true', maxConnections: '2', connectionTimeout: '20000', greetingTimeout: '20000', socketTimeout: '120000' };
-  for (const [name, value] of Object.entries(options)) if (!address.searchParams.has(name)) address.searchParams.set(name, value);
+  const options = {
+    pool: 'true',
+    maxConnections: '2',
+    connectionTimeout: '20000',
+    greetingTimeout: '20000',
+    socketTimeout: '120000',
+  };
+  for (const [name, value] of Object.entries(options))
+    if (!address.searchParams.has(name)) address.searchParams.set(name, value);
   const transporter: Transporter = nodemailer.createTransport(address.href);
   return {
     close: () => transporter.close(),
@@ -56,7 +63,11 @@ export function smtpTransport(url: string): MailTransport & { close(): void } {
           },
         }),
         ...(message.calendar && {
-          icalEvent: { method: message.calendar.method, filename: 'invitation.ics', content: message.calendar.content },
+          icalEvent: {
+            method: message.calendar.method,
+            filename: 'invitation.ics',
+            content: message.calendar.content,
+          },
         }),
       })) as { response: string };
       return info.response;

@@ -36,14 +36,23 @@ export class Problem extends Error {
 
 export const notFound = (what = 'This page or record'): Problem =>
   new Problem(404, 'not_found', `${what} does not exist, or is not yours to see.`);
-export const forbidden = (why = 'Your role does not allow this.'): Problem => new Problem(403, 'forbidden', why);
+export const forbidden = (why = 'Your role does not allow this.'): Problem =>
+  new Problem(403, 'forbidden', why);
 export const unauthenticated = (): Problem => new Problem(401, 'unauthenticated', 'Please sign in first.');
 export const conflict = (code: string, message: string, facts?: Record<string, unknown>): Problem =>
   new Problem(409, code, message, undefined, facts);
 export const stale = (present: number): Problem =>
-  new Problem(412, 'stale', 'Somebody else has changed this meanwhile. Compare both versions, then save again.', undefined, {
-    version: present,
-  });
+  new Problem(
+    412,
+    'stale',
+    'Somebody else has changed this meanwhile. Compare both versions, then save again.',
+    undefined,
+    {
+      version: present,
+    },
+  );
 /** Wrong input found after parsing; fields are keyed by their path in the body. */
-export const invalid = (fields: Record<string, string>, message = 'Some fields need another look.'): Problem =>
-  new Problem(422, 'invalid', message, fields);
+export const invalid = (
+  fields: Record<string, string>,
+  message = 'Some fields need another look.',
+): Problem => new Problem(422, 'invalid', message, fields);

@@ -3,7 +3,9 @@
  * (ISO 4217 list one, amendment state of npm currency-codes 2.2.0); every other currency has 2.
  */
 const EXPONENTS: Record<string, number> = Object.fromEntries([
-  ...'BIF CLP DJF GNF ISK JPY KMF KRW PYG RWF UGX UYI VND VUV XAF XOF XPF'.split(' ').map((code) => [code, 0]),
+  ...'BIF CLP DJF GNF ISK JPY KMF KRW PYG RWF UGX UYI VND VUV XAF XOF XPF'
+    .split(' ')
+    .map((code) => [code, 0]),
   ...'BHD IQD JOD KWD LYD OMR TND'.split(' ').map((code) => [code, 3]),
   ...'CLF UYW'.split(' ').map((code) => [code, 4]),
 ]);
@@ -20,7 +22,8 @@ export const exponentOf = (currency: string): number => EXPONENTS[currency] ?? 2
 
 /** @throws RangeError unless the amount is a safe integer. */
 export function money<C extends string>(amountMinor: number, currency: C): Money<C> {
-  if (!Number.isSafeInteger(amountMinor)) throw new RangeError(`not a whole number of minor units: ${amountMinor}`);
+  if (!Number.isSafeInteger(amountMinor))
+    throw new RangeError(`not a whole number of minor units: ${amountMinor}`);
   return { amountMinor, currency };
 }
 
@@ -65,7 +68,8 @@ export function formatMoney(amountMinor: number, currency: string, withCode = tr
  */
 export function allocate(amountMinor: number, weights: readonly number[]): number[] {
   const total = weights.reduce((sum, weight) => sum + weight, 0);
-  if (total <= 0 || weights.some((weight) => weight < 0 || !Number.isInteger(weight))) throw new RangeError('weights must be whole, not negative and not all zero');
+  if (total <= 0 || weights.some((weight) => weight < 0 || !Number.isInteger(weight)))
+    throw new RangeError('weights must be whole, not negative and not all zero');
   const sign = amountMinor < 0 ? -1 : 1;
   const amount = BigInt(Math.abs(amountMinor));
   const parts = weights.map((weight, index) => {
@@ -73,7 +77,9 @@ export function allocate(amountMinor: number, weights: readonly number[]): numbe
     return { index, share: Number(product / BigInt(total)), rest: product % BigInt(total) };
   });
   let left = Math.abs(amountMinor) - parts.reduce((sum, part) => sum + part.share, 0);
-  const byRest = [...parts].sort((a, b) => (a.rest === b.rest ? a.index - b.index : a.rest > b.rest ? -1 : 1));
+  const byRest = [...parts].sort((a, b) =>
+    a.rest === b.rest ? a.index - b.index : a.rest > b.rest ? -1 : 1,
+  );
   for (const part of byRest) if (left-- > 0) part.share += 1;
   return parts.map((part) => (part.share === 0 ? 0 : sign * part.share));
 }
@@ -89,8 +95,10 @@ export function stripeAmount(amountMinor: number, currency: string): number {
     return amountMinor / 100;
   }
   if (currency === 'ISK') return amountMinor * 100;
-  if (currency === 'UGX') throw new RangeError('UGX: sources about its minor unit disagree, so it is refused');
-  if (exponentOf(currency) === 3 && amountMinor % 10 !== 0) throw new RangeError(`${currency} amounts must end in 0`);
+  if (currency === 'UGX')
+    throw new RangeError('UGX: sources about its minor unit disagree, so it is refused');
+  if (exponentOf(currency) === 3 && amountMinor % 10 !== 0)
+    throw new RangeError(`${currency} amounts must end in 0`);
   if (exponentOf(currency) === 4) throw new RangeError(`${currency} is not offered`);
   return amountMinor;
 }

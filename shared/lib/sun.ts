@@ -50,13 +50,19 @@ export function markGeometry(height: number, pad: number, moment: Date): MarkGeo
 }
 
 /** Altitude above the horizon and azimuth from south (west positive), in degrees, `hours` from local mean noon. */
-export function altitudeAzimuth(moment: Date, latitude: number, hours: number): { altitude: number; azimuth: number } {
+export function altitudeAzimuth(
+  moment: Date,
+  latitude: number,
+  hours: number,
+): { altitude: number; azimuth: number } {
   const s = sun(moment);
   const hour = (hours * 15 + s.equationOfTime / 4) * RAD;
   const phi = latitude * RAD;
   const delta = s.declination * RAD;
   return {
-    altitude: Math.asin(Math.sin(phi) * Math.sin(delta) + Math.cos(phi) * Math.cos(delta) * Math.cos(hour)) / RAD,
-    azimuth: Math.atan2(Math.sin(hour), Math.cos(hour) * Math.sin(phi) - Math.tan(delta) * Math.cos(phi)) / RAD,
+    altitude:
+      Math.asin(Math.sin(phi) * Math.sin(delta) + Math.cos(phi) * Math.cos(delta) * Math.cos(hour)) / RAD,
+    azimuth:
+      Math.atan2(Math.sin(hour), Math.cos(hour) * Math.sin(phi) - Math.tan(delta) * Math.cos(phi)) / RAD,
   };
 }

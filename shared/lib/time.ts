@@ -23,7 +23,10 @@ export const instant = z.iso.datetime();
 export const timeZone = z
   .string()
   .max(60)
-  .refine((value) => IANAZone.isValidZone(value), 'This time zone is not known (IANA name, e.g. Europe/Copenhagen).');
+  .refine(
+    (value) => IANAZone.isValidZone(value),
+    'This time zone is not known (IANA name, e.g. Europe/Copenhagen).',
+  );
 
 /**
  * The instant of a local date and time in a zone, ISO in UTC. In the hour that a clock change skips, the time moves
@@ -37,9 +40,16 @@ export function localToInstant(date: string, time: string, zone: string): string
 }
 
 /** Local date, time and minute of the day of an instant in a zone. */
-export function instantToLocal(at: string | Date, zone: string): { date: string; time: string; minute: number } {
+export function instantToLocal(
+  at: string | Date,
+  zone: string,
+): { date: string; time: string; minute: number } {
   const local = (typeof at === 'string' ? DateTime.fromISO(at) : DateTime.fromJSDate(at)).setZone(zone);
-  return { date: local.toFormat('yyyy-MM-dd'), time: local.toFormat('HH:mm'), minute: local.hour * 60 + local.minute };
+  return {
+    date: local.toFormat('yyyy-MM-dd'),
+    time: local.toFormat('HH:mm'),
+    minute: local.hour * 60 + local.minute,
+  };
 }
 
 /** `HH:MM` -> minutes since midnight. */
@@ -72,7 +82,10 @@ export function datesBetween(first: string, last: string): string[] {
 const EN = { locale: 'en-GB' } as const;
 
 /** `Thu 9 July` (with the year when asked). */
-export function formatDate(date: string, options: { year?: boolean; short?: boolean; weekday?: boolean } = {}): string {
+export function formatDate(
+  date: string,
+  options: { year?: boolean; short?: boolean; weekday?: boolean } = {},
+): string {
   const { year = false, short = false, weekday = true } = options;
   const pattern = `${weekday ? 'ccc ' : ''}d ${short ? 'LLL' : 'LLLL'}${year ? ' yyyy' : ''}`;
   return DateTime.fromISO(date.slice(0, 10), { zone: 'utc' }).setLocale(EN.locale).toFormat(pattern);
@@ -97,7 +110,8 @@ export function formatTime(time: string): string {
 export function formatSpan(startsAt: string, endsAt: string, zone: string): string {
   const start = instantToLocal(startsAt, zone);
   const end = instantToLocal(endsAt, zone);
-  const tail = start.date === end.date ? formatTime(end.time) : `${formatDate(end.date)}, ${formatTime(end.time)}`;
+  const tail =
+    start.date === end.date ? formatTime(end.time) : `${formatDate(end.date)}, ${formatTime(end.time)}`;
   return `${formatDate(start.date)}, ${formatTime(start.time)}–${tail}`;
 }
 

@@ -13,14 +13,23 @@ export function EventSwitcher({ event }: { event: EventDetail }) {
     <DropdownMenu.Root>
       <DropdownMenu.Trigger className="flex min-h-[28px] items-center gap-2 border-l border-rule pl-4 font-serif text-[14px] font-semibold whitespace-nowrap">
         {event.shortTitle}
-        <span aria-hidden="true" className="text-ink3">⌄</span>
+        <span aria-hidden="true" className="text-ink3">
+          ⌄
+        </span>
         <span className="sr-only">Change event</span>
       </DropdownMenu.Trigger>
       <DropdownMenu.Portal>
-        <DropdownMenu.Content align="start" sideOffset={6} className="z-50 max-h-[70dvh] max-w-[92vw] overflow-y-auto border-[1.75px] border-ink bg-sheet py-1 shadow-float">
+        <DropdownMenu.Content
+          align="start"
+          sideOffset={6}
+          className="z-50 max-h-[70dvh] max-w-[92vw] overflow-y-auto border-[1.75px] border-ink bg-sheet py-1 shadow-float"
+        >
           {mine.map((item) => (
             <DropdownMenu.Item key={item.id} asChild>
-              <Link to={`/organise/${item.slug}`} className="quiet block px-4 py-1.5 text-ui text-ink outline-none data-highlighted:bg-actwash">
+              <Link
+                to={`/organise/${item.slug}`}
+                className="quiet block px-4 py-1.5 text-ui text-ink outline-none data-highlighted:bg-actwash"
+              >
                 <span className="block font-serif text-[14px] font-semibold">{item.shortTitle}</span>
                 <span className="text-dense text-ink3">
                   {formatDateSpan(item.startsOn, item.endsOn)} · {eventStateNames[item.state]}

@@ -15,7 +15,8 @@ function SignedIn({ children }: { children: React.ReactNode }) {
   const location = useLocation();
   if (session.error) return <ErrorState error={session.error} onRetry={() => void session.refetch()} />;
   if (!session.data) return <Loading what="who you are" />;
-  if (!session.data.account) return <Navigate to={`/sign-in?to=${encodeURIComponent(location.pathname + location.search)}`} replace />;
+  if (!session.data.account)
+    return <Navigate to={`/sign-in?to=${encodeURIComponent(location.pathname + location.search)}`} replace />;
   return children;
 }
 
@@ -30,7 +31,9 @@ export function PersonLayout() {
           <Link to="/home" className="quiet text-ink">
             <Wordmark />
           </Link>
-          <span className="border-l border-rule pl-4 font-serif text-[14px] max-sm:hidden">{session?.instituteName}</span>
+          <span className="border-l border-rule pl-4 font-serif text-[14px] max-sm:hidden">
+            {session?.instituteName}
+          </span>
           <div className="ml-auto">
             <PersonMenu />
           </div>
@@ -61,12 +64,22 @@ export function OfficeLayout() {
           <nav aria-label="Office" className="flex gap-5">
             {holds(account, 'administrator') && (
               <>
-                <NavLink className={tab} to="/office/accounts">Accounts</NavLink>
-                <NavLink className={tab} to="/office/messages">Messages</NavLink>
-                <NavLink className={tab} to="/office/audit">Audit trail</NavLink>
+                <NavLink className={tab} to="/office/accounts">
+                  Accounts
+                </NavLink>
+                <NavLink className={tab} to="/office/messages">
+                  Messages
+                </NavLink>
+                <NavLink className={tab} to="/office/audit">
+                  Audit trail
+                </NavLink>
               </>
             )}
-            {demo && <NavLink className={tab} to="/office/test-mail">Test mail</NavLink>}
+            {demo && (
+              <NavLink className={tab} to="/office/test-mail">
+                Test mail
+              </NavLink>
+            )}
           </nav>
           <div className="ml-auto">
             <PersonMenu />
@@ -81,7 +94,10 @@ export function OfficeLayout() {
 }
 
 /** Sections of an event's workspace, by role. */
-export function sectionsFor(account: ReturnType<typeof useAccount>, eventId: string): { to: string; label: string }[] {
+export function sectionsFor(
+  account: ReturnType<typeof useAccount>,
+  eventId: string,
+): { to: string; label: string }[] {
   const organiser = holds(account, 'organiser', eventId);
   const all = [
     { to: '', label: 'Overview', show: organiser || holds(account, 'finance') },
@@ -110,8 +126,22 @@ export function WorkspaceLayout() {
 function Workspace({ slug }: { slug: string }) {
   const account = useAccount();
   const event = useQuery(eventQuery(slug));
-  if (event.error) return <div className="p-6"><ErrorState error={event.error} what="This event could not be opened." onRetry={() => void event.refetch()} /></div>;
-  if (!event.data) return <div className="p-6"><Loading what="the event" /></div>;
+  if (event.error)
+    return (
+      <div className="p-6">
+        <ErrorState
+          error={event.error}
+          what="This event could not be opened."
+          onRetry={() => void event.refetch()}
+        />
+      </div>
+    );
+  if (!event.data)
+    return (
+      <div className="p-6">
+        <Loading what="the event" />
+      </div>
+    );
   return (
     <div className="flex min-h-dvh flex-col bg-sheet">
       <SkipLink />
@@ -120,9 +150,17 @@ function Workspace({ slug }: { slug: string }) {
           <Wordmark />
         </Link>
         <EventSwitcher event={event.data} />
-        <nav aria-label="Sections" className="flex max-w-full gap-4 overflow-x-auto max-lg:order-last max-lg:w-full">
+        <nav
+          aria-label="Sections"
+          className="flex max-w-full gap-4 overflow-x-auto max-lg:order-last max-lg:w-full"
+        >
           {sectionsFor(account, event.data.id).map((section) => (
-            <NavLink key={section.to} end={section.to === ''} className={tab} to={`/organise/${slug}${section.to ? `/${section.to}` : ''}`}>
+            <NavLink
+              key={section.to}
+              end={section.to === ''}
+              className={tab}
+              to={`/organise/${slug}${section.to ? `/${section.to}` : ''}`}
+            >
               {section.label}
             </NavLink>
           ))}

@@ -3,12 +3,25 @@ import { Loading } from '@/components/states';
 import { PageFailed } from './page-failed';
 
 /** One page: its code is loaded when it is opened. Each page file exports `Component`. */
-const page = (path: string, lazy: () => Promise<{ Component: React.ComponentType }>): RouteObject => ({ path, lazy, HydrateFallback: Fallback });
+const page = (path: string, lazy: () => Promise<{ Component: React.ComponentType }>): RouteObject => ({
+  path,
+  lazy,
+  HydrateFallback: Fallback,
+});
 const Fallback = () => <Loading what="the page" />;
 
-const layout = (name: 'PublicLayout' | 'PersonLayout' | 'WorkspaceLayout' | 'OfficeLayout', children: RouteObject[], path?: string): RouteObject => ({
+const layout = (
+  name: 'PublicLayout' | 'PersonLayout' | 'WorkspaceLayout' | 'OfficeLayout',
+  children: RouteObject[],
+  path?: string,
+): RouteObject => ({
   path,
-  lazy: async () => ({ Component: name === 'PublicLayout' ? (await import('./public-frame')).PublicLayout : (await import('./frames'))[name] }),
+  lazy: async () => ({
+    Component:
+      name === 'PublicLayout'
+        ? (await import('./public-frame')).PublicLayout
+        : (await import('./frames'))[name],
+  }),
   HydrateFallback: Fallback,
   children,
 });

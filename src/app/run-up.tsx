@@ -2,7 +2,14 @@ import { useLocation } from 'react-router-dom';
 import type { DeadlineKind, EventDetail } from '@shared/features/events/events.contract';
 import { deadlineNames } from '@shared/features/events/events.rules';
 import { count } from '@shared/lib/text';
-import { addDays, daysBetween, formatDate, formatDateSpan, formatTime, instantToLocal } from '@shared/lib/time';
+import {
+  addDays,
+  daysBetween,
+  formatDate,
+  formatDateSpan,
+  formatTime,
+  instantToLocal,
+} from '@shared/lib/time';
 import { RunUpLine } from '@/components/run-up-line';
 
 /** Section of the workspace that a deadline belongs to. */
@@ -36,7 +43,12 @@ export function RunUp({ event }: { event: EventDetail }) {
       today={now.date}
       tall={section === ''}
       marks={marks}
-      event={{ startsOn: event.startsOn, endsOn: event.endsOn, label: `${event.shortTitle.slice(0, 24)}, ${formatDateSpan(event.startsOn, event.endsOn, false)}`, href: `/organise/${event.slug}` }}
+      event={{
+        startsOn: event.startsOn,
+        endsOn: event.endsOn,
+        label: `${event.shortTitle.slice(0, 24)}, ${formatDateSpan(event.startsOn, event.endsOn, false)}`,
+        href: `/organise/${event.slug}`,
+      }}
       sentence={sentence(event, now, section)}
     />
   );
@@ -44,9 +56,18 @@ export function RunUp({ event }: { event: EventDetail }) {
 
 function sentence(event: EventDetail, now: { date: string; time: string }, section: string): string {
   const days = daysBetween(now.date, event.startsOn);
-  const next = event.deadlines.filter((deadline) => deadline.date >= now.date && (section === '' || SECTION[deadline.kind] === section)).sort((a, b) => a.at.localeCompare(b.at))[0];
-  const due = next && section !== '' ? `${deadlineNames[next.kind]} in ${count(daysBetween(now.date, next.date), 'day')}` : undefined;
-  const begins = now.date > event.endsOn ? 'The event is over' : days > 0 ? `${count(days, 'day')} to the event` : `Day ${1 - days} of the event`;
+  const next = event.deadlines
+    .filter((deadline) => deadline.date >= now.date && (section === '' || SECTION[deadline.kind] === section))
+    .sort((a, b) => a.at.localeCompare(b.at))[0];
+  const due =
+    next && section !== ''
+      ? `${deadlineNames[next.kind]} in ${count(daysBetween(now.date, next.date), 'day')}`
+      : undefined;
+  const begins =
+    now.date > event.endsOn
+      ? 'The event is over'
+      : days > 0
+        ? `${count(days, 'day')} to the event`
+        : `Day ${1 - days} of the event`;
   return `${formatDate(now.date)}, ${formatTime(now.time)}${section === '' ? ` in ${event.town}` : ''}. ${due ? `${due}. ` : ''}${begins}.`;
 }
-

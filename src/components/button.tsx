@@ -19,7 +19,11 @@ const size: Record<ButtonSize, string> = {
 };
 
 /** The classes of a button, for links that look like one. */
-export function buttonClass(variant: ButtonVariant = 'secondary', sizing: ButtonSize = 'dense', extra = ''): string {
+export function buttonClass(
+  variant: ButtonVariant = 'secondary',
+  sizing: ButtonSize = 'dense',
+  extra = '',
+): string {
   const sized = variant === 'link' ? 'min-h-[24px] text-left' : size[sizing];
   return `${base} ${look[variant]} ${sized} ${extra}`;
 }
@@ -34,9 +38,23 @@ interface ButtonProps extends ButtonHTMLAttributes<HTMLButtonElement> {
 }
 
 /** A verb with its object. At most one `primary` in a view. */
-export function Button({ variant = 'secondary', sizing = 'dense', busy = false, className = '', disabled, children, ...rest }: ButtonProps) {
+export function Button({
+  variant = 'secondary',
+  sizing = 'dense',
+  busy = false,
+  className = '',
+  disabled,
+  children,
+  ...rest
+}: ButtonProps) {
   return (
-    <button type="button" {...rest} disabled={disabled || busy} aria-busy={busy || undefined} className={buttonClass(variant, sizing, className)}>
+    <button
+      type="button"
+      {...rest}
+      disabled={disabled || busy}
+      aria-busy={busy || undefined}
+      className={buttonClass(variant, sizing, className)}
+    >
       {children}
     </button>
   );

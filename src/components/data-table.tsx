@@ -27,7 +27,18 @@ interface Props<R> {
 }
 
 /** Three rules, no stripes; name first. On narrow screens it scrolls sideways within itself. */
-export function DataTable<R>({ caption, columns, rows, rowKey, onOpen, chosen, sorted, onSort, foot, detail }: Props<R>) {
+export function DataTable<R>({
+  caption,
+  columns,
+  rows,
+  rowKey,
+  onOpen,
+  chosen,
+  sorted,
+  onSort,
+  foot,
+  detail,
+}: Props<R>) {
   return (
     <div className="overflow-x-auto" tabIndex={-1}>
       <table className="ruled text-dense">
@@ -35,9 +46,18 @@ export function DataTable<R>({ caption, columns, rows, rowKey, onOpen, chosen, s
         <thead>
           <tr>
             {columns.map((column) => (
-              <th key={column.key} scope="col" className={`${column.numeric ? 'num' : ''} ${column.className ?? ''}`} aria-sort={sortState(column, sorted)}>
+              <th
+                key={column.key}
+                scope="col"
+                className={`${column.numeric ? 'num' : ''} ${column.className ?? ''}`}
+                aria-sort={sortState(column, sorted)}
+              >
                 {column.sort && onSort ? (
-                  <button type="button" className="font-semibold hover:underline" onClick={() => onSort(column.sort as string)}>
+                  <button
+                    type="button"
+                    className="font-semibold hover:underline"
+                    onClick={() => onSort(column.sort as string)}
+                  >
                     {column.head}
                     {sorted?.by === column.sort && (sorted.descending ? ' ↓' : ' ↑')}
                   </button>
@@ -89,7 +109,12 @@ function sortState<R>(column: Column<R>, sorted: Props<R>['sorted']): 'ascending
 
 function rowKeys(event: KeyboardEvent<HTMLTableRowElement>, open: () => void): void {
   if (event.target !== event.currentTarget) return;
-  const neighbour = event.key === 'ArrowDown' ? event.currentTarget.nextElementSibling : event.key === 'ArrowUp' ? event.currentTarget.previousElementSibling : null;
+  const neighbour =
+    event.key === 'ArrowDown'
+      ? event.currentTarget.nextElementSibling
+      : event.key === 'ArrowUp'
+        ? event.currentTarget.previousElementSibling
+        : null;
   if (neighbour instanceof HTMLElement) {
     event.preventDefault();
     neighbour.focus();

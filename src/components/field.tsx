@@ -67,26 +67,53 @@ export function Field({
 /** The frame of everything that is filled in. */
 export const controlClass = (wrong: boolean, dense = false): string =>
   `w-full min-w-0 bg-sheet text-ink rounded-field border ${wrong ? 'border-2 border-alarm' : 'border-field'} ${
-    dense ? 'min-h-[30px] px-2 text-ui' : 'min-h-[40px] px-2.5 text-form max-sm:min-h-[46px] max-sm:text-[16px]'
+    dense
+      ? 'min-h-[30px] px-2 text-ui'
+      : 'min-h-[40px] px-2.5 text-form max-sm:min-h-[46px] max-sm:text-[16px]'
   } disabled:bg-wash disabled:border-dashed [&:is(input,textarea):read-only]:bg-wash [&:is(input,textarea):read-only]:border-dashed`;
 
 type Split<T> = Omit<T, keyof FieldProps> & FieldProps & { dense?: boolean };
-const split = <T extends FieldProps & { dense?: boolean }>({ label, hint, error, optional, aside, className, hideLabel, dense, ...rest }: T) => ({
+const split = <T extends FieldProps & { dense?: boolean }>({
+  label,
+  hint,
+  error,
+  optional,
+  aside,
+  className,
+  hideLabel,
+  dense,
+  ...rest
+}: T) => ({
   field: { label, hint, error, optional, aside, className, hideLabel },
   dense,
   rest,
 });
 
-export function Input(props: Split<InputHTMLAttributes<HTMLInputElement>> & { ref?: React.Ref<HTMLInputElement> }) {
-  const { field, dense, rest } = split(props);
-  return <Field {...field}>{(control) => <input {...rest} {...control} className={controlClass(Boolean(field.error), dense)} />}</Field>;
-}
-
-export function Textarea(props: Split<TextareaHTMLAttributes<HTMLTextAreaElement>> & { ref?: React.Ref<HTMLTextAreaElement> }) {
+export function Input(
+  props: Split<InputHTMLAttributes<HTMLInputElement>> & { ref?: React.Ref<HTMLInputElement> },
+) {
   const { field, dense, rest } = split(props);
   return (
     <Field {...field}>
-      {(control) => <textarea rows={4} {...rest} {...control} className={`${controlClass(Boolean(field.error), dense)} py-2`} />}
+      {(control) => <input {...rest} {...control} className={controlClass(Boolean(field.error), dense)} />}
+    </Field>
+  );
+}
+
+export function Textarea(
+  props: Split<TextareaHTMLAttributes<HTMLTextAreaElement>> & { ref?: React.Ref<HTMLTextAreaElement> },
+) {
+  const { field, dense, rest } = split(props);
+  return (
+    <Field {...field}>
+      {(control) => (
+        <textarea
+          rows={4}
+          {...rest}
+          {...control}
+          className={`${controlClass(Boolean(field.error), dense)} py-2`}
+        />
+      )}
     </Field>
   );
 }
@@ -100,7 +127,11 @@ export function Select({
   options,
   placeholder,
   ...props
-}: Split<SelectHTMLAttributes<HTMLSelectElement>> & { options: readonly Option[]; placeholder?: string; ref?: React.Ref<HTMLSelectElement> }) {
+}: Split<SelectHTMLAttributes<HTMLSelectElement>> & {
+  options: readonly Option[];
+  placeholder?: string;
+  ref?: React.Ref<HTMLSelectElement>;
+}) {
   const { field, dense, rest } = split(props);
   return (
     <Field {...field}>
@@ -124,13 +155,24 @@ export function Checkbox({
   error,
   className = '',
   ...rest
-}: Omit<InputHTMLAttributes<HTMLInputElement>, 'type'> & { label: ReactNode; hint?: ReactNode; error?: string; ref?: React.Ref<HTMLInputElement> }) {
+}: Omit<InputHTMLAttributes<HTMLInputElement>, 'type'> & {
+  label: ReactNode;
+  hint?: ReactNode;
+  error?: string;
+  ref?: React.Ref<HTMLInputElement>;
+}) {
   const id = useId();
   const described = [hint && `${id}-hint`, error && `${id}-error`].filter(Boolean).join(' ') || undefined;
   return (
     <div className={className}>
       <label className="flex min-h-[24px] items-start gap-2">
-        <input type="checkbox" {...rest} aria-describedby={described} aria-invalid={error ? true : undefined} className="mt-[1px] size-4 shrink-0 accent-act" />
+        <input
+          type="checkbox"
+          {...rest}
+          aria-describedby={described}
+          aria-invalid={error ? true : undefined}
+          className="mt-[1px] size-4 shrink-0 accent-act"
+        />
         <span>{label}</span>
       </label>
       {hint && (
@@ -166,10 +208,22 @@ export function Choices<V extends string>({
   return (
     <fieldset>
       <legend className="mb-1 font-semibold">{legend}</legend>
-      <div className={`flex flex-wrap rounded-field border ${error ? 'border-2 border-alarm' : 'border-field'} divide-x divide-rule max-sm:flex-col max-sm:divide-x-0 max-sm:divide-y`}>
+      <div
+        className={`flex flex-wrap rounded-field border ${error ? 'border-2 border-alarm' : 'border-field'} divide-x divide-rule max-sm:flex-col max-sm:divide-x-0 max-sm:divide-y`}
+      >
         {options.map((option) => (
-          <label key={option.value} className={`flex min-h-[38px] flex-1 items-center gap-2 px-3 py-1.5 ${option.value === value ? 'bg-actwash font-semibold' : ''}`}>
-            <input type="radio" name={name} value={option.value} checked={option.value === value} onChange={() => onChange(option.value)} className="size-4 shrink-0 accent-act" />
+          <label
+            key={option.value}
+            className={`flex min-h-[38px] flex-1 items-center gap-2 px-3 py-1.5 ${option.value === value ? 'bg-actwash font-semibold' : ''}`}
+          >
+            <input
+              type="radio"
+              name={name}
+              value={option.value}
+              checked={option.value === value}
+              onChange={() => onChange(option.value)}
+              className="size-4 shrink-0 accent-act"
+            />
             <span>
               {option.label}
               {option.hint && <span className="block text-dense font-normal text-ink3">{option.hint}</span>}
@@ -195,7 +249,11 @@ export function Segmented<V extends string>({
   onChange: (value: V) => void;
 }) {
   return (
-    <div role="group" aria-label={label} className="inline-flex overflow-hidden rounded-field border border-field">
+    <div
+      role="group"
+      aria-label={label}
+      className="inline-flex overflow-hidden rounded-field border border-field"
+    >
       {options.map((option) => (
         <button
           key={option.value}

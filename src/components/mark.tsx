@@ -29,8 +29,20 @@ export function Mark({ height = 26, moment }: { height?: number; moment?: Date }
   const { stroke, disc } = drawing as (typeof DRAWINGS)[number];
   const geometry = markGeometry(height, disc + 0.6, moment ?? today);
   return (
-    <svg width={geometry.width} height={height} viewBox={`0 0 ${geometry.width} ${height}`} aria-hidden="true" className="shrink-0">
-      <path d={geometry.path} fill="none" stroke="var(--color-ink)" strokeWidth={stroke} strokeLinejoin="round" />
+    <svg
+      width={geometry.width}
+      height={height}
+      viewBox={`0 0 ${geometry.width} ${height}`}
+      aria-hidden="true"
+      className="shrink-0"
+    >
+      <path
+        d={geometry.path}
+        fill="none"
+        stroke="var(--color-ink)"
+        strokeWidth={stroke}
+        strokeLinejoin="round"
+      />
       <circle cx={geometry.disc[0]} cy={geometry.disc[1]} r={disc} fill="var(--color-sun)" />
     </svg>
   );
@@ -42,7 +54,11 @@ export function Wordmark({ height = 26 }: { height?: number }) {
   return (
     <span className="inline-flex items-center gap-2.5">
       <Mark height={height} />
-      <span className={`font-serif ${large ? 'text-[38px] leading-10 font-medium' : 'text-[16px] font-semibold'}`}>Analemma</span>
+      <span
+        className={`font-serif ${large ? 'text-[38px] leading-10 font-medium' : 'text-[16px] font-semibold'}`}
+      >
+        Analemma
+      </span>
     </span>
   );
 }

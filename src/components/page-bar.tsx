@@ -1,7 +1,17 @@
 import type { ReactNode } from 'react';
 
 /** Head of a working page: title, facts, then controls and the one action that stands out. */
-export function PageBar({ title, facts, controls, actions }: { title: string; facts?: ReactNode; controls?: ReactNode; actions?: ReactNode }) {
+export function PageBar({
+  title,
+  facts,
+  controls,
+  actions,
+}: {
+  title: string;
+  facts?: ReactNode;
+  controls?: ReactNode;
+  actions?: ReactNode;
+}) {
   return (
     <div className="flex min-h-[48px] flex-wrap items-center gap-x-4 gap-y-2 border-b border-rule bg-sheet px-6 py-2 max-sm:px-4">
       <h1 className="font-serif text-title">{title}</h1>
@@ -13,7 +23,15 @@ export function PageBar({ title, facts, controls, actions }: { title: string; fa
 }
 
 /** Head of a section: ink rule above, title left, a link or fact right. */
-export function SectionHead({ title, aside, level = 2 }: { title: ReactNode; aside?: ReactNode; level?: 2 | 3 }) {
+export function SectionHead({
+  title,
+  aside,
+  level = 2,
+}: {
+  title: ReactNode;
+  aside?: ReactNode;
+  level?: 2 | 3;
+}) {
   const Heading = level === 2 ? 'h2' : 'h3';
   return (
     <div className="mb-2 flex items-baseline justify-between gap-3">
@@ -24,7 +42,11 @@ export function SectionHead({ title, aside, level = 2 }: { title: ReactNode; asi
 }
 
 /** Label and value, line by line. */
-export function Facts({ items }: { items: readonly (readonly [label: string, value: ReactNode] | null | false)[] }) {
+export function Facts({
+  items,
+}: {
+  items: readonly (readonly [label: string, value: ReactNode] | null | false)[];
+}) {
   return (
     <dl className="grid grid-cols-[minmax(88px,auto)_1fr] gap-x-4 gap-y-1 text-dense">
       {items.map(

@@ -12,7 +12,12 @@ export function Sign({ kind, label }: { kind: 'must' | 'wish' | 'good'; label?: 
   if (kind === 'wish') {
     return (
       <svg width="14" height="14" viewBox="0 0 14 14" className="mt-[2px] shrink-0" {...hidden}>
-        <path d="M7 1.2 12.8 7 7 12.8 1.2 7Z" fill="var(--color-sheet)" stroke="var(--color-caution)" strokeWidth="1.5" />
+        <path
+          d="M7 1.2 12.8 7 7 12.8 1.2 7Z"
+          fill="var(--color-sheet)"
+          stroke="var(--color-caution)"
+          strokeWidth="1.5"
+        />
       </svg>
     );
   }

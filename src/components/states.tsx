@@ -28,7 +28,9 @@ export function Loading({ what, lines = 5 }: { what: string; lines?: number }) {
   if (stage === 0) return <div aria-busy="true" className="min-h-24" />;
   return (
     <div role="status" aria-busy="true" className="py-4">
-      <p className="text-ink3">{stage === 2 ? `Still reading ${what}. The server is slow or far away.` : `Reading ${what} …`}</p>
+      <p className="text-ink3">
+        {stage === 2 ? `Still reading ${what}. The server is slow or far away.` : `Reading ${what} …`}
+      </p>
       {Array.from({ length: lines }, (_, i) => (
         <div key={i} className="mt-2 h-4 bg-wash" style={{ width: `${88 - ((i * 17) % 40)}%` }} />
       ))}
@@ -37,7 +39,15 @@ export function Loading({ what, lines = 5 }: { what: string; lines?: number }) {
 }
 
 /** What did not happen, what is safe, one action. */
-export function ErrorState({ error, onRetry, what }: { error: unknown; onRetry?: () => void; what?: string }) {
+export function ErrorState({
+  error,
+  onRetry,
+  what,
+}: {
+  error: unknown;
+  onRetry?: () => void;
+  what?: string;
+}) {
   const problem = error instanceof Problem ? error : undefined;
   const requestId = problem?.facts?.requestId;
   return (
@@ -45,8 +55,12 @@ export function ErrorState({ error, onRetry, what }: { error: unknown; onRetry?:
       <Sign kind="must" />
       <div>
         <p className="font-semibold text-ink">{what ?? 'This could not be shown.'}</p>
-        <p className="text-ink2">{problem?.message ?? 'Something went wrong in this page. What was saved is safe.'}</p>
-        {typeof requestId === 'string' && <p className="text-dense text-ink3">Number for the office: {requestId}</p>}
+        <p className="text-ink2">
+          {problem?.message ?? 'Something went wrong in this page. What was saved is safe.'}
+        </p>
+        {typeof requestId === 'string' && (
+          <p className="text-dense text-ink3">Number for the office: {requestId}</p>
+        )}
         {onRetry && (
           <Button className="mt-2" onClick={onRetry}>
             Try again
@@ -68,7 +82,14 @@ export function QueryView<T>({
   children: (data: T) => ReactNode;
 }) {
   if (query.data !== undefined) return <>{children(query.data)}</>;
-  if (query.error) return <ErrorState error={query.error} what={`Reading ${what} did not work.`} onRetry={() => void query.refetch()} />;
+  if (query.error)
+    return (
+      <ErrorState
+        error={query.error}
+        what={`Reading ${what} did not work.`}
+        onRetry={() => void query.refetch()}
+      />
+    );
   return <Loading what={what} />;
 }
 

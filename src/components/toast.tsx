@@ -37,10 +37,18 @@ export function Toaster() {
   return (
     <div className="no-print pointer-events-none fixed right-4 bottom-4 z-50 flex w-[min(380px,calc(100vw-32px))] flex-col gap-2">
       <div aria-live="polite" className="contents">
-        {shown.filter((entry) => entry.kind === 'done').map((entry) => <Line key={entry.id} entry={entry} />)}
+        {shown
+          .filter((entry) => entry.kind === 'done')
+          .map((entry) => (
+            <Line key={entry.id} entry={entry} />
+          ))}
       </div>
       <div aria-live="assertive" className="contents">
-        {shown.filter((entry) => entry.kind === 'wrong').map((entry) => <Line key={entry.id} entry={entry} />)}
+        {shown
+          .filter((entry) => entry.kind === 'wrong')
+          .map((entry) => (
+            <Line key={entry.id} entry={entry} />
+          ))}
       </div>
     </div>
   );
@@ -48,14 +56,28 @@ export function Toaster() {
 
 function Line({ entry }: { entry: Toast }) {
   return (
-    <div className={`pointer-events-auto flex items-start gap-3 border-[1.75px] border-ink bg-sheet px-3 py-2 shadow-float ${entry.kind === 'wrong' ? 'text-alarm' : ''}`}>
+    <div
+      className={`pointer-events-auto flex items-start gap-3 border-[1.75px] border-ink bg-sheet px-3 py-2 shadow-float ${entry.kind === 'wrong' ? 'text-alarm' : ''}`}
+    >
       <span className="grow">{entry.text}</span>
       {entry.undo && (
-        <button type="button" className="min-h-[24px] font-semibold text-act underline" onClick={() => { entry.undo?.(); dismiss(entry.id); }}>
+        <button
+          type="button"
+          className="min-h-[24px] font-semibold text-act underline"
+          onClick={() => {
+            entry.undo?.();
+            dismiss(entry.id);
+          }}
+        >
           Undo
         </button>
       )}
-      <button type="button" aria-label="Close this message" className="min-h-[24px] min-w-[24px] text-ink3" onClick={() => dismiss(entry.id)}>
+      <button
+        type="button"
+        aria-label="Close this message"
+        className="min-h-[24px] min-w-[24px] text-ink3"
+        onClick={() => dismiss(entry.id)}
+      >
         ×
       </button>
     </div>

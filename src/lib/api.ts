@@ -32,7 +32,10 @@ async function token(): Promise<string> {
  * Carries out one operation of the contract.
  * @throws Problem with the server's words; status 0 when the server could not be reached.
  */
-export async function call<P, Q, B, R>(endpoint: Endpoint<P, Q, B, R>, options: CallOptions<P, Q, B> = {}): Promise<R> {
+export async function call<P, Q, B, R>(
+  endpoint: Endpoint<P, Q, B, R>,
+  options: CallOptions<P, Q, B> = {},
+): Promise<R> {
   const answer = await once(endpoint, options);
   if (answer.status === 403 && answer.problem?.code === 'csrf') {
     csrf = undefined; // the cookie was renewed in another tab: take the new token and try once more
@@ -57,19 +60,28 @@ function result<R>(answer: RawAnswer): R {
   throw new Problem(
     answer.status,
     p?.code ?? 'unreachable',
-    p?.detail ?? 'The server could not be reached. What you typed is still here; check the network and try again.',
+    p?.detail ??
+      'The server could not be reached. What you typed is still here; check the network and try again.',
     p?.fields,
     { ...p?.facts, requestId: p?.requestId },
   );
 }
 
-async function once<P, Q, B, R>(endpoint: Endpoint<P, Q, B, R>, options: CallOptions<P, Q, B>): Promise<RawAnswer> {
+async function once<P, Q, B, R>(
+  endpoint: Endpoint<P, Q, B, R>,
+  options: CallOptions<P, Q, B>,
+): Promise<RawAnswer> {
   const url = address(endpoint, options);
   const headers: Record<string, string> = { Accept: 'application/json' };
   if (options.version !== undefined) headers['If-Match'] = `"v${options.version}"`;
   if (endpoint.method !== 'GET') headers['X-CSRF-Token'] = await token().catch(() => '');
   if (options.file) return sendFile(endpoint, url, headers, options);
-  const init: RequestInit = { method: endpoint.method, headers, credentials: 'same-origin', signal: options.signal };
+  const init: RequestInit = {
+    method: endpoint.method,
+    headers,
+    credentials: 'same-origin',
+    signal: options.signal,
+  };
   if (endpoint.method !== 'GET' && (options.body !== undefined || endpoint.body)) {
     headers['Content-Type'] = 'application/json';
     init.body = JSON.stringify(options.body ?? {});
@@ -89,14 +101,18 @@ function address<P, Q, B>(endpoint: Endpoint<P, Q, B, unknown>, options: CallOpt
     if (value !== undefined && value !== null && value !== '') query.set(key, String(value));
   }
   const text = query.toString();
-  return fillPath(endpoint.path, (options.params ?? {}) as Record<string, unknown>) + (text ? `?${text}` : '');
+  return (
+    fillPath(endpoint.path, (options.params ?? {}) as Record<string, unknown>) + (text ? `?${text}` : '')
+  );
 }
 
 function read(status: number, type: string, text: string): RawAnswer {
   if (!type.includes('json')) return { status, body: text || undefined };
   try {
     const body: unknown = JSON.parse(text);
-    return type.includes('problem') ? { status, body: undefined, problem: body as ProblemBody } : { status, body };
+    return type.includes('problem')
+      ? { status, body: undefined, problem: body as ProblemBody }
+      : { status, body };
   } catch {
     return { status: status >= 400 ? status : 0, body: undefined };
   }
@@ -118,8 +134,10 @@ function sendFile<P, Q, B>(
     const request = new XMLHttpRequest();
     request.open(endpoint.method, url);
     for (const [name, value] of Object.entries(headers)) request.setRequestHeader(name, value);
-    request.upload.onprogress = (event) => event.lengthComputable && options.onProgress?.(event.loaded / event.total);
-    request.onload = () => resolve(read(request.status, request.getResponseHeader('content-type') ?? '', request.responseText));
+    request.upload.onprogress = (event) =>
+      event.lengthComputable && options.onProgress?.(event.loaded / event.total);
+    request.onload = () =>
+      resolve(read(request.status, request.getResponseHeader('content-type') ?? '', request.responseText));
     request.onerror = () => resolve({ status: 0, body: undefined });
     request.onabort = () => reject(new DOMException('stopped', 'AbortError'));
     options.signal?.addEventListener('abort', () => request.abort());
@@ -128,6 +146,10 @@ function sendFile<P, Q, B>(
 }
 
 /** The address of an operation that answers with a file, for links. */
-export function fileAddress<P, Q, B, R>(endpoint: Endpoint<P, Q, B, R>, params: P, query?: Partial<Q>): string {
+export function fileAddress<P, Q, B, R>(
+  endpoint: Endpoint<P, Q, B, R>,
+  params: P,
+  query?: Partial<Q>,
+): string {
   return address(endpoint as Endpoint<P, Q, B, unknown>, { params, query });
 }

@@ -11,8 +11,12 @@ export function ownTime(instant: string): string {
 
 /** Amount in minor units as the house writes it: `1,240.00 EUR`. */
 export function formatMinor(amountMinor: number, currency: string): string {
-  const digits = new Intl.NumberFormat('en', { style: 'currency', currency }).resolvedOptions().maximumFractionDigits ?? 2;
-  const number = new Intl.NumberFormat('en-GB', { minimumFractionDigits: digits, maximumFractionDigits: digits }).format(amountMinor / 10 ** digits);
+  const digits =
+    new Intl.NumberFormat('en', { style: 'currency', currency }).resolvedOptions().maximumFractionDigits ?? 2;
+  const number = new Intl.NumberFormat('en-GB', {
+    minimumFractionDigits: digits,
+    maximumFractionDigits: digits,
+  }).format(amountMinor / 10 ** digits);
   return `${number} ${currency}`;
 }
 

@@ -2,7 +2,8 @@ import { Problem } from '@shared/http/problem';
 import { toast } from '@/components/toast';
 
 /** Field errors of a failed save, keyed by path; empty when it failed for another reason. */
-export const fieldErrors = (error: unknown): Record<string, string> => (error instanceof Problem ? (error.fields ?? {}) : {});
+export const fieldErrors = (error: unknown): Record<string, string> =>
+  error instanceof Problem ? (error.fields ?? {}) : {};
 
 /** The server's sentence. */
 export const sentenceOf = (error: unknown): string =>

@@ -6,7 +6,8 @@ export const queryClient = new QueryClient({
   defaultOptions: {
     queries: {
       staleTime: 30_000,
-      retry: (failures, error) => failures < 2 && (!(error instanceof Problem) || error.status === 0 || error.status >= 500),
+      retry: (failures, error) =>
+        failures < 2 && (!(error instanceof Problem) || error.status === 0 || error.status >= 500),
       refetchOnWindowFocus: true,
     },
   },

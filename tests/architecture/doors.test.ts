@@ -14,14 +14,34 @@ import { startTestApp, type Client, type TestApp } from '../support/server';
 import { actors, table, type ActorName, type Expected } from './roles';
 
 /** The doors' own answers; what is behind a door says what exactly does not exist. */
-const DOOR_SAYS = ['This page or record does not exist, or is not yours to see.', 'This does not exist, or is not yours to see.'];
+const DOOR_SAYS = [
+  'This page or record does not exist, or is not yours to see.',
+  'This does not exist, or is not yours to see.',
+];
 
 let app: TestApp;
 const clients = {} as Record<ActorName, Client>;
 const params: Record<string, string | number> = {};
 
-async function people(event: { id: string; slug: string }, elsewhere: { id: string }, fundElsewhere: string): Promise<Record<'administrator' | 'finance' | 'organiserElsewhere' | 'desk' | 'funderElsewhere' | 'speaker' | 'participant' | 'plain', PersonView>> {
-  const inEvent = (role: 'organiser' | 'desk', id: string) => buildAccount({}, [{ role, scope: 'event', scopeId: id }]);
+async function people(
+  event: { id: string; slug: string },
+  elsewhere: { id: string },
+  fundElsewhere: string,
+): Promise<
+  Record<
+    | 'administrator'
+    | 'finance'
+    | 'organiserElsewhere'
+    | 'desk'
+    | 'funderElsewhere'
+    | 'speaker'
+    | 'participant'
+    | 'plain',
+    PersonView
+  >
+> {
+  const inEvent = (role: 'organiser' | 'desk', id: string) =>
+    buildAccount({}, [{ role, scope: 'event', scopeId: id }]);
   return {
     administrator: await buildAccount({}, [{ role: 'administrator' }]),
     finance: await buildAccount({}, [{ role: 'finance' }]),
@@ -42,18 +62,35 @@ beforeAll(async () => {
   const fundElsewhere = await createFund(systemActor, elsewhere.slug, fundInput({ name: 'Varde Fund' }));
   const cast = { ...(await people(event, elsewhere, fundElsewhere.id)), organiser, reviewer, funder };
   const talk = await buildTalk(event.id, { speaker: cast.speaker });
-  const registration = await register(await actorFor(cast.participant), event.slug, registrationInput(category), new Date());
-  Object.assign(params, { event: event.slug, fund: fund.id, talk: talk.id, registration: registration.id, number: 1, index: 0, token: 'a'.repeat(43), mail: newId() });
+  const registration = await register(
+    await actorFor(cast.participant),
+    event.slug,
+    registrationInput(category),
+    new Date(),
+  );
+  Object.assign(params, {
+    event: event.slug,
+    fund: fund.id,
+    talk: talk.id,
+    registration: registration.id,
+    number: 1,
+    index: 0,
+    token: 'a'.repeat(43),
+    mail: newId(),
+  });
   for (const [name, person] of Object.entries(cast)) clients[name as ActorName] = await app.signIn(person);
   clients.stranger = app.stranger;
 }, 60_000);
 
 const paramsOf = (endpoint: AnyEndpoint): Record<string, unknown> =>
-  Object.fromEntries([...endpoint.path.matchAll(/:([A-Za-z]+)/g)].map(([, name]) => [name, params[name as string] ?? newId()]));
+  Object.fromEntries(
+    [...endpoint.path.matchAll(/:([A-Za-z]+)/g)].map(([, name]) => [name, params[name as string] ?? newId()]),
+  );
 
 /** Bodies hold a field that no contract has: a door that lets through refuses them with 422 and changes nothing. */
 async function knock(endpoint: AnyEndpoint, actor: ActorName): Promise<Expected> {
-  const body = endpoint.method === 'GET' || endpoint.method === 'DELETE' ? undefined : { surely_not_a_field: 1 };
+  const body =
+    endpoint.method === 'GET' || endpoint.method === 'DELETE' ? undefined : { surely_not_a_field: 1 };
   const answer = await clients[actor].call(endpoint, { params: paramsOf(endpoint) as never, body });
   const { code, detail } = answer.body as { code?: string; detail?: string };
   if (answer.status === 401 && code === 'unauthenticated') return 401;
@@ -69,7 +106,9 @@ describe('doors', () => {
   });
 
   // Signing out comes last: it would close the door behind the actor.
-  const inTurn = [...contracts].sort((a, b) => Number(a.id === 'accounts.sign_out') - Number(b.id === 'accounts.sign_out'));
+  const inTurn = [...contracts].sort(
+    (a, b) => Number(a.id === 'accounts.sign_out') - Number(b.id === 'accounts.sign_out'),
+  );
   it.each(inTurn.map((endpoint) => [endpoint.id, endpoint] as const))('%s', async (id, endpoint) => {
     const answers: Record<string, Expected> = {};
     for (const actor of actors) answers[actor] = await knock(endpoint, actor);

@@ -2,7 +2,20 @@
  * Who may do what: one row per operation of shared/contracts.ts. The answers are written down here, not computed from
  * the doors, so that a door that is opened wider by mistake fails. A new operation needs a row.
  */
-export const actors = ['stranger', 'administrator', 'finance', 'organiser', 'organiserElsewhere', 'reviewer', 'desk', 'funder', 'funderElsewhere', 'speaker', 'participant', 'plain'] as const;
+export const actors = [
+  'stranger',
+  'administrator',
+  'finance',
+  'organiser',
+  'organiserElsewhere',
+  'reviewer',
+  'desk',
+  'funder',
+  'funderElsewhere',
+  'speaker',
+  'participant',
+  'plain',
+] as const;
 export type ActorName = (typeof actors)[number];
 type Other = Exclude<ActorName, 'stranger'>;
 
@@ -18,14 +31,21 @@ const anyone: Row = { ...row(() => 'in'), stranger: 'in' };
 /** Whoever is signed in; on one's own things, the service looks whose they are. */
 const signedIn = row(() => 'in');
 /** The event office, and the institute's roles named here; that such pages exist is no secret: 403. */
-const office = (...roles: Other[]): Row => row((actor) => (actor === 'administrator' || roles.includes(actor) ? 'in' : 403));
+const office = (...roles: Other[]): Row =>
+  row((actor) => (actor === 'administrator' || roles.includes(actor) ? 'in' : 403));
 /** Those with another role in this event, and the finance office, hear 403; for everybody else the event does not exist. */
 const insiders: Other[] = ['finance', 'organiser', 'reviewer', 'desk'];
-const ofEvent = (...roles: Other[]): Row => row((actor) => (actor === 'administrator' || roles.includes(actor) ? 'in' : insiders.includes(actor) ? 403 : 404));
+const ofEvent = (...roles: Other[]): Row =>
+  row((actor) =>
+    actor === 'administrator' || roles.includes(actor) ? 'in' : insiders.includes(actor) ? 403 : 404,
+  );
 /** The funder of this fund; the finance office hears 403, other funds and events 404. */
-const ofFund: Row = row((actor) => (actor === 'administrator' || actor === 'funder' ? 'in' : actor === 'finance' ? 403 : 404));
+const ofFund: Row = row((actor) =>
+  actor === 'administrator' || actor === 'funder' ? 'in' : actor === 'finance' ? 403 : 404,
+);
 /** A thing of somebody's own, read by those named here; for everybody else it does not exist. */
-const reads = (...roles: Other[]): Row => row((actor) => (actor === 'administrator' || roles.includes(actor) ? 'in' : 404));
+const reads = (...roles: Other[]): Row =>
+  row((actor) => (actor === 'administrator' || roles.includes(actor) ? 'in' : 404));
 
 export const table: Record<string, Row> = {
   'accounts.session': anyone,

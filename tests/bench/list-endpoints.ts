@@ -14,7 +14,14 @@ import { lineOf, medianOf } from './measure';
 const RUNS = 40;
 const scale = Number(process.argv[process.argv.indexOf('--scale') + 1] ?? 1) || 1;
 const folder = mkdtempSync(path.join(os.tmpdir(), 'analemma-bench-'));
-Object.assign(process.env, { NODE_ENV: 'test', DATABASE_FILE: path.join(folder, 'bench.sqlite'), UPLOADS_DIR: path.join(folder, 'uploads'), BASE_URL: 'http://127.0.0.1', LOG_LEVEL: 'silent', DEMO: 'true' });
+Object.assign(process.env, {
+  NODE_ENV: 'test',
+  DATABASE_FILE: path.join(folder, 'bench.sqlite'),
+  UPLOADS_DIR: path.join(folder, 'uploads'),
+  BASE_URL: 'http://127.0.0.1',
+  LOG_LEVEL: 'silent',
+  DEMO: 'true',
+});
 
 const lists = [
   ['events of the public', '/api/public/events'],
@@ -49,10 +56,19 @@ async function signIn(url: string): Promise<string> {
   const office = demoAccounts.find((account) => account.role === 'administrator');
   const session = await fetch(`${url}/api/session`);
   const { csrfToken } = (await session.json()) as { csrfToken: string };
-  const cookie = (response: Response): string => response.headers.getSetCookie().map((one) => one.split(';')[0]).join('; ');
+  const cookie = (response: Response): string =>
+    response.headers
+      .getSetCookie()
+      .map((one) => one.split(';')[0])
+      .join('; ');
   const answer = await fetch(`${url}/api/session`, {
     method: 'POST',
-    headers: { 'content-type': 'application/json', cookie: cookie(session), 'x-csrf-token': csrfToken, 'sec-fetch-site': 'same-origin' },
+    headers: {
+      'content-type': 'application/json',
+      cookie: cookie(session),
+      'x-csrf-token': csrfToken,
+      'sec-fetch-site': 'same-origin',
+    },
     body: JSON.stringify({ email: office?.email, password: office?.password, stay: false }),
   });
   if (!answer.ok) throw new Error(`sign-in: ${answer.status} ${await answer.text()}`);
@@ -72,9 +88,17 @@ async function statementsOf(request: () => Promise<unknown>): Promise<string[]> 
 }
 
 const all = (driver: sqlite3.Database, text: string): Promise<unknown[]> =>
-  new Promise((resolve, reject) => driver.all(text, (error, rows) => (error ? reject(error) : resolve(rows))));
+  new Promise((resolve, reject) =>
+    driver.all(text, (error, rows) => (error ? reject(error) : resolve(rows))),
+  );
 
-async function measure(url: string, cookie: string, driver: sqlite3.Database, name: string, address: string): Promise<void> {
+async function measure(
+  url: string,
+  cookie: string,
+  driver: sqlite3.Database,
+  name: string,
+  address: string,
+): Promise<void> {
   const request = async (): Promise<number> => {
     const response = await fetch(url + address, { headers: { cookie, 'accept-encoding': 'identity' } });
     if (!response.ok) throw new Error(`${address}: ${response.status}`);
@@ -91,13 +115,21 @@ async function measure(url: string, cookie: string, driver: sqlite3.Database, na
   await bare();
   const [ours, theirs]: [number[], number[]] = [[], []];
   for (let run = 0; run < RUNS; run++) {
-    for (const [times, work] of [[ours, request], [theirs, bare]] as const) {
+    for (const [times, work] of [
+      [ours, request],
+      [theirs, bare],
+    ] as const) {
       const start = performance.now();
       await work();
       times.push(performance.now() - start);
     }
   }
-  lineOf(name, medianOf(ours), medianOf(theirs), `${statements.length} statements, ${(bytes / 1000).toFixed(0)} kB`);
+  lineOf(
+    name,
+    medianOf(ours),
+    medianOf(theirs),
+    `${statements.length} statements, ${(bytes / 1000).toFixed(0)} kB`,
+  );
 }
 
 const { url, server } = await startApp();

@@ -6,5 +6,7 @@ export function medianOf(times: readonly number[]): number {
 
 /** One line of a table: ours, the yardstick, and their ratio. */
 export function lineOf(name: string, ours: number, yardstick: number, note = ''): void {
-  console.log(`${name.padEnd(28)} ${ours.toFixed(2).padStart(9)} ms  bare ${yardstick.toFixed(2).padStart(8)} ms  ratio ${(ours / yardstick).toFixed(2).padStart(6)}   ${note}`);
+  console.log(
+    `${name.padEnd(28)} ${ours.toFixed(2).padStart(9)} ms  bare ${yardstick.toFixed(2).padStart(8)} ms  ratio ${(ours / yardstick).toFixed(2).padStart(6)}   ${note}`,
+  );
 }

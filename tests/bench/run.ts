@@ -11,7 +11,9 @@ const parts: [title: string, file: string, ...args: string[]][] = [
 
 const run = (file: string, args: string[]): Promise<number> =>
   new Promise((resolve) => {
-    const child = spawn(process.execPath, ['--import', 'tsx', `tests/bench/${file}`, ...args], { stdio: ['ignore', 'inherit', 'inherit'] });
+    const child = spawn(process.execPath, ['--import', 'tsx', `tests/bench/${file}`, ...args], {
+      stdio: ['ignore', 'inherit', 'inherit'],
+    });
     child.on('exit', (code) => resolve(code ?? 1));
   });
 

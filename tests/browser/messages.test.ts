@@ -24,7 +24,12 @@ beforeAll(async () => {
     while ((await runDueJobs(reactions)) + (await dispatchMail()) > 0);
   };
   scene = await buildProgramme();
-  await placeTalk(systemActor, scene.event.slug, { talkId: scene.first.id, roomId: scene.hall.id, day: '2027-07-05', startMinute: 540 });
+  await placeTalk(systemActor, scene.event.slug, {
+    talkId: scene.first.id,
+    roomId: scene.hall.id,
+    day: '2027-07-05',
+    startMinute: 540,
+  });
   await publishRevision(systemActor, scene.event.slug, {});
   await sendAll();
 }, 240_000);
@@ -39,21 +44,37 @@ async function noViolations(page: Page, name: string): Promise<void> {
     await page.waitForTimeout(250); // colours change within 120 ms
     // Scripts can't run in the letter's sandbox, axe's neither.
     const { violations } = await new AxeBuilder({ page }).exclude('iframe').analyze();
-    expect(violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html}`), `${name}, ${colorScheme}`).toEqual([]);
+    expect(
+      violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html}`),
+      `${name}, ${colorScheme}`,
+    ).toEqual([]);
   }
 }
 
 it('the speaker reads the invitation in the test mailbox and says yes by its link; the organiser sees it', async () => {
   const page = await app.pageFor(scene.speaker.email);
   const outside: string[] = [];
-  page.context().on('request', (request) => void (/^(data|about|blob):/.test(request.url()) || request.url().startsWith(app.url) || outside.push(request.url())));
+  page
+    .context()
+    .on(
+      'request',
+      (request) =>
+        void (
+          /^(data|about|blob):/.test(request.url()) ||
+          request.url().startsWith(app.url) ||
+          outside.push(request.url())
+        ),
+    );
   await page.goto(`${app.url}/office/test-mail`);
   await page.getByRole('button', { name: /Invitation: Cubes/ }).click();
   await page.getByRole('button', { name: 'Calendar part', exact: true }).click();
   await page.getByText('METHOD:REQUEST').waitFor();
   await noViolations(page, 'test mail');
   await page.getByRole('button', { name: 'As it looks' }).click();
-  const link = await page.frameLocator('iframe').getByRole('link', { name: 'Say whether you come' }).getAttribute('href');
+  const link = await page
+    .frameLocator('iframe')
+    .getByRole('link', { name: 'Say whether you come' })
+    .getAttribute('href');
   await page.goto(`${app.url}${new URL(link ?? '').pathname}`);
   await page.getByRole('button', { name: 'Say yes, I come' }).click();
   await page.getByText('You have said that you come.').waitFor();
@@ -84,12 +105,17 @@ it('the organiser writes to the speakers with a field, corrects a wrong one, rea
   await page.getByText('Queued for 2 people.').waitFor();
   await sendAll();
   await page.reload();
-  await page.getByRole('row', { name: /Hằng.*Boards at Conference on Lattices/ }).first().press('Enter');
+  await page
+    .getByRole('row', { name: /Hằng.*Boards at Conference on Lattices/ })
+    .first()
+    .press('Enter');
   await page.getByText('“Cubes”').waitFor();
   await noViolations(page, 'message');
   await page.getByRole('button', { name: 'Show everything this person was sent' }).click();
   await page.getByText('Only what').waitFor();
   await expect.poll(() => page.getByRole('row').count()).toBe(3);
-  expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth)).toBeLessThanOrEqual(0);
+  expect(
+    await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth),
+  ).toBeLessThanOrEqual(0);
   await page.context().close();
 }, 120_000);

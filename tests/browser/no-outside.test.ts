@@ -34,11 +34,16 @@ async function contextFor(role: ScreenRole, colorScheme: (typeof themes)[number]
   const key = `${role} ${colorScheme}`;
   const known = contexts.get(key);
   if (known) return known;
-  const context = await app.browser.newContext({ colorScheme, reducedMotion: 'reduce', viewport: { width: 1440, height: 900 } });
+  const context = await app.browser.newContext({
+    colorScheme,
+    reducedMotion: 'reduce',
+    viewport: { width: 1440, height: 900 },
+  });
   contexts.set(key, context);
   context.on('request', (request) => {
     const { protocol, host } = new URL(request.url());
-    if (['http:', 'https:', 'ws:', 'wss:'].includes(protocol) && host !== new URL(app.url).host) outside.push(request.url());
+    if (['http:', 'https:', 'ws:', 'wss:'].includes(protocol) && host !== new URL(app.url).host)
+      outside.push(request.url());
   });
   const account = demoAccounts.find((candidate) => candidate.role === role);
   if (account) await signIn(await context.newPage(), account);
@@ -59,10 +64,21 @@ describe.each(themes)('in the %s theme', (theme) => {
     const context = await contextFor(role, theme);
     const page = await context.newPage();
     page.on('pageerror', (error) => broken.push(`${route}: ${error.message}`));
-    await page.goto(app.url + route.replace(/:(\w+)/g, (_all, name: string) => filled[name] ?? ''), { waitUntil: 'networkidle' });
+    await page.goto(app.url + route.replace(/:(\w+)/g, (_all, name: string) => filled[name] ?? ''), {
+      waitUntil: 'networkidle',
+    });
     const { violations } = await new AxeBuilder({ page }).analyze();
     await page.close();
-    const found = violations.map((one) => `${one.id}: ${one.nodes.map((node) => `${node.html.slice(0, 160)} (${node.any[0]?.message ?? node.all[0]?.message ?? node.failureSummary ?? ''})`).slice(0, 3).join(' | ')}`);
+    const found = violations.map(
+      (one) =>
+        `${one.id}: ${one.nodes
+          .map(
+            (node) =>
+              `${node.html.slice(0, 160)} (${node.any[0]?.message ?? node.all[0]?.message ?? node.failureSummary ?? ''})`,
+          )
+          .slice(0, 3)
+          .join(' | ')}`,
+    );
     expect(found).toEqual([]);
     expect(outside).toEqual([]);
     expect(broken).toEqual([]);

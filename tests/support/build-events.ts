@@ -1,6 +1,10 @@
 import type { EventInput } from '../../shared/features/events/events.contract';
 import { createEvent, changeEventState } from '../../server/features/events/events.service';
-import { replaceDayFrames, replaceDeadlines, replaceRooms } from '../../server/features/events/events-frame.service';
+import {
+  replaceDayFrames,
+  replaceDeadlines,
+  replaceRooms,
+} from '../../server/features/events/events-frame.service';
 import { systemActor } from '../../server/features/accounts/accounts.service';
 import { addDays, datesBetween } from '../../shared/lib/time';
 

@@ -37,18 +37,36 @@ export const grantInput = (over: Partial<GrantInput> = {}): GrantInput => ({
 export async function buildGrants(fund: Partial<FundInput> = {}) {
   const { event, category } = await buildOpenEvent();
   const made = await createFund(systemActor, event.slug, fundInput(fund));
-  const organiser = await buildAccount({ affiliation: 'Tarnholt Institute' }, [{ role: 'organiser', scope: 'event', scopeId: event.id }]);
-  const reviewer = await buildAccount({ affiliation: 'Kuura Polytechnic' }, [{ role: 'reviewer', scope: 'event', scopeId: event.id }]);
-  const funder = await buildAccount({ affiliation: 'Ness Trust' }, [{ role: 'funder', scope: 'fund', scopeId: made.id }]);
+  const organiser = await buildAccount({ affiliation: 'Tarnholt Institute' }, [
+    { role: 'organiser', scope: 'event', scopeId: event.id },
+  ]);
+  const reviewer = await buildAccount({ affiliation: 'Kuura Polytechnic' }, [
+    { role: 'reviewer', scope: 'event', scopeId: event.id },
+  ]);
+  const funder = await buildAccount({ affiliation: 'Ness Trust' }, [
+    { role: 'funder', scope: 'fund', scopeId: made.id },
+  ]);
   return { event, category, fund: made, organiser, reviewer, funder };
 }
 
 /** A registered person from Hanoi's region who has handed in a grant application. */
-export async function buildApplicant(event: { id: string; slug: string }, category: string, over: Partial<GrantInput> = {}, person: Partial<Parameters<typeof buildAccount>[0]> = {}) {
-  const applicant: PersonView = await buildAccount({ affiliation: 'Viện Toán Sông Hồng', country: 'VN', careerStage: 'doctoral', ...person });
+export async function buildApplicant(
+  event: { id: string; slug: string },
+  category: string,
+  over: Partial<GrantInput> = {},
+  person: Partial<Parameters<typeof buildAccount>[0]> = {},
+) {
+  const applicant: PersonView = await buildAccount({
+    affiliation: 'Viện Toán Sông Hồng',
+    country: 'VN',
+    careerStage: 'doctoral',
+    ...person,
+  });
   const now = new Date();
   await register(await actorFor(applicant), event.slug, registrationInput(category), now);
   await applyForGrant(await actorFor(applicant), event.slug, grantInput(over), now);
-  const row = (await GrantApplicationRow.findOne({ where: { eventId: event.id, accountId: applicant.id } })) as GrantApplicationRow;
+  const row = (await GrantApplicationRow.findOne({
+    where: { eventId: event.id, accountId: applicant.id },
+  })) as GrantApplicationRow;
   return { applicant, id: row.id, reference: row.reference };
 }

@@ -10,14 +10,26 @@ export async function buildOpenEvent(over: Partial<EventInput> = {}) {
   const event = await buildEvent(over);
   const fees = await replaceFeeTable(systemActor, event.slug, {
     taxNote: 'Exempt: education.',
-    categories: [{ name: 'Everybody', stages: [], earlyMinor: null, earlyUntil: null, regularMinor: 25_000, taxBasisPoints: 0 }],
+    categories: [
+      {
+        name: 'Everybody',
+        stages: [],
+        earlyMinor: null,
+        earlyUntil: null,
+        regularMinor: 25_000,
+        taxBasisPoints: 0,
+      },
+    ],
     extras: [{ name: 'Dinner', priceMinor: 4_000, capacity: 5, until: null, taxBasisPoints: 0, hint: '' }],
   });
   const open = await changeEventState(systemActor, event.slug, 'open');
   return { event: open, fees, category: fees.categories[0]?.id ?? '', dinner: fees.extras[0]?.id ?? '' };
 }
 
-export const registrationInput = (categoryId: string, over: Partial<RegistrationInput> = {}): RegistrationInput => ({
+export const registrationInput = (
+  categoryId: string,
+  over: Partial<RegistrationInput> = {},
+): RegistrationInput => ({
   categoryId,
   extras: [],
   arrivesOn: '2027-07-05',
@@ -26,7 +38,16 @@ export const registrationInput = (categoryId: string, over: Partial<Registration
   diet: 'vegetarian',
   allergies: '',
   needs: '',
-  invoice: { payer: 'self', name: 'Mira Ås', street: '', postcode: '', town: '', country: null, vatNumber: '', orderNumber: '' },
+  invoice: {
+    payer: 'self',
+    name: 'Mira Ås',
+    street: '',
+    postcode: '',
+    town: '',
+    country: null,
+    vatNumber: '',
+    orderNumber: '',
+  },
   consent: true,
   ...over,
 });

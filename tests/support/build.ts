@@ -3,7 +3,13 @@ import { transaction } from '../../server/db/transaction';
 import type { Actor } from '../../server/http/authorize';
 import { hashPassword } from '../../server/features/accounts/accounts-sign-in.service';
 import { AccountRow, RoleGrantRow } from '../../server/features/accounts/accounts.model';
-import { ensureAccountForEmail, grantRole, systemActor, type NewPerson, type PersonView } from '../../server/features/accounts/accounts.service';
+import {
+  ensureAccountForEmail,
+  grantRole,
+  systemActor,
+  type NewPerson,
+  type PersonView,
+} from '../../server/features/accounts/accounts.service';
 
 export const testPassword = 'a plain test passphrase';
 let hash: Promise<string> | undefined;
@@ -29,7 +35,13 @@ export async function buildAccount(
   await transaction(async () => {
     await AccountRow.update({ passwordHash, emailVerifiedAt: new Date() }, { where: { id: built.id } });
     for (const grant of grants) {
-      await grantRole({ accountId: built.id, role: grant.role, scope: grant.scope ?? 'institute', scopeId: grant.scopeId ?? null, by: systemActor });
+      await grantRole({
+        accountId: built.id,
+        role: grant.role,
+        scope: grant.scope ?? 'institute',
+        scopeId: grant.scopeId ?? null,
+        by: systemActor,
+      });
     }
   });
   return { ...built, hasPassword: true, emailVerified: true };

@@ -1,6 +1,13 @@
 import type { Express } from 'express';
 import request from 'supertest';
-import { fillPath, type BodyOf, type Endpoint, type ParamsOf, type QueryOf, type ResponseOf } from '../../shared/http/endpoint';
+import {
+  fillPath,
+  type BodyOf,
+  type Endpoint,
+  type ParamsOf,
+  type QueryOf,
+  type ResponseOf,
+} from '../../shared/http/endpoint';
 import { buildApp } from '../../server/app';
 import { reactions } from '../../server/jobs/registry';
 import { runDueJobs } from '../../server/jobs/worker';
@@ -38,7 +45,10 @@ export interface CallInput<E> {
 export interface Client {
   /** Sends the operation as a browser of this site would (same origin, CSRF token). */
   // eslint-disable-next-line @typescript-eslint/no-explicit-any
-  call<E extends Endpoint<any, any, any, any>>(endpoint: E, input?: CallInput<E>): Promise<Answer<ResponseOf<E>>>;
+  call<E extends Endpoint<any, any, any, any>>(
+    endpoint: E,
+    input?: CallInput<E>,
+  ): Promise<Answer<ResponseOf<E>>>;
   /** A bare request with this client's cookies. */
   get(path: string): request.Test;
 }
@@ -64,14 +74,21 @@ export function clientOf(app: Express): Client {
       if (input.version !== undefined) test = test.set('If-Match', `"v${input.version}"`);
       for (const [name, value] of Object.entries(input.headers ?? {})) test = test.set(name, value);
       if (input.file) {
-        for (const [key, value] of Object.entries((input.body ?? {}) as Record<string, unknown>)) test = test.field(key, String(value));
+        for (const [key, value] of Object.entries((input.body ?? {}) as Record<string, unknown>))
+          test = test.field(key, String(value));
         test = test.attach(input.file.field, input.file.content, input.file.name);
       } else if (input.body !== undefined) {
         test = test.send(input.body as object);
       }
       const response = await test;
-      const body = response.headers['content-type']?.includes('problem+json') ? (JSON.parse(response.text || response.body.toString()) as never) : response.body;
-      return { status: response.status, body: body as never, headers: response.headers as Record<string, string> };
+      const body = response.headers['content-type']?.includes('problem+json')
+        ? (JSON.parse(response.text || response.body.toString()) as never)
+        : response.body;
+      return {
+        status: response.status,
+        body: body as never,
+        headers: response.headers as Record<string, string>,
+      };
     },
   };
 }
@@ -115,7 +132,8 @@ export async function startTestApp(): Promise<TestApp> {
       const client = clientOf(app);
       const email = typeof account === 'string' ? account : account.email;
       const answer = await client.call(signIn, { body: { email, password: testPassword, stay: false } });
-      if (answer.status !== 200) throw new Error(`sign-in failed: ${answer.status} ${JSON.stringify(answer.body)}`);
+      if (answer.status !== 200)
+        throw new Error(`sign-in failed: ${answer.status} ${JSON.stringify(answer.body)}`);
       return client;
     },
     runJobs: async () => {

@@ -95,5 +95,7 @@ export const up: Migration['up'] = ({ context }) =>
 export const down: Migration['down'] = ({ context }) =>
   statements(
     context,
-    ['jobs', 'audit_entries', 'sessions', 'tokens', 'role_grants', 'accounts'].map((table) => `DROP TABLE ${table}`),
+    ['jobs', 'audit_entries', 'sessions', 'tokens', 'role_grants', 'accounts'].map(
+      (table) => `DROP TABLE ${table}`,
+    ),
   );

@@ -65,4 +65,7 @@ export const up: Migration['up'] = ({ context }) =>
   ]);
 
 export const down: Migration['down'] = ({ context }) =>
-  statements(context, ['deadlines', 'session_blocks', 'rooms', 'events'].map((table) => `DROP TABLE ${table}`));
+  statements(
+    context,
+    ['deadlines', 'session_blocks', 'rooms', 'events'].map((table) => `DROP TABLE ${table}`),
+  );

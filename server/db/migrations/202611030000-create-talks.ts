@@ -120,5 +120,14 @@ export const up: Migration['up'] = ({ context }) =>
 export const down: Migration['down'] = ({ context }) =>
   statements(
     context,
-    ['consents', 'material_versions', 'materials', 'presences', 'prerequisites', 'talk_people', 'talks', 'courses'].map((t) => `DROP TABLE ${t}`),
+    [
+      'consents',
+      'material_versions',
+      'materials',
+      'presences',
+      'prerequisites',
+      'talk_people',
+      'talks',
+      'courses',
+    ].map((t) => `DROP TABLE ${t}`),
   );

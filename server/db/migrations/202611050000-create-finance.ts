@@ -126,5 +126,14 @@ export const up: Migration['up'] = ({ context }) =>
 export const down: Migration['down'] = ({ context }) =>
   statements(
     context,
-    ['journal_lines', 'journal_entries', 'provider_events', 'payments', 'order_lines', 'orders', 'extras', 'fee_categories'].map((t) => `DROP TABLE ${t}`),
+    [
+      'journal_lines',
+      'journal_entries',
+      'provider_events',
+      'payments',
+      'order_lines',
+      'orders',
+      'extras',
+      'fee_categories',
+    ].map((t) => `DROP TABLE ${t}`),
   );

@@ -47,4 +47,8 @@ export const up: Migration['up'] = ({ context }) =>
            > (SELECT capacity FROM events WHERE id = NEW.event_id); END`,
   ]);
 
-export const down: Migration['down'] = ({ context }) => statements(context, ['applications', 'registrations'].map((t) => `DROP TABLE ${t}`));
+export const down: Migration['down'] = ({ context }) =>
+  statements(
+    context,
+    ['applications', 'registrations'].map((t) => `DROP TABLE ${t}`),
+  );

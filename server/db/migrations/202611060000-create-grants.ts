@@ -80,4 +80,16 @@ export const up: Migration['up'] = ({ context }) =>
   ]);
 
 export const down: Migration['down'] = ({ context }) =>
-  statements(context, ['award_talks', 'award_lines', 'awards', 'grant_reviews', 'grant_evidence', 'grant_items', 'grant_applications', 'funds'].map((t) => `DROP TABLE ${t}`));
+  statements(
+    context,
+    [
+      'award_talks',
+      'award_lines',
+      'awards',
+      'grant_reviews',
+      'grant_evidence',
+      'grant_items',
+      'grant_applications',
+      'funds',
+    ].map((t) => `DROP TABLE ${t}`),
+  );

@@ -34,4 +34,8 @@ export const up: Migration['up'] = ({ context }) =>
     )`,
   ]);
 
-export const down: Migration['down'] = ({ context }) => statements(context, ['calendar_feeds', 'calendar_invitations'].map((t) => `DROP TABLE ${t}`));
+export const down: Migration['down'] = ({ context }) =>
+  statements(
+    context,
+    ['calendar_feeds', 'calendar_invitations'].map((t) => `DROP TABLE ${t}`),
+  );

@@ -17,4 +17,8 @@ export const up: Migration['up'] = ({ context }) =>
   ]);
 
 export const down: Migration['down'] = ({ context }) =>
-  statements(context, ['DROP TABLE letter_refusals', 'DELETE FROM calendar_feeds', 'ALTER TABLE calendar_feeds RENAME COLUMN token_hash TO token']);
+  statements(context, [
+    'DROP TABLE letter_refusals',
+    'DELETE FROM calendar_feeds',
+    'ALTER TABLE calendar_feeds RENAME COLUMN token_hash TO token',
+  ]);

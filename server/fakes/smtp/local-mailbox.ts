@@ -37,9 +37,14 @@ let running: LocalMailbox | undefined;
 export const localMailbox = (): LocalMailbox | undefined => running;
 
 /** A real SMTP server on loopback whose letters are kept and can be read; nothing goes out. */
-export async function startLocalMailbox(options: { port?: number; forget?: boolean } = {}): Promise<LocalMailbox> {
-  if (env.NODE_ENV === 'production' && !env.ALLOW_FAKES.includes('smtp')) throw new Error('the local mailbox does not run in production unless it is named');
-  const box = new Mailbox(options.forget ? null : path.join(path.dirname(env.DATABASE_FILE), 'local-mailbox.jsonl'));
+export async function startLocalMailbox(
+  options: { port?: number; forget?: boolean } = {},
+): Promise<LocalMailbox> {
+  if (env.NODE_ENV === 'production' && !env.ALLOW_FAKES.includes('smtp'))
+    throw new Error('the local mailbox does not run in production unless it is named');
+  const box = new Mailbox(
+    options.forget ? null : path.join(path.dirname(env.DATABASE_FILE), 'local-mailbox.jsonl'),
+  );
   const server = new SMTPServer({
     authOptional: true,
     disableReverseLookup: true, // there is no name server to ask on loopback; waiting for one made each letter slow
@@ -96,7 +101,12 @@ class Mailbox {
       throw Object.assign(new Error(message), { responseCode: code });
     }
     const recipients = session.envelope.rcptTo.map(({ address }) => address);
-    const twin = parsed.messageId && this.mails.find((mail) => mail.messageId === parsed.messageId && mail.recipients.join() === recipients.join().toLowerCase());
+    const twin =
+      parsed.messageId &&
+      this.mails.find(
+        (mail) =>
+          mail.messageId === parsed.messageId && mail.recipients.join() === recipients.join().toLowerCase(),
+      );
     if (twin) return `had it already as ${twin.id}`;
     const mail = storedMail(parsed, `mail-${++this.serial}-${Date.now().toString(36)}`, recipients);
     this.file.append(mail);

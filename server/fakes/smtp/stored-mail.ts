@@ -30,10 +30,14 @@ export interface StoredMail {
 const KEPT_BYTES = 1_000_000;
 
 const addresses = (value: AddressObject | AddressObject[] | undefined): string =>
-  [value ?? []].flat().map((entry) => entry.text).join(', ');
+  [value ?? []]
+    .flat()
+    .map((entry) => entry.text)
+    .join(', ');
 
 /** Reads METHOD from the object itself: the Content-Type only repeats it (RFC 6047 section 2.4). */
-const methodOf = (calendar: string): string | null => /^METHOD:(\w+)\s*$/m.exec(calendar)?.[1]?.toUpperCase() ?? null;
+const methodOf = (calendar: string): string | null =>
+  /^METHOD:(\w+)\s*$/m.exec(calendar)?.[1]?.toUpperCase() ?? null;
 
 const kept = (part: Attachment): StoredAttachment => ({
   name: part.filename ?? 'part',
@@ -44,7 +48,9 @@ const kept = (part: Attachment): StoredAttachment => ({
 
 /** What is kept of a parsed letter. */
 export function storedMail(parsed: ParsedMail, id: string, recipients: string[]): StoredMail {
-  const part = parsed.attachments.find(({ contentType }) => contentType === 'text/calendar' || contentType === 'application/ics');
+  const part = parsed.attachments.find(
+    ({ contentType }) => contentType === 'text/calendar' || contentType === 'application/ics',
+  );
   const calendar = part?.content.toString('utf8') ?? null;
   return {
     id,
@@ -60,6 +66,9 @@ export function storedMail(parsed: ParsedMail, id: string, recipients: string[])
     calendarMethod: calendar && methodOf(calendar),
     // The alternative and the attached file are the same invitation: the one with a name is shown.
     attachments: parsed.attachments.filter(({ filename }) => filename !== undefined).map(kept),
-    headers: parsed.headerLines.map(({ key, line }) => ({ name: key, value: line.slice(line.indexOf(':') + 1).trim() })),
+    headers: parsed.headerLines.map(({ key, line }) => ({
+      name: key,
+      value: line.slice(line.indexOf(':') + 1).trim(),
+    })),
   };
 }

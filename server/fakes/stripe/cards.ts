@@ -1,7 +1,15 @@
 /** Documented test cards and their outcomes (docs.stripe.com/testing). Any future expiry, any CVC. */
-export type CardOutcome = { kind: 'paid' } | { kind: 'declined'; code: string; declineCode: string; message: string } | { kind: 'authenticate' };
+export type CardOutcome =
+  | { kind: 'paid' }
+  | { kind: 'declined'; code: string; declineCode: string; message: string }
+  | { kind: 'authenticate' };
 
-const declined = (code: string, declineCode: string, message: string): CardOutcome => ({ kind: 'declined', code, declineCode, message });
+const declined = (code: string, declineCode: string, message: string): CardOutcome => ({
+  kind: 'declined',
+  code,
+  declineCode,
+  message,
+});
 
 const OUTCOMES: Record<string, CardOutcome> = {
   '4242424242424242': { kind: 'paid' },
@@ -14,7 +22,11 @@ const OUTCOMES: Record<string, CardOutcome> = {
   '4000000000009979': declined('card_declined', 'stolen_card', 'Your card was declined.'),
   '4000000000000069': declined('expired_card', 'expired_card', 'Your card has expired.'),
   '4000000000000127': declined('incorrect_cvc', 'incorrect_cvc', "Your card's security code is incorrect."),
-  '4000000000000119': declined('processing_error', 'processing_error', 'An error occurred while processing your card. Try again in a little bit.'),
+  '4000000000000119': declined(
+    'processing_error',
+    'processing_error',
+    'An error occurred while processing your card. Try again in a little bit.',
+  ),
   '4000002500003155': { kind: 'authenticate' },
   '4000002760003184': { kind: 'authenticate' },
 };
@@ -30,6 +42,14 @@ export function luhn(number: string): boolean {
 
 export function outcomeOf(number: string): CardOutcome {
   const digits = number.replace(/[\s-]/g, '');
-  if (!luhn(digits)) return declined('incorrect_number', 'incorrect_number', 'Your card number is incorrect.');
-  return OUTCOMES[digits] ?? declined('card_declined', 'test_mode_live_card', 'This is a test page. Use one of the test cards listed below.');
+  if (!luhn(digits))
+    return declined('incorrect_number', 'incorrect_number', 'Your card number is incorrect.');
+  return (
+    OUTCOMES[digits] ??
+    declined(
+      'card_declined',
+      'test_mode_live_card',
+      'This is a test page. Use one of the test cards listed below.',
+    )
+  );
 }

@@ -3,7 +3,8 @@ export function readForm(body: string): Record<string, unknown> {
   const root: Record<string, unknown> = {};
   for (const [key, value] of new URLSearchParams(body)) {
     const parts = key.split(/\[|\]\[|\]/).filter((part) => part !== '');
-    if (parts.some((part) => part === '__proto__' || part === 'constructor' || part === 'prototype')) continue;
+    if (parts.some((part) => part === '__proto__' || part === 'constructor' || part === 'prototype'))
+      continue;
     let place = root;
     parts.slice(0, -1).forEach((part) => {
       place[part] ??= {};

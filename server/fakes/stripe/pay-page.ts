@@ -3,9 +3,19 @@ import type { FakeSession } from './state';
 const escape = (text: string): string => text.replace(/[&<>"']/g, (c) => `&#${c.charCodeAt(0)};`);
 
 /** The stand-in's own plain payment page. It says what it is. */
-export function payPage(session: FakeSession, options: { message?: string; authenticate?: boolean } = {}): string {
-  const digits = new Intl.NumberFormat('en', { style: 'currency', currency: session.currency.toUpperCase() }).resolvedOptions().maximumFractionDigits ?? 2;
-  const amount = new Intl.NumberFormat('en-GB', { style: 'currency', currency: session.currency.toUpperCase() }).format(session.amount_total / 10 ** digits);
+export function payPage(
+  session: FakeSession,
+  options: { message?: string; authenticate?: boolean } = {},
+): string {
+  const digits =
+    new Intl.NumberFormat('en', {
+      style: 'currency',
+      currency: session.currency.toUpperCase(),
+    }).resolvedOptions().maximumFractionDigits ?? 2;
+  const amount = new Intl.NumberFormat('en-GB', {
+    style: 'currency',
+    currency: session.currency.toUpperCase(),
+  }).format(session.amount_total / 10 ** digits);
   const form = options.authenticate
     ? `<p>The bank of this card asks for a confirmation.</p><form method="post"><input type="hidden" name="confirm" value="yes"><button>Confirm the payment</button></form><form method="post"><input type="hidden" name="confirm" value="no"><button class="quiet">Do not confirm</button></form>`
     : `<form method="post"><label for="card">Card number</label><input id="card" name="card" inputmode="numeric" autocomplete="off" autofocus>

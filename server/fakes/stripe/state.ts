@@ -75,7 +75,8 @@ export class FakeState {
 
   constructor(private readonly file: string | null) {
     const empty: State = { sessions: {}, intents: {}, refunds: {}, events: [], answers: {} };
-    this.all = file && existsSync(file) ? { ...empty, ...(JSON.parse(readFileSync(file, 'utf8')) as State) } : empty;
+    this.all =
+      file && existsSync(file) ? { ...empty, ...(JSON.parse(readFileSync(file, 'utf8')) as State) } : empty;
   }
 
   save(): void {
@@ -86,7 +87,9 @@ export class FakeState {
 
   /** Closes what has run out of time, as the real service does. */
   expireOld(): FakeSession[] {
-    const old = Object.values(this.all.sessions).filter((session) => session.status === 'open' && session.expires_at <= seconds());
+    const old = Object.values(this.all.sessions).filter(
+      (session) => session.status === 'open' && session.expires_at <= seconds(),
+    );
     for (const session of old) Object.assign(session, { status: 'expired', url: null });
     return old;
   }

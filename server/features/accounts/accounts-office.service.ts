@@ -45,7 +45,11 @@ export async function ownAccount(accountId: string): Promise<Account> {
 }
 
 /** Who is signed in, as the client gets it; `accountId` is given when the session was opened in this very request. */
-export async function sessionFor(req: Request, res: Response, accountId: string | undefined): Promise<Session> {
+export async function sessionFor(
+  req: Request,
+  res: Response,
+  accountId: string | undefined,
+): Promise<Session> {
   return {
     account: accountId ? await ownAccount(accountId) : null,
     csrfToken: (res.locals.csrfToken as string | undefined) ?? csrfToken(req, res),
@@ -76,14 +80,24 @@ export async function saveProfile(actor: Actor, version: number, input: ProfileI
 }
 
 /** Accounts in the order of names, from a cursor on. */
-export async function listAccounts(query: { cursor?: string; limit: number; q?: string; role?: Role }): Promise<Page<unknown>> {
+export async function listAccounts(query: {
+  cursor?: string;
+  limit: number;
+  q?: string;
+  role?: Role;
+}): Promise<Page<unknown>> {
   const conditions: WhereOptions[] = [];
   if (query.q) {
     const like = `%${foldCase(query.q).replace(/[\\%_]/g, (c) => `\\${c}`)}%`;
-    conditions.push({ [Op.or]: ['sortName', 'email', 'affiliation'].map((column) => ({ [column]: { [Op.like]: like } })) });
+    conditions.push({
+      [Op.or]: ['sortName', 'email', 'affiliation'].map((column) => ({ [column]: { [Op.like]: like } })),
+    });
   }
   if (query.role) {
-    const holders = await RoleGrantRow.findAll({ where: { role: query.role, endedAt: null }, attributes: ['accountId'] });
+    const holders = await RoleGrantRow.findAll({
+      where: { role: query.role, endedAt: null },
+      attributes: ['accountId'],
+    });
     conditions.push({ id: holders.map((grant) => grant.accountId) });
   }
   if (query.cursor) {
@@ -100,12 +114,19 @@ export async function listAccounts(query: { cursor?: string; limit: number; q?: 
   const names = await namesOf(grants);
   const last = page[page.length - 1];
   return {
-    items: page.map((row) => presentAccountRow(row, grants.filter((grant) => grant.accountId === row.id), names)),
+    items: page.map((row) =>
+      presentAccountRow(
+        row,
+        grants.filter((grant) => grant.accountId === row.id),
+        names,
+      ),
+    ),
     next: rows.length > query.limit && last ? encodeCursor([last.sortName, last.id]) : null,
   };
 }
 
-export const encodeCursor = (parts: string[]): string => Buffer.from(JSON.stringify(parts)).toString('base64url');
+export const encodeCursor = (parts: string[]): string =>
+  Buffer.from(JSON.stringify(parts)).toString('base64url');
 export function decodeCursor(cursor: string): string[] {
   try {
     return (JSON.parse(Buffer.from(cursor, 'base64url').toString()) as unknown[]).map(String);
@@ -124,7 +145,14 @@ export async function accountRow(accountId: string) {
 /** Sends a link that opens an account with a role. @throws 403 unless the actor may give that role. */
 export async function createInvitation(
   actor: Actor,
-  input: { email: string; givenName: string; familyName: string; role: Role; scope: Scope; scopeId: string | null },
+  input: {
+    email: string;
+    givenName: string;
+    familyName: string;
+    role: Role;
+    scope: Scope;
+    scopeId: string | null;
+  },
 ): Promise<void> {
   const { role, scope, scopeId } = input;
   if (!roleFitsScope(role, scope) || (scope === 'institute') !== (scopeId === null)) {
@@ -135,7 +163,15 @@ export async function createInvitation(
   if (scopeId && !names.has(scopeId)) throw invalid({ scopeId: 'This event or fund does not exist.' });
   const scopeTitle = scopeId ? (names.get(scopeId)?.title ?? '') : env.INSTITUTE_NAME;
   await transaction(async () => {
-    const data = { role, scope, scopeId, scopeTitle, givenName: input.givenName, familyName: input.familyName, by: actor.accountId };
+    const data = {
+      role,
+      scope,
+      scopeId,
+      scopeTitle,
+      givenName: input.givenName,
+      familyName: input.familyName,
+      by: actor.accountId,
+    };
     const token = await issueToken({ purpose: 'invitation', email: input.email, data, hours: 14 * 24 });
     await queueMessage({
       letter: 'accounts.invitation',
@@ -211,10 +247,16 @@ export async function acceptInvitation(
     const row = await redeemToken('invitation', token);
     const data = row.data as InvitationData;
     const person = await ensureAccountForEmail({ ...data, email: row.email as string });
-    if (passwordHash && person.hasPassword) throw forbidden('A password has been set meanwhile. Sign in with it.');
+    if (passwordHash && person.hasPassword)
+      throw forbidden('A password has been set meanwhile. Sign in with it.');
     if (passwordHash) await setPassword(person.id, passwordHash);
     const inviter = await accountById(data.by);
-    const by: Actor = { accountId: data.by, email: '', printedName: inviter?.printedName ?? 'Analemma', grants: [] };
+    const by: Actor = {
+      accountId: data.by,
+      email: '',
+      printedName: inviter?.printedName ?? 'Analemma',
+      grants: [],
+    };
     await grantRole({ accountId: person.id, role: data.role, scope: data.scope, scopeId: data.scopeId, by });
     return person.id;
   });
@@ -223,13 +265,26 @@ export async function acceptInvitation(
 }
 
 /** The audit trail, newest first. */
-export async function listAudit(query: { cursor?: string; limit: number; action?: string; q?: string }): Promise<Page<unknown>> {
+export async function listAudit(query: {
+  cursor?: string;
+  limit: number;
+  action?: string;
+  q?: string;
+}): Promise<Page<unknown>> {
   const conditions: WhereOptions[] = [];
   if (query.action) conditions.push({ action: { [Op.startsWith]: query.action } });
-  if (query.q) conditions.push({ actorName: { [Op.like]: `%${query.q.replace(/[\\%_]/g, (c) => `\\${c}`)}%` } });
+  if (query.q)
+    conditions.push({ actorName: { [Op.like]: `%${query.q.replace(/[\\%_]/g, (c) => `\\${c}`)}%` } });
   if (query.cursor) conditions.push({ id: { [Op.lt]: decodeCursor(query.cursor)[0] ?? '' } });
-  const rows = await AuditRow.findAll({ where: { [Op.and]: conditions }, order: [['id', 'DESC']], limit: query.limit + 1 });
+  const rows = await AuditRow.findAll({
+    where: { [Op.and]: conditions },
+    order: [['id', 'DESC']],
+    limit: query.limit + 1,
+  });
   const page = rows.slice(0, query.limit);
   const last = page[page.length - 1];
-  return { items: page.map(presentAudit), next: rows.length > query.limit && last ? encodeCursor([last.id]) : null };
+  return {
+    items: page.map(presentAudit),
+    next: rows.length > query.limit && last ? encodeCursor([last.id]) : null,
+  };
 }

@@ -16,7 +16,10 @@ export async function actorOf(req: Request): Promise<Actor | null> {
   const now = Date.now();
   if (!session || session.endedAt || session.expiresAt.getTime() < now) return null;
   if (session.lastSeenAt.getTime() + session.idleSeconds * 1000 < now) return null;
-  const [account, grants] = await Promise.all([AccountRow.findByPk(session.accountId), RoleGrantRow.openOf(session.accountId)]);
+  const [account, grants] = await Promise.all([
+    AccountRow.findByPk(session.accountId),
+    RoleGrantRow.openOf(session.accountId),
+  ]);
   if (!account || account.disabledAt) return null;
   if (now - session.lastSeenAt.getTime() > SEEN_EVERY_MS) {
     await transaction(() => session.update({ lastSeenAt: new Date(now) }));

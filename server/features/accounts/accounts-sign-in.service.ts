@@ -21,7 +21,13 @@ import {
 import { queueMessage } from '@server/mail/outbox';
 import { knownAddressLetter, resetLetter, verificationLetter } from './accounts.mail';
 import { AccountRow, SessionRow } from './accounts.model';
-import { ensureAccountForEmail, issueToken, recordAudit, redeemToken, revokeTokens } from './accounts.service';
+import {
+  ensureAccountForEmail,
+  issueToken,
+  recordAudit,
+  redeemToken,
+  revokeTokens,
+} from './accounts.service';
 
 /** argon2id with the OWASP minimum: 19 MiB, 2 passes, 1 lane (Password Storage Cheat Sheet). */
 const ARGON = { type: argon2.argon2id, memoryCost: 19_456, timeCost: 2, parallelism: 1 } as const;
@@ -52,13 +58,22 @@ async function checkPassword(email: string, password: string): Promise<AccountRo
 }
 
 /** Checks address and password (passport-local) and opens a session. @throws 401 with the same words for every reason; 429 while waiting; 403 before the address is confirmed. */
-export async function signIn(req: Request, res: Response, input: { email: string; password: string; stay: boolean }) {
+export async function signIn(
+  req: Request,
+  res: Response,
+  input: { email: string; password: string; stay: boolean },
+) {
   const keys = [`account:${input.email}`, `address:${req.ip ?? ''}`];
   signInDelay.check(keys);
   req.body = input;
   const account = await new Promise<AccountRow | false>((resolve, reject) => {
-    const done = (error: unknown, user?: unknown): void => (error ? reject(error as Error) : resolve((user || false) as AccountRow | false));
-    (passport.authenticate('local', { session: false }, done) as (...args: unknown[]) => void)(req, res, reject);
+    const done = (error: unknown, user?: unknown): void =>
+      error ? reject(error as Error) : resolve((user || false) as AccountRow | false);
+    (passport.authenticate('local', { session: false }, done) as (...args: unknown[]) => void)(
+      req,
+      res,
+      reject,
+    );
   });
   if (!account) {
     signInDelay.failed(keys);
@@ -74,7 +89,12 @@ export async function signIn(req: Request, res: Response, input: { email: string
 }
 
 /** Opens a session with a new secret (never the one that a browser brought) and a new CSRF token. */
-export async function openSession(req: Request, res: Response, accountId: string, stay = false): Promise<void> {
+export async function openSession(
+  req: Request,
+  res: Response,
+  accountId: string,
+  stay = false,
+): Promise<void> {
   const secret = newSessionSecret();
   const limits = sessionLimits(stay);
   const now = new Date();
@@ -98,7 +118,9 @@ export async function openSession(req: Request, res: Response, accountId: string
 export async function signOut(req: Request, res: Response): Promise<void> {
   const secret = sessionSecret(req);
   if (secret) {
-    await transaction(() => SessionRow.update({ endedAt: new Date() }, { where: { id: hashSecret(secret), endedAt: null } }));
+    await transaction(() =>
+      SessionRow.update({ endedAt: new Date() }, { where: { id: hashSecret(secret), endedAt: null } }),
+    );
   }
   clearSessionCookie(res);
   renewCsrf(res);
@@ -147,7 +169,12 @@ export async function signUp(
 
 async function sendVerification(account: AccountRow, passwordHash?: string): Promise<void> {
   await transaction(async () => {
-    const token = await issueToken({ purpose: 'verify', accountId: account.id, data: { passwordHash }, hours: 48 });
+    const token = await issueToken({
+      purpose: 'verify',
+      accountId: account.id,
+      data: { passwordHash },
+      hours: 48,
+    });
     await queueMessage({
       letter: 'accounts.verification',
       accountId: account.id,
@@ -170,7 +197,12 @@ export async function verifyEmail(req: Request, res: Response, token: string): P
     const account = (await AccountRow.findByPk(row.accountId as string)) as AccountRow;
     const waiting = (row.data as { passwordHash?: string } | null)?.passwordHash;
     await account.update({ emailVerifiedAt: new Date(), ...(waiting && { passwordHash: waiting }) });
-    await recordAudit({ actor: null, action: 'accounts.verified', subject: 'account', subjectId: account.id });
+    await recordAudit({
+      actor: null,
+      action: 'accounts.verified',
+      subject: 'account',
+      subjectId: account.id,
+    });
     return account.id;
   });
   await openSession(req, res, accountId);
@@ -198,7 +230,11 @@ export async function askReset(req: Request, email: string): Promise<void> {
 }
 
 /** Sets the password of the link's account, ends all its sessions, opens a new one. The link proves the address, too. */
-export async function resetPassword(req: Request, res: Response, input: { token: string; password: string }): Promise<string> {
+export async function resetPassword(
+  req: Request,
+  res: Response,
+  input: { token: string; password: string },
+): Promise<string> {
   const passwordHash = await hashPassword(input.password);
   const accountId = await transaction(async () => {
     const row = await redeemToken('reset', input.token);
@@ -218,7 +254,12 @@ export function setPassword(accountId: string, passwordHash: string): Promise<vo
     await account.update({ passwordHash, emailVerifiedAt: account.emailVerifiedAt ?? new Date() });
     await SessionRow.update({ endedAt: new Date() }, { where: { accountId, endedAt: null } });
     await revokeTokens({ purpose: 'reset', accountId });
-    await recordAudit({ actor: null, action: 'accounts.password_set', subject: 'account', subjectId: accountId });
+    await recordAudit({
+      actor: null,
+      action: 'accounts.password_set',
+      subject: 'account',
+      subjectId: accountId,
+    });
   });
 }
 

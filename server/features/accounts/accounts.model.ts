@@ -97,7 +97,15 @@ export function initialiseAccounts(sequelize: Sequelize): void {
     { sequelize, modelName: 'accounts', version: true },
   );
   RoleGrantRow.init(
-    { id: key(), accountId: text(), role: text(), scope: text(), scopeId: optionalText(), grantedBy: optionalText(), endedAt: optionalAt() },
+    {
+      id: key(),
+      accountId: text(),
+      role: text(),
+      scope: text(),
+      scopeId: optionalText(),
+      grantedBy: optionalText(),
+      endedAt: optionalAt(),
+    },
     { sequelize, modelName: 'role_grants' },
   );
   TokenRow.init(

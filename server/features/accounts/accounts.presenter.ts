@@ -1,4 +1,8 @@
-import type { Account, AccountRow as AccountListRow, Grant } from '@shared/features/accounts/accounts.contract';
+import type {
+  Account,
+  AccountRow as AccountListRow,
+  Grant,
+} from '@shared/features/accounts/accounts.contract';
 import type { AccountRow, AuditRow, RoleGrantRow } from './accounts.model';
 import type { AuditRow as AuditListRow } from '@shared/features/accounts/accounts.contract';
 
@@ -19,7 +23,11 @@ export function presentGrant(grant: RoleGrantRow, names: Map<string, ScopeName>)
   };
 }
 
-export function presentAccount(row: AccountRow, grants: RoleGrantRow[], names: Map<string, ScopeName>): Account {
+export function presentAccount(
+  row: AccountRow,
+  grants: RoleGrantRow[],
+  names: Map<string, ScopeName>,
+): Account {
   return {
     id: row.id,
     email: row.email,
@@ -37,7 +45,11 @@ export function presentAccount(row: AccountRow, grants: RoleGrantRow[], names: M
   };
 }
 
-export function presentAccountRow(row: AccountRow, grants: RoleGrantRow[], names: Map<string, ScopeName>): AccountListRow {
+export function presentAccountRow(
+  row: AccountRow,
+  grants: RoleGrantRow[],
+  names: Map<string, ScopeName>,
+): AccountListRow {
   return {
     id: row.id,
     email: row.email,

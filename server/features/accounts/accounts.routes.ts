@@ -17,7 +17,15 @@ import {
   sessionFor,
 } from './accounts-office.service';
 import { endSession, openSessions } from './accounts-session.service';
-import { askReset, changePassword, resetPassword, signIn, signOut, signUp, verifyEmail } from './accounts-sign-in.service';
+import {
+  askReset,
+  changePassword,
+  resetPassword,
+  signIn,
+  signOut,
+  signUp,
+  verifyEmail,
+} from './accounts-sign-in.service';
 import { canGrantRole } from './accounts.policy';
 import { endRole, grantRole } from './accounts.service';
 
@@ -34,7 +42,8 @@ export function accountsRoutes(router: Router, demoAccounts: () => Promise<DemoA
   });
   serve(router, contract.signIn, {
     access: anyone,
-    handle: async (context) => sessionFor(context.req, context.res, (await signIn(context.req, context.res, context.body)).id),
+    handle: async (context) =>
+      sessionFor(context.req, context.res, (await signIn(context.req, context.res, context.body)).id),
   });
   serve(router, contract.signOut, { access: anyone, handle: ({ req, res }) => signOut(req, res) });
   serve(router, contract.signUp, {
@@ -46,7 +55,8 @@ export function accountsRoutes(router: Router, demoAccounts: () => Promise<DemoA
   });
   serve(router, contract.verifyEmail, {
     access: anyone,
-    handle: async (context) => sessionFor(context.req, context.res, await verifyEmail(context.req, context.res, context.body.token)),
+    handle: async (context) =>
+      sessionFor(context.req, context.res, await verifyEmail(context.req, context.res, context.body.token)),
   });
   serve(router, contract.askReset, {
     access: anyone,
@@ -57,7 +67,8 @@ export function accountsRoutes(router: Router, demoAccounts: () => Promise<DemoA
   });
   serve(router, contract.resetPassword, {
     access: anyone,
-    handle: async (context) => sessionFor(context.req, context.res, await resetPassword(context.req, context.res, context.body)),
+    handle: async (context) =>
+      sessionFor(context.req, context.res, await resetPassword(context.req, context.res, context.body)),
   });
   serve(router, contract.listDemoAccounts, {
     access: anyone,
@@ -98,12 +109,19 @@ function invitationRoutes(router: Router): void {
       return { sent: true as const };
     },
   });
-  serve(router, contract.readInvitation, { access: anyone, handle: ({ params }) => readInvitation(params.token) });
+  serve(router, contract.readInvitation, {
+    access: anyone,
+    handle: ({ params }) => readInvitation(params.token),
+  });
   serve(router, contract.acceptInvitation, {
     access: anyone,
     handle: async (context) => {
       const { req, res, maybeActor, params, body } = context;
-      return sessionFor(context.req, context.res, await acceptInvitation(req, res, maybeActor, params.token, body.password));
+      return sessionFor(
+        context.req,
+        context.res,
+        await acceptInvitation(req, res, maybeActor, params.token, body.password),
+      );
     },
   });
 }

@@ -50,7 +50,8 @@ export const personView = (row: AccountRow): PersonView => ({
   timeZone: row.timeZone,
 });
 
-export const sortNameOf = (givenName: string, familyName: string): string => foldCase(`${familyName} ${givenName}`);
+export const sortNameOf = (givenName: string, familyName: string): string =>
+  foldCase(`${familyName} ${givenName}`);
 
 /** One person, or null. */
 export async function accountById(id: string): Promise<PersonView | null> {
@@ -164,7 +165,14 @@ export function grantRole(input: {
     if (!(await AccountRow.findByPk(accountId))) throw notFound('This account');
     const open = await RoleGrantRow.findOne({ where: { accountId, role, scope, scopeId, endedAt: null } });
     if (open) return;
-    const grant = await RoleGrantRow.create({ id: newId(), accountId, role, scope, scopeId, grantedBy: by.accountId });
+    const grant = await RoleGrantRow.create({
+      id: newId(),
+      accountId,
+      role,
+      scope,
+      scopeId,
+      grantedBy: by.accountId,
+    });
     await recordAudit({
       actor: by,
       action: 'accounts.role_granted',
@@ -179,10 +187,18 @@ export function grantRole(input: {
 /** Ends a role; the row stays. The last administrator can't be ended. */
 export function endRole(input: { accountId: string; grantId: string; by: Actor }): Promise<void> {
   return transaction(async () => {
-    const grant = await RoleGrantRow.findOne({ where: { id: input.grantId, accountId: input.accountId, endedAt: null } });
+    const grant = await RoleGrantRow.findOne({
+      where: { id: input.grantId, accountId: input.accountId, endedAt: null },
+    });
     if (!grant) throw notFound('This role');
-    if (grant.role === 'administrator' && (await RoleGrantRow.count({ where: { role: 'administrator', endedAt: null } })) === 1) {
-      throw conflict('accounts.last_administrator', 'This is the last administrator. Give the role to somebody else first.');
+    if (
+      grant.role === 'administrator' &&
+      (await RoleGrantRow.count({ where: { role: 'administrator', endedAt: null } })) === 1
+    ) {
+      throw conflict(
+        'accounts.last_administrator',
+        'This is the last administrator. Give the role to somebody else first.',
+      );
     }
     await grant.update({ endedAt: new Date() });
     await recordAudit({
@@ -197,7 +213,11 @@ export function endRole(input: { accountId: string; grantId: string; by: Actor }
 }
 
 /** Who holds a role in a scope now, by name, with the grant's id. */
-export async function holdersOf(scope: Scope, scopeId: string | null, role: Role): Promise<(PersonView & { grantId: string })[]> {
+export async function holdersOf(
+  scope: Scope,
+  scopeId: string | null,
+  role: Role,
+): Promise<(PersonView & { grantId: string })[]> {
   const grants = await RoleGrantRow.findAll({ where: { scope, scopeId, role, endedAt: null } });
   const people = await accountsById(grants.map((grant) => grant.accountId));
   return grants
@@ -241,7 +261,8 @@ export function issueToken(input: {
 /** Reads a token without using it up. @throws 404 with a sentence when it is unknown, used or out of date. */
 export async function peekToken(purpose: string, raw: string): Promise<TokenRow> {
   const row = await TokenRow.findOne({ where: { purpose, hash: hashToken(raw) } });
-  if (!row || row.usedAt || row.expiresAt < new Date()) throw notFound('This link has been used, is out of date, or');
+  if (!row || row.usedAt || row.expiresAt < new Date())
+    throw notFound('This link has been used, is out of date, or');
   return row;
 }
 
@@ -255,6 +276,10 @@ export function redeemToken(purpose: string, raw: string): Promise<TokenRow> {
 }
 
 /** Ends all open tokens of a purpose for an account or subject. */
-export async function revokeTokens(where: { purpose: string; accountId?: string; subjectId?: string }): Promise<void> {
+export async function revokeTokens(where: {
+  purpose: string;
+  accountId?: string;
+  subjectId?: string;
+}): Promise<void> {
   await transaction(() => TokenRow.update({ usedAt: new Date() }, { where: { ...where, usedAt: null } }));
 }

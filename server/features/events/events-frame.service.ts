@@ -1,4 +1,9 @@
-import type { BlockInput, DeadlineInput, EventDetail, RoomInput } from '@shared/features/events/events.contract';
+import type {
+  BlockInput,
+  DeadlineInput,
+  EventDetail,
+  RoomInput,
+} from '@shared/features/events/events.contract';
 import { blockErrors, deadlineErrors, roomErrors } from '@shared/features/events/events.rules';
 import { invalid } from '@shared/http/problem';
 import { newId } from '@server/db/id';
@@ -27,7 +32,12 @@ async function changeParts(
 }
 
 /** Saves the rooms in the given order. @throws 422 when a room with placed talks is left out. */
-export function replaceRooms(actor: Actor, slug: string, version: number, rooms: RoomInput[]): Promise<EventDetail> {
+export function replaceRooms(
+  actor: Actor,
+  slug: string,
+  version: number,
+  rooms: RoomInput[],
+): Promise<EventDetail> {
   refuse(roomErrors(rooms));
   return changeParts(actor, slug, version, 'events.rooms_saved', async (event) => {
     const present = await roomsOf(event.id);
@@ -38,7 +48,8 @@ export function replaceRooms(actor: Actor, slug: string, version: number, rooms:
     }
     for (const [position, { id, ...fields }] of rooms.entries()) {
       const row = present.find((candidate) => candidate.id === id);
-      if (id && !row) throw invalid({ [`rooms.${position}.name`]: 'This room does not belong to the event.' });
+      if (id && !row)
+        throw invalid({ [`rooms.${position}.name`]: 'This room does not belong to the event.' });
       if (row) await row.update({ ...fields, position });
       else await RoomRow.create({ id: newId(), eventId: event.id, ...fields, position });
     }
@@ -47,19 +58,35 @@ export function replaceRooms(actor: Actor, slug: string, version: number, rooms:
 }
 
 /** Saves the blocks of all days; ids of blocks that stay are kept. */
-export function replaceDayFrames(actor: Actor, slug: string, version: number, blocks: BlockInput[]): Promise<EventDetail> {
+export function replaceDayFrames(
+  actor: Actor,
+  slug: string,
+  version: number,
+  blocks: BlockInput[],
+): Promise<EventDetail> {
   return changeParts(actor, slug, version, 'events.day_frames_saved', async (event) => {
     refuse(blockErrors(blocks, event));
-    const present = new Set((await BlockRow.findAll({ where: { eventId: event.id }, attributes: ['id'] })).map((row) => row.id));
+    const present = new Set(
+      (await BlockRow.findAll({ where: { eventId: event.id }, attributes: ['id'] })).map((row) => row.id),
+    );
     await BlockRow.destroy({ where: { eventId: event.id } });
     await BlockRow.bulkCreate(
-      blocks.map(({ id, ...fields }) => ({ id: id && present.has(id) ? id : newId(), eventId: event.id, ...fields })),
+      blocks.map(({ id, ...fields }) => ({
+        id: id && present.has(id) ? id : newId(),
+        eventId: event.id,
+        ...fields,
+      })),
     );
     return { blocks: blocks.length };
   });
 }
 
-export function replaceDeadlines(actor: Actor, slug: string, version: number, deadlines: DeadlineInput[]): Promise<EventDetail> {
+export function replaceDeadlines(
+  actor: Actor,
+  slug: string,
+  version: number,
+  deadlines: DeadlineInput[],
+): Promise<EventDetail> {
   refuse(deadlineErrors(deadlines));
   return changeParts(actor, slug, version, 'events.deadlines_saved', async (event) => {
     await DeadlineRow.destroy({ where: { eventId: event.id } });

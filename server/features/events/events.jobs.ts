@@ -1,3 +1,5 @@
 import { defineFact } from '@server/jobs/job';
 
-export const eventStateChanged = defineFact<{ eventId: string; from: string; to: string }>('eventStateChanged');
+export const eventStateChanged = defineFact<{ eventId: string; from: string; to: string }>(
+  'eventStateChanged',
+);

@@ -1,5 +1,11 @@
 import { Model, type Sequelize } from 'sequelize';
-import type { BlockKind, DeadlineKind, EventKind, EventState, RoomFeature } from '@shared/features/events/events.contract';
+import type {
+  BlockKind,
+  DeadlineKind,
+  EventKind,
+  EventState,
+  RoomFeature,
+} from '@shared/features/events/events.contract';
 import { flag, integer, json, key, optionalInteger, text, version } from '@server/db/columns';
 
 export class EventRow extends Model {
@@ -84,11 +90,28 @@ export function initialiseEvents(sequelize: Sequelize): void {
     { sequelize, modelName: 'events', version: true },
   );
   RoomRow.init(
-    { id: key(), eventId: text(), name: text(), shortName: text(), capacity: integer(), features: json(), position: integer() },
+    {
+      id: key(),
+      eventId: text(),
+      name: text(),
+      shortName: text(),
+      capacity: integer(),
+      features: json(),
+      position: integer(),
+    },
     { sequelize, modelName: 'rooms' },
   );
   BlockRow.init(
-    { id: key(), eventId: text(), day: text(), startsAt: text(), endsAt: text(), kind: text(), title: text(''), minimalMinutes: optionalInteger() },
+    {
+      id: key(),
+      eventId: text(),
+      day: text(),
+      startsAt: text(),
+      endsAt: text(),
+      kind: text(),
+      title: text(''),
+      minimalMinutes: optionalInteger(),
+    },
     { sequelize, modelName: 'session_blocks' },
   );
   DeadlineRow.init(

@@ -1,4 +1,10 @@
-import type { Block, Deadline, EventDetail, EventSummary, Room } from '@shared/features/events/events.contract';
+import type {
+  Block,
+  Deadline,
+  EventDetail,
+  EventSummary,
+  Room,
+} from '@shared/features/events/events.contract';
 import { nextStates, type EventFacts } from '@shared/features/events/events.rules';
 import { localToInstant } from '@shared/lib/time';
 import type { Actor } from '@server/http/authorize';
@@ -79,7 +85,9 @@ export function presentEvent(parts: EventParts, actor: Actor | null, today: stri
     admitsMinors: event.admitsMinors,
     rooms: parts.rooms.map(presentRoom),
     blocks: parts.blocks.map(presentBlock),
-    deadlines: parts.deadlines.map((row) => presentDeadline(row, event.timeZone)).sort((a, b) => a.at.localeCompare(b.at)),
+    deadlines: parts.deadlines
+      .map((row) => presentDeadline(row, event.timeZone))
+      .sort((a, b) => a.at.localeCompare(b.at)),
     version: event.version,
     nextStates: nextStates(factsOf(parts), today),
     can: {

@@ -5,7 +5,14 @@ import { inEvent, inInstitute, signedIn } from '@server/http/authorize';
 import { serve } from '@server/http/serve';
 import { endRole, holdersOf } from '@server/features/accounts/accounts.service';
 import { replaceDayFrames, replaceDeadlines, replaceRooms } from './events-frame.service';
-import { changeEventState, createEvent, eventsToWorkOn, listEvents, readEvent, updateEvent } from './events.service';
+import {
+  changeEventState,
+  createEvent,
+  eventsToWorkOn,
+  listEvents,
+  readEvent,
+  updateEvent,
+} from './events.service';
 
 const team = inEvent('organiser', 'reviewer', 'desk', 'finance');
 const organiser = inEvent('organiser');
@@ -23,14 +30,18 @@ export function eventsRoutes(router: Router): void {
     access: inInstitute('administrator'),
     handle: ({ actor, body }) => createEvent(actor, body),
   });
-  serve(router, contract.readEvent, { access: team, handle: ({ actor, params, now }) => readEvent(actor, params.event, now) });
+  serve(router, contract.readEvent, {
+    access: team,
+    handle: ({ actor, params, now }) => readEvent(actor, params.event, now),
+  });
   serve(router, contract.updateEvent, {
     access: organiser,
     handle: ({ actor, params, version, body }) => updateEvent(actor, params.event, version, body),
   });
   serve(router, contract.changeEventState, {
     access: organiser,
-    handle: ({ actor, params, version, body, now }) => changeEventState(actor, params.event, body.to, version, now),
+    handle: ({ actor, params, version, body, now }) =>
+      changeEventState(actor, params.event, body.to, version, now),
   });
   serve(router, contract.replaceRooms, {
     access: organiser,
@@ -42,7 +53,8 @@ export function eventsRoutes(router: Router): void {
   });
   serve(router, contract.replaceDeadlines, {
     access: organiser,
-    handle: ({ actor, params, version, body }) => replaceDeadlines(actor, params.event, version, body.deadlines),
+    handle: ({ actor, params, version, body }) =>
+      replaceDeadlines(actor, params.event, version, body.deadlines),
   });
   teamRoutes(router);
 }
@@ -72,7 +84,8 @@ function teamRoutes(router: Router): void {
     handle: async ({ actor, eventId, params }) => {
       const roles = ['organiser', 'reviewer', 'desk'] as const;
       const holders = (await Promise.all(roles.map((role) => holdersOf('event', eventId, role)))).flat();
-      if (!holders.some((person) => person.id === params.account && person.grantId === params.grant)) throw notFound('This role');
+      if (!holders.some((person) => person.id === params.account && person.grantId === params.grant))
+        throw notFound('This role');
       await endRole({ accountId: params.account, grantId: params.grant, by: actor });
     },
   });

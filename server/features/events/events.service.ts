@@ -1,5 +1,10 @@
 import { Op } from 'sequelize';
-import type { EventDetail, EventInput, EventState, EventSummary } from '@shared/features/events/events.contract';
+import type {
+  EventDetail,
+  EventInput,
+  EventState,
+  EventSummary,
+} from '@shared/features/events/events.contract';
 import { eventErrors, nextStates } from '@shared/features/events/events.rules';
 import { slugFrom } from '@shared/lib/ids';
 import { instantToLocal } from '@shared/lib/time';
@@ -24,7 +29,8 @@ export async function requireEvent(slug: string): Promise<EventRow> {
 }
 
 /** For the doors. */
-export const eventIdOf = async (slug: string): Promise<string | null> => (await EventRow.bySlug(slug))?.id ?? null;
+export const eventIdOf = async (slug: string): Promise<string | null> =>
+  (await EventRow.bySlug(slug))?.id ?? null;
 
 export async function eventById(id: string): Promise<EventRow> {
   const event = await EventRow.findByPk(id);
@@ -51,10 +57,14 @@ export const roomsOf = (eventId: string): Promise<RoomRow[]> =>
 export const blocksOf = (eventId: string): Promise<BlockRow[]> =>
   BlockRow.findAll({ where: { eventId }, order: ['day', 'startsAt'] });
 
-export const deadlinesOf = (eventId: string): Promise<DeadlineRow[]> => DeadlineRow.findAll({ where: { eventId } });
+export const deadlinesOf = (eventId: string): Promise<DeadlineRow[]> =>
+  DeadlineRow.findAll({ where: { eventId } });
 
 /** What a higher feature knows that the steps of an event depend on; given by routes.ts. */
-const known: { feeCategories(eventId: string): Promise<number>; placedRooms(eventId: string): Promise<Set<string>> } = {
+const known: {
+  feeCategories(eventId: string): Promise<number>;
+  placedRooms(eventId: string): Promise<Set<string>>;
+} = {
   feeCategories: async () => 0,
   placedRooms: async () => new Set(),
 };
@@ -73,7 +83,8 @@ async function partsOf(event: EventRow): Promise<EventParts> {
 }
 
 /** Today in the event's zone. */
-export const todayAt = (event: { timeZone: string }, now: Date): string => instantToLocal(now, event.timeZone).date;
+export const todayAt = (event: { timeZone: string }, now: Date): string =>
+  instantToLocal(now, event.timeZone).date;
 
 /** An event as those who work on it get it. */
 export async function readEvent(actor: Actor | null, slug: string, now = new Date()): Promise<EventDetail> {
@@ -87,9 +98,25 @@ export async function createEvent(actor: Actor, input: EventInput & { slug?: str
   refuse(eventErrors(input));
   const { slug: wanted, ...fields } = input;
   const slug = await transaction(async () => {
-    const address = await freeSlug(wanted ?? slugFrom(`${fields.shortTitle} ${fields.startsOn.slice(0, 4)}`), wanted !== undefined);
-    const row = await EventRow.create({ id: newId(), slug: address, state: 'draft', settings: {}, ...fields });
-    await recordAudit({ actor, action: 'events.created', subject: 'event', subjectId: row.id, eventId: row.id, after: { title: row.title } });
+    const address = await freeSlug(
+      wanted ?? slugFrom(`${fields.shortTitle} ${fields.startsOn.slice(0, 4)}`),
+      wanted !== undefined,
+    );
+    const row = await EventRow.create({
+      id: newId(),
+      slug: address,
+      state: 'draft',
+      settings: {},
+      ...fields,
+    });
+    await recordAudit({
+      actor,
+      action: 'events.created',
+      subject: 'event',
+      subjectId: row.id,
+      eventId: row.id,
+      after: { title: row.title },
+    });
     return row.slug;
   });
   return readEvent(actor, slug);
@@ -111,29 +138,52 @@ export const refuse = (errors: Record<string, string>): void => {
 /** Loads for a change: right version, allowed. @throws 404, 412, 403. */
 export async function eventForChange(actor: Actor, slug: string, version: number): Promise<EventRow> {
   const event = await requireEvent(slug);
-  if (!canEditEvent(actor, event)) throw forbidden(event.state === 'archived' ? 'The event is archived.' : undefined);
+  if (!canEditEvent(actor, event))
+    throw forbidden(event.state === 'archived' ? 'The event is archived.' : undefined);
   sameVersion(event.version, version);
   return event;
 }
 
-export async function updateEvent(actor: Actor, slug: string, version: number, input: EventInput): Promise<EventDetail> {
+export async function updateEvent(
+  actor: Actor,
+  slug: string,
+  version: number,
+  input: EventInput,
+): Promise<EventDetail> {
   refuse(eventErrors(input));
   await transaction(async () => {
     const event = await eventForChange(actor, slug, version);
     if (event.currency !== input.currency && (await known.feeCategories(event.id)) > 0) {
       throw invalid({ currency: 'Fees exist in the present currency. Remove them first.' });
     }
-    const outside = (await blocksOf(event.id)).find((block) => block.day < input.startsOn || block.day > input.endsOn);
-    if (outside) throw invalid({ startsOn: `There are session blocks on ${outside.day}. Remove them first.` });
+    const outside = (await blocksOf(event.id)).find(
+      (block) => block.day < input.startsOn || block.day > input.endsOn,
+    );
+    if (outside)
+      throw invalid({ startsOn: `There are session blocks on ${outside.day}. Remove them first.` });
     const before = presentSummary(event);
     await event.update(input);
-    await recordAudit({ actor, action: 'events.updated', subject: 'event', subjectId: event.id, eventId: event.id, before, after: presentSummary(event) });
+    await recordAudit({
+      actor,
+      action: 'events.updated',
+      subject: 'event',
+      subjectId: event.id,
+      eventId: event.id,
+      before,
+      after: presentSummary(event),
+    });
   });
   return readEvent(actor, slug);
 }
 
 /** Takes the event one step along its states. @throws 409 with what is missing. */
-export async function changeEventState(actor: Actor, slug: string, to: EventState, version?: number, now = new Date()): Promise<EventDetail> {
+export async function changeEventState(
+  actor: Actor,
+  slug: string,
+  to: EventState,
+  version?: number,
+  now = new Date(),
+): Promise<EventDetail> {
   await transaction(async () => {
     const event = await requireEvent(slug);
     if (!canChangeState(actor, event)) throw forbidden();
@@ -141,10 +191,19 @@ export async function changeEventState(actor: Actor, slug: string, to: EventStat
     const parts = await partsOf(event);
     const step = nextStates(factsOf(parts), todayAt(event, now)).find((candidate) => candidate.to === to);
     if (!step) throw conflict('events.no_such_step', `A ${event.state} event can’t become ${to}.`);
-    if (step.missing.length > 0) throw conflict('events.step_missing', step.missing.join(' '), { missing: step.missing });
+    if (step.missing.length > 0)
+      throw conflict('events.step_missing', step.missing.join(' '), { missing: step.missing });
     const from = event.state;
     await event.update({ state: to });
-    await recordAudit({ actor, action: 'events.state_changed', subject: 'event', subjectId: event.id, eventId: event.id, before: { state: from }, after: { state: to } });
+    await recordAudit({
+      actor,
+      action: 'events.state_changed',
+      subject: 'event',
+      subjectId: event.id,
+      eventId: event.id,
+      before: { state: from },
+      after: { state: to },
+    });
     await announce(eventStateChanged, { eventId: event.id, from, to });
   });
   return readEvent(actor, slug, now);
@@ -160,14 +219,21 @@ export async function eventsToWorkOn(actor: Actor): Promise<(EventSummary & { ro
   return rows
     .map((row) => ({
       ...presentSummary(row),
-      roles: [...new Set([...office, ...own.filter((grant) => grant.scopeId === row.id).map((grant) => grant.role)])],
+      roles: [
+        ...new Set([
+          ...office,
+          ...own.filter((grant) => grant.scopeId === row.id).map((grant) => grant.role),
+        ]),
+      ],
     }))
     .sort((a, b) => order.indexOf(a.state) - order.indexOf(b.state) || a.startsOn.localeCompare(b.startsOn));
 }
 
 export async function listEvents(query: { cursor?: string; limit: number }): Promise<Page<EventSummary>> {
   const [date = '', id = ''] = query.cursor ? query.cursor.split('~') : [];
-  const where = query.cursor ? { [Op.or]: [{ startsOn: { [Op.gt]: date } }, { startsOn: date, id: { [Op.gt]: id } }] } : {};
+  const where = query.cursor
+    ? { [Op.or]: [{ startsOn: { [Op.gt]: date } }, { startsOn: date, id: { [Op.gt]: id } }] }
+    : {};
   const rows = await EventRow.findAll({ where, order: ['startsOn', 'id'], limit: query.limit + 1 });
   const last = rows[query.limit - 1];
   return {

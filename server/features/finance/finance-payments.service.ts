@@ -5,7 +5,13 @@ import { newId } from '@server/db/id';
 import { transaction } from '@server/db/transaction';
 import { announce } from '@server/jobs/job';
 import { recordAudit } from '@server/features/accounts/accounts.service';
-import { createCheckout, expireCheckout, readCheckout, type CardNotice, type CheckoutSession } from './finance.gateway';
+import {
+  createCheckout,
+  expireCheckout,
+  readCheckout,
+  type CardNotice,
+  type CheckoutSession,
+} from './finance.gateway';
 import { paymentFailed } from './finance.jobs';
 import { OrderRow, PaymentRow, ProviderEventRow } from './finance.model';
 import { bookCardPayment } from './finance.service';
@@ -16,23 +22,53 @@ const HALF_HOUR = 30 * 60_000;
  * Opens a payment page for an order and returns its address. Amount and currency come from the order, never from the
  * browser. The order's place is kept while the page is open. An open page of the same order is used again.
  */
-export async function startCheckout(orderId: string, input: { title: string; email: string; successUrl: string; cancelUrl: string }, now: Date): Promise<{ url: string }> {
+export async function startCheckout(
+  orderId: string,
+  input: { title: string; email: string; successUrl: string; cancelUrl: string },
+  now: Date,
+): Promise<{ url: string }> {
   const order = (await OrderRow.findByPk(orderId)) as OrderRow;
-  if (order.state !== 'placed') throw conflict('finance.not_open', order.state === 'paid' ? 'This order is paid already.' : 'This order is closed. Register again.');
+  if (order.state !== 'placed')
+    throw conflict(
+      'finance.not_open',
+      order.state === 'paid' ? 'This order is paid already.' : 'This order is closed. Register again.',
+    );
   const open = await PaymentRow.findOne({ where: { orderId, state: 'pending' }, order: [['id', 'DESC']] });
   if (open) {
     const session = await readCheckout(open.providerId);
     if (sessionOutcome(session) === 'open' && session.url) return { url: session.url };
     await settle(session, now);
   }
-  const expiresAt = new Date(Math.max(now.getTime() + HALF_HOUR + 60_000, order.reservedUntil?.getTime() ?? 0, now.getTime() + HALF_HOUR + 60_000));
+  const expiresAt = new Date(
+    Math.max(
+      now.getTime() + HALF_HOUR + 60_000,
+      order.reservedUntil?.getTime() ?? 0,
+      now.getTime() + HALF_HOUR + 60_000,
+    ),
+  );
   const dayAhead = new Date(Math.min(expiresAt.getTime(), now.getTime() + 23 * 3_600_000));
   const tries = await PaymentRow.count({ where: { orderId } });
   const { amountMinor, currency } = { amountMinor: order.totalMinor, currency: order.currency };
-  const session = await createCheckout({ orderId, orderNumber: order.number, ...input, amountMinor, currency, expiresAt: dayAhead, idempotencyKey: `checkout-${orderId}-${tries}` });
+  const session = await createCheckout({
+    orderId,
+    orderNumber: order.number,
+    ...input,
+    amountMinor,
+    currency,
+    expiresAt: dayAhead,
+    idempotencyKey: `checkout-${orderId}-${tries}`,
+  });
   await transaction(async () => {
     if (!(await PaymentRow.findOne({ where: { provider: 'stripe', providerId: session.id } }))) {
-      await PaymentRow.create({ id: newId(), orderId, provider: 'stripe', providerId: session.id, amountMinor, currency, state: 'pending' });
+      await PaymentRow.create({
+        id: newId(),
+        orderId,
+        provider: 'stripe',
+        providerId: session.id,
+        amountMinor,
+        currency,
+        state: 'pending',
+      });
     }
     await OrderRow.update({ reservedUntil: dayAhead }, { where: { id: orderId, state: 'placed' } });
   });
@@ -45,7 +81,9 @@ export async function startCheckout(orderId: string, input: { title: string; ema
  */
 export async function takeNotice(notice: CardNotice, now: Date): Promise<string> {
   if (await ProviderEventRow.findByPk(notice.id)) return 'known';
-  const payment = notice.sessionId ? await PaymentRow.findOne({ where: { provider: 'stripe', providerId: notice.sessionId } }) : await latestPayment(notice.orderId);
+  const payment = notice.sessionId
+    ? await PaymentRow.findOne({ where: { provider: 'stripe', providerId: notice.sessionId } })
+    : await latestPayment(notice.orderId);
   if (!payment) return remember(notice, 'not ours', async () => undefined);
   const session = await readCheckout(payment.providerId);
   return remember(notice, 'settled', () => applySession(payment.id, session, notice, now));
@@ -64,12 +102,18 @@ function remember(notice: CardNotice, effect: string, work: () => Promise<unknow
 }
 
 /** What the present state of a session means for us. In the ambient transaction. */
-async function applySession(paymentId: string, session: CheckoutSession, notice: CardNotice | null, now: Date): Promise<void> {
+async function applySession(
+  paymentId: string,
+  session: CheckoutSession,
+  notice: CardNotice | null,
+  now: Date,
+): Promise<void> {
   const payment = (await PaymentRow.findByPk(paymentId)) as PaymentRow;
   const order = (await OrderRow.findByPk(payment.orderId)) as OrderRow;
   const outcome = sessionOutcome(session);
   if (outcome === 'paid') {
-    if (session.amountMinor !== payment.amountMinor || session.currency !== payment.currency) return flagAmount(order, payment, session);
+    if (session.amountMinor !== payment.amountMinor || session.currency !== payment.currency)
+      return flagAmount(order, payment, session);
     await bookCardPayment(order, payment, now);
     return;
   }
@@ -77,7 +121,12 @@ async function applySession(paymentId: string, session: CheckoutSession, notice:
   if (notice?.type === 'payment_intent.payment_failed' && order.state === 'placed') {
     const sentence = session.failure ?? 'The card was not charged.';
     await order.update({ lastFailure: sentence });
-    await announce(paymentFailed, { orderId: order.id, registrationId: order.registrationId, sentence, paymentId: notice.id });
+    await announce(paymentFailed, {
+      orderId: order.id,
+      registrationId: order.registrationId,
+      sentence,
+      paymentId: notice.id,
+    });
   }
 }
 
@@ -86,7 +135,14 @@ async function flagAmount(order: OrderRow, payment: PaymentRow, session: Checkou
   const why = `The card payment is ${session.amountMinor} ${session.currency}, the order ${payment.amountMinor} ${payment.currency} (minor units).`;
   if (order.oddity === why) return;
   await order.update({ oddity: why });
-  await recordAudit({ actor: null, action: 'finance.oddity', subject: 'order', subjectId: order.id, eventId: order.eventId, after: { why } });
+  await recordAudit({
+    actor: null,
+    action: 'finance.oddity',
+    subject: 'order',
+    subjectId: order.id,
+    eventId: order.eventId,
+    after: { why },
+  });
 }
 
 const settle = (session: CheckoutSession, now: Date): Promise<void> =>
@@ -97,12 +153,16 @@ const settle = (session: CheckoutSession, now: Date): Promise<void> =>
 
 /** Asks the provider about every payment that is open with us: heals what a lost notice left behind. Returns how many were asked. */
 export async function reconcile(now: Date): Promise<number> {
-  const open = await PaymentRow.findAll({ where: { state: 'pending', createdAt: { [Op.lt]: new Date(now.getTime() - 20_000) } }, limit: 100 });
+  const open = await PaymentRow.findAll({
+    where: { state: 'pending', createdAt: { [Op.lt]: new Date(now.getTime() - 20_000) } },
+    limit: 100,
+  });
   for (const payment of open) {
     const session = await readCheckout(payment.providerId);
     await settle(session, now);
     const order = (await OrderRow.findByPk(payment.orderId)) as OrderRow;
-    if (sessionOutcome(session) === 'open' && order.state !== 'placed') await expireCheckout(payment.providerId);
+    if (sessionOutcome(session) === 'open' && order.state !== 'placed')
+      await expireCheckout(payment.providerId);
   }
   return open.length;
 }

@@ -42,7 +42,13 @@ let client: Stripe | undefined;
 function stripe(): Stripe {
   if (client) return client;
   if (standIn) {
-    client = new Stripe(standIn.secretKey, { host: standIn.host, port: standIn.port, protocol: 'http', maxNetworkRetries: 2, telemetry: false });
+    client = new Stripe(standIn.secretKey, {
+      host: standIn.host,
+      port: standIn.port,
+      protocol: 'http',
+      maxNetworkRetries: 2,
+      telemetry: false,
+    });
   } else if (env.STRIPE_SECRET_KEY) {
     client = new Stripe(env.STRIPE_SECRET_KEY, { maxNetworkRetries: 2, telemetry: false });
   } else {
@@ -80,7 +86,11 @@ export async function createCheckout(input: CheckoutInput): Promise<CheckoutSess
       line_items: [
         {
           quantity: 1,
-          price_data: { currency: input.currency.toLowerCase(), unit_amount: stripeAmount(input.amountMinor, input.currency), product_data: { name: `${input.title}, order ${input.orderNumber}` } },
+          price_data: {
+            currency: input.currency.toLowerCase(),
+            unit_amount: stripeAmount(input.amountMinor, input.currency),
+            product_data: { name: `${input.title}, order ${input.orderNumber}` },
+          },
         },
       ],
     },
@@ -127,10 +137,21 @@ const TOLERANCE = 300;
  * @throws Error when it does not come from the provider.
  */
 export function readNotice(rawBody: Buffer, signature: string, now: Date): CardNotice {
-  const event = Stripe.webhooks.constructEvent(rawBody, signature, webhookSecret(), TOLERANCE, undefined, now.getTime());
+  const event = Stripe.webhooks.constructEvent(
+    rawBody,
+    signature,
+    webhookSecret(),
+    TOLERANCE,
+    undefined,
+    now.getTime(),
+  );
   const stamped = Number(/(?:^|,)t=(\d+)/.exec(signature)?.[1] ?? 0);
   if (stamped - now.getTime() / 1000 > TOLERANCE) throw new Error('the signature is from the future');
-  const object = event.data.object as { id?: string; object?: string; metadata?: Record<string, string> | null };
+  const object = event.data.object as {
+    id?: string;
+    object?: string;
+    metadata?: Record<string, string> | null;
+  };
   return {
     id: event.id,
     type: event.type,

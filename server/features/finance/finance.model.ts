@@ -1,7 +1,17 @@
 import { Model, type Sequelize } from 'sequelize';
 import type { Price } from '@shared/features/finance/finance.contract';
 import type { CareerStage } from '@shared/features/accounts/accounts.contract';
-import { at, integer, json, key, optionalAt, optionalInteger, optionalText, text, version } from '@server/db/columns';
+import {
+  at,
+  integer,
+  json,
+  key,
+  optionalAt,
+  optionalInteger,
+  optionalText,
+  text,
+  version,
+} from '@server/db/columns';
 
 export class FeeCategoryRow extends Model {
   declare id: string;
@@ -93,26 +103,81 @@ export class JournalLineRow extends Model {
 
 export function initialiseFinance(sequelize: Sequelize): void {
   FeeCategoryRow.init(
-    { id: key(), eventId: text(), name: text(), stages: json(), earlyMinor: optionalInteger(), earlyUntil: optionalText(), regularMinor: integer(), taxBasisPoints: integer(0), position: integer(), removedAt: optionalAt() },
+    {
+      id: key(),
+      eventId: text(),
+      name: text(),
+      stages: json(),
+      earlyMinor: optionalInteger(),
+      earlyUntil: optionalText(),
+      regularMinor: integer(),
+      taxBasisPoints: integer(0),
+      position: integer(),
+      removedAt: optionalAt(),
+    },
     { sequelize, modelName: 'fee_categories' },
   );
   ExtraRow.init(
-    { id: key(), eventId: text(), name: text(), priceMinor: integer(), capacity: optionalInteger(), until: optionalText(), taxBasisPoints: integer(0), hint: text(''), position: integer(), removedAt: optionalAt() },
+    {
+      id: key(),
+      eventId: text(),
+      name: text(),
+      priceMinor: integer(),
+      capacity: optionalInteger(),
+      until: optionalText(),
+      taxBasisPoints: integer(0),
+      hint: text(''),
+      position: integer(),
+      removedAt: optionalAt(),
+    },
     { sequelize, modelName: 'extras' },
   );
   OrderRow.init(
     {
-      id: key(), number: text(), eventId: text(), registrationId: text(), accountId: text(), state: text('placed'), currency: text(), totalMinor: integer(), price: json(),
-      reservedUntil: optionalAt(), paidAt: optionalAt(), lastFailure: optionalText(), oddity: optionalText(), version: version(),
+      id: key(),
+      number: text(),
+      eventId: text(),
+      registrationId: text(),
+      accountId: text(),
+      state: text('placed'),
+      currency: text(),
+      totalMinor: integer(),
+      price: json(),
+      reservedUntil: optionalAt(),
+      paidAt: optionalAt(),
+      lastFailure: optionalText(),
+      oddity: optionalText(),
+      version: version(),
     },
     { sequelize, modelName: 'orders', version: true },
   );
-  OrderLineRow.init({ id: key(), orderId: text(), kind: text(), refId: text(), quantity: integer(), netMinor: integer() }, { sequelize, modelName: 'order_lines' });
+  OrderLineRow.init(
+    { id: key(), orderId: text(), kind: text(), refId: text(), quantity: integer(), netMinor: integer() },
+    { sequelize, modelName: 'order_lines' },
+  );
   PaymentRow.init(
-    { id: key(), orderId: text(), provider: text(), providerId: text(), amountMinor: integer(), currency: text(), state: text('pending'), version: version() },
+    {
+      id: key(),
+      orderId: text(),
+      provider: text(),
+      providerId: text(),
+      amountMinor: integer(),
+      currency: text(),
+      state: text('pending'),
+      version: version(),
+    },
     { sequelize, modelName: 'payments', version: true },
   );
-  ProviderEventRow.init({ id: key(), type: text(), effect: text() }, { sequelize, modelName: 'provider_events' });
-  JournalEntryRow.init({ id: key(), voucher: text(), memo: text(), currency: text(), posted: integer(0), at: at() }, { sequelize, modelName: 'journal_entries', timestamps: false });
-  JournalLineRow.init({ id: key(), entryId: text(), account: text(), debitMinor: integer(), creditMinor: integer() }, { sequelize, modelName: 'journal_lines', timestamps: false });
+  ProviderEventRow.init(
+    { id: key(), type: text(), effect: text() },
+    { sequelize, modelName: 'provider_events' },
+  );
+  JournalEntryRow.init(
+    { id: key(), voucher: text(), memo: text(), currency: text(), posted: integer(0), at: at() },
+    { sequelize, modelName: 'journal_entries', timestamps: false },
+  );
+  JournalLineRow.init(
+    { id: key(), entryId: text(), account: text(), debitMinor: integer(), creditMinor: integer() },
+    { sequelize, modelName: 'journal_lines', timestamps: false },
+  );
 }

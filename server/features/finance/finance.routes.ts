@@ -17,6 +17,12 @@ export function financeRoutes(router: Router): void {
       return feeTableOf(eventId);
     },
   });
-  serve(router, contract.replaceFeeTable, { access: inEvent('organiser'), handle: ({ actor, params, body }) => replaceFeeTable(actor, params.event, body) });
-  serve(router, contract.readTrialBalance, { access: inInstitute('finance'), handle: async () => ({ rows: await trialBalance() }) });
+  serve(router, contract.replaceFeeTable, {
+    access: inEvent('organiser'),
+    handle: ({ actor, params, body }) => replaceFeeTable(actor, params.event, body),
+  });
+  serve(router, contract.readTrialBalance, {
+    access: inInstitute('finance'),
+    handle: async () => ({ rows: await trialBalance() }),
+  });
 }

@@ -1,6 +1,13 @@
 import { Op } from 'sequelize';
 import type { FeeTable, Order, Price } from '@shared/features/finance/finance.contract';
-import { cardPaymentEntry, feeTableErrors, orderEntry, price, reversed, type PriceInput } from '@shared/features/finance/finance.rules';
+import {
+  cardPaymentEntry,
+  feeTableErrors,
+  orderEntry,
+  price,
+  reversed,
+  type PriceInput,
+} from '@shared/features/finance/finance.rules';
 import { instantToLocal } from '@shared/lib/time';
 import { conflict, forbidden, invalid } from '@shared/http/problem';
 import { newId } from '@server/db/id';
@@ -25,9 +32,25 @@ export async function feeTableOf(eventId: string): Promise<FeeTable> {
     currency: event.currency,
     timeZone: event.timeZone,
     taxNote: String((event.settings as { taxNote?: string }).taxNote ?? ''),
-    categories: categories.map(({ id, name, stages, earlyMinor, earlyUntil, regularMinor, taxBasisPoints }) => ({ id, name, stages, earlyMinor, earlyUntil, regularMinor, taxBasisPoints })),
+    categories: categories.map(
+      ({ id, name, stages, earlyMinor, earlyUntil, regularMinor, taxBasisPoints }) => ({
+        id,
+        name,
+        stages,
+        earlyMinor,
+        earlyUntil,
+        regularMinor,
+        taxBasisPoints,
+      }),
+    ),
     extras: extras.map(({ id, name, priceMinor, capacity, until, taxBasisPoints, hint }) => ({
-      id, name, priceMinor, capacity, until, taxBasisPoints, hint,
+      id,
+      name,
+      priceMinor,
+      capacity,
+      until,
+      taxBasisPoints,
+      hint,
       left: capacity === null ? null : Math.max(0, capacity - (taken.get(id) ?? 0)),
     })),
   };
@@ -37,14 +60,19 @@ export async function feeTableOf(eventId: string): Promise<FeeTable> {
 async function piecesTaken(extraIds: string[]): Promise<Map<string, number>> {
   if (extraIds.length === 0) return new Map();
   const lines = await OrderLineRow.findAll({ where: { refId: extraIds, kind: 'extra' } });
-  const live = await OrderRow.findAll({ where: { id: [...new Set(lines.map((line) => line.orderId))], state: ['placed', 'paid'] }, attributes: ['id'] });
+  const live = await OrderRow.findAll({
+    where: { id: [...new Set(lines.map((line) => line.orderId))], state: ['placed', 'paid'] },
+    attributes: ['id'],
+  });
   const ids = new Set(live.map((order) => order.id));
   const taken = new Map<string, number>();
-  for (const line of lines) if (ids.has(line.orderId)) taken.set(line.refId, (taken.get(line.refId) ?? 0) + line.quantity);
+  for (const line of lines)
+    if (ids.has(line.orderId)) taken.set(line.refId, (taken.get(line.refId) ?? 0) + line.quantity);
   return taken;
 }
 
-export const countFeeCategories = (eventId: string): Promise<number> => FeeCategoryRow.count({ where: { eventId, removedAt: null } });
+export const countFeeCategories = (eventId: string): Promise<number> =>
+  FeeCategoryRow.count({ where: { eventId, removedAt: null } });
 
 type Editable<T> = Omit<T, 'id' | 'left'> & { id?: string };
 export interface FeeTableInput {
@@ -63,15 +91,29 @@ export async function replaceFeeTable(actor: Actor, slug: string, input: FeeTabl
     await replaceRows(FeeCategoryRow, event.id, input.categories);
     await replaceRows(ExtraRow, event.id, input.extras);
     await event.update({ settings: { ...event.settings, taxNote: input.taxNote } });
-    await recordAudit({ actor, action: 'finance.fees_saved', subject: 'event', subjectId: event.id, eventId: event.id, after: { categories: input.categories.map((row) => `${row.name} ${row.regularMinor}`) } });
+    await recordAudit({
+      actor,
+      action: 'finance.fees_saved',
+      subject: 'event',
+      subjectId: event.id,
+      eventId: event.id,
+      after: { categories: input.categories.map((row) => `${row.name} ${row.regularMinor}`) },
+    });
     return event.id;
   });
   return feeTableOf(eventId);
 }
 
-async function replaceRows(Rows: typeof FeeCategoryRow | typeof ExtraRow, eventId: string, wanted: { id?: string }[]): Promise<void> {
-  const present: (FeeCategoryRow | ExtraRow)[] = await (Rows as typeof ExtraRow).findAll({ where: { eventId, removedAt: null } });
-  for (const row of present) if (!wanted.some((entry) => entry.id === row.id)) await row.update({ removedAt: new Date() });
+async function replaceRows(
+  Rows: typeof FeeCategoryRow | typeof ExtraRow,
+  eventId: string,
+  wanted: { id?: string }[],
+): Promise<void> {
+  const present: (FeeCategoryRow | ExtraRow)[] = await (Rows as typeof ExtraRow).findAll({
+    where: { eventId, removedAt: null },
+  });
+  for (const row of present)
+    if (!wanted.some((entry) => entry.id === row.id)) await row.update({ removedAt: new Date() });
   for (const [position, { id, ...fields }] of wanted.entries()) {
     const row = present.find((candidate) => candidate.id === id);
     if (row) await row.update({ ...fields, position });
@@ -83,18 +125,31 @@ async function replaceRows(Rows: typeof FeeCategoryRow | typeof ExtraRow, eventI
 export async function priceOf(eventId: string, input: PriceInput, now: Date): Promise<Price> {
   const table = await feeTableOf(eventId);
   const today = instantToLocal(now, table.timeZone).date;
-  if (!table.categories.some((category) => category.id === input.categoryId)) throw invalid({ categoryId: 'Choose a fee category.' });
+  if (!table.categories.some((category) => category.id === input.categoryId))
+    throw invalid({ categoryId: 'Choose a fee category.' });
   for (const [index, wish] of input.extras.entries()) {
     const extra = table.extras.find((candidate) => candidate.id === wish.extraId);
     if (!extra) throw invalid({ [`extras.${index}.extraId`]: 'This is not offered.' });
-    if (wish.quantity > 0 && extra.until && extra.until < today) throw conflict('finance.extra_closed', `${extra.name} could be taken until ${extra.until}.`);
-    if (extra.left !== null && wish.quantity > extra.left) throw conflict('finance.extra_gone', extra.left === 0 ? `${extra.name} is taken.` : `Only ${extra.left} of ${extra.name} are left.`);
+    if (wish.quantity > 0 && extra.until && extra.until < today)
+      throw conflict('finance.extra_closed', `${extra.name} could be taken until ${extra.until}.`);
+    if (extra.left !== null && wish.quantity > extra.left)
+      throw conflict(
+        'finance.extra_gone',
+        extra.left === 0 ? `${extra.name} is taken.` : `Only ${extra.left} of ${extra.name} are left.`,
+      );
   }
   return price(input, table, now);
 }
 
 /** Places an order for a registration, in the ambient transaction: priced, numbered, and booked as receivable. */
-export async function placeOrder(input: { registrationId: string; eventId: string; accountId: string; wish: PriceInput; reservedUntil: Date; now: Date }): Promise<OrderRow> {
+export async function placeOrder(input: {
+  registrationId: string;
+  eventId: string;
+  accountId: string;
+  wish: PriceInput;
+  reservedUntil: Date;
+  now: Date;
+}): Promise<OrderRow> {
   return transaction(async () => {
     const { registrationId, eventId, accountId, reservedUntil, now } = input;
     const priced = await priceOf(eventId, input.wish, now);
@@ -111,9 +166,22 @@ export async function placeOrder(input: { registrationId: string; eventId: strin
       reservedUntil,
     });
     for (const line of priced.lines) {
-      await OrderLineRow.create({ id: newId(), orderId: order.id, kind: line.kind, refId: line.refId, quantity: line.quantity, netMinor: line.netMinor });
+      await OrderLineRow.create({
+        id: newId(),
+        orderId: order.id,
+        kind: line.kind,
+        refId: line.refId,
+        quantity: line.quantity,
+        netMinor: line.netMinor,
+      });
     }
-    await postJournalEntry({ voucher: `order:${order.id}`, memo: `Order ${order.number}`, currency: priced.currency, lines: orderEntry(eventId, priced), at: now });
+    await postJournalEntry({
+      voucher: `order:${order.id}`,
+      memo: `Order ${order.number}`,
+      currency: priced.currency,
+      lines: orderEntry(eventId, priced),
+      at: now,
+    });
     if (priced.totalMinor === 0) await markPaid(order, now);
     return order;
   });
@@ -132,30 +200,60 @@ export async function markPaid(order: OrderRow, now: Date): Promise<void> {
 }
 
 /** Books a card payment that has really come in; the same payment twice has no second effect. In the ambient transaction. */
-export async function bookCardPayment(order: OrderRow, payment: PaymentRow, now: Date): Promise<'booked' | 'known' | 'odd'> {
+export async function bookCardPayment(
+  order: OrderRow,
+  payment: PaymentRow,
+  now: Date,
+): Promise<'booked' | 'known' | 'odd'> {
   if (payment.state === 'paid') return 'known';
   await payment.update({ state: 'paid' });
-  await postJournalEntry({ voucher: `payment:${payment.id}`, memo: `Card payment of order ${order.number}`, currency: payment.currency, lines: cardPaymentEntry(payment.amountMinor), at: now });
+  await postJournalEntry({
+    voucher: `payment:${payment.id}`,
+    memo: `Card payment of order ${order.number}`,
+    currency: payment.currency,
+    lines: cardPaymentEntry(payment.amountMinor),
+    at: now,
+  });
   if (order.state === 'placed') {
     await markPaid(order, now);
     return 'booked';
   }
   const why = order.state === 'paid' ? 'Paid twice.' : `Paid after the order was ${order.state}.`;
   await order.update({ oddity: `${why} A person decides: refund or seat again.` });
-  await recordAudit({ actor: null, action: 'finance.oddity', subject: 'order', subjectId: order.id, eventId: order.eventId, after: { why } });
+  await recordAudit({
+    actor: null,
+    action: 'finance.oddity',
+    subject: 'order',
+    subjectId: order.id,
+    eventId: order.eventId,
+    after: { why },
+  });
   return 'odd';
 }
 
 /** Takes back an order that was not paid: reversed in the ledger. In the ambient transaction. */
-export async function closeUnpaidOrder(order: OrderRow, state: 'expired' | 'cancelled', now: Date): Promise<void> {
+export async function closeUnpaidOrder(
+  order: OrderRow,
+  state: 'expired' | 'cancelled',
+  now: Date,
+): Promise<void> {
   if (order.state !== 'placed') return;
   await order.update({ state });
-  await postJournalEntry({ voucher: `order-closed:${order.id}`, memo: `Order ${order.number} ${state}`, currency: order.currency, lines: reversed(orderEntry(order.eventId, order.price)), at: now });
+  await postJournalEntry({
+    voucher: `order-closed:${order.id}`,
+    memo: `Order ${order.number} ${state}`,
+    currency: order.currency,
+    lines: reversed(orderEntry(order.eventId, order.price)),
+    at: now,
+  });
 }
 
 /** Orders whose place was kept long enough: they expire, one transaction each. */
 export async function expireOrders(now: Date): Promise<number> {
-  const due = await OrderRow.findAll({ where: { state: 'placed', reservedUntil: { [Op.lt]: now } }, limit: 200 });
+  const due = await OrderRow.findAll({
+    where: { state: 'placed', reservedUntil: { [Op.lt]: now } },
+    limit: 200,
+  });
   for (const { id } of due) {
     await transaction(async () => {
       const order = (await OrderRow.findByPk(id)) as OrderRow;
@@ -170,7 +268,9 @@ export async function expireOrders(now: Date): Promise<number> {
 /** The order that counts for a registration: paid or placed, else the latest. */
 export async function orderOf(registrationId: string): Promise<OrderRow | null> {
   const rows = await OrderRow.findAll({ where: { registrationId }, order: [['id', 'DESC']] });
-  return rows.find((row) => row.state === 'paid') ?? rows.find((row) => row.state === 'placed') ?? rows[0] ?? null;
+  return (
+    rows.find((row) => row.state === 'paid') ?? rows.find((row) => row.state === 'placed') ?? rows[0] ?? null
+  );
 }
 
 export async function ordersOf(registrationIds: string[]): Promise<Map<string, OrderRow>> {
@@ -205,15 +305,23 @@ export interface MoneyIn {
 
 /** What has come in for an event, payment by payment, and what is still open. */
 export async function moneyIn(eventId: string): Promise<MoneyIn> {
-  const [event, orders] = await Promise.all([eventById(eventId), OrderRow.findAll({ where: { eventId, state: ['placed', 'paid'] } })]);
+  const [event, orders] = await Promise.all([
+    eventById(eventId),
+    OrderRow.findAll({ where: { eventId, state: ['placed', 'paid'] } }),
+  ]);
   const paid = orders.filter((order) => order.state === 'paid' && order.paidAt && order.totalMinor > 0);
   return {
     currency: event.currency,
     receivedMinor: paid.reduce((sum, order) => sum + order.totalMinor, 0),
-    openMinor: orders.filter((order) => order.state === 'placed').reduce((sum, order) => sum + order.totalMinor, 0),
-    steps: paid.map((order) => ({ at: (order.paidAt as Date).toISOString(), amountMinor: order.totalMinor })).sort((a, b) => a.at.localeCompare(b.at)),
+    openMinor: orders
+      .filter((order) => order.state === 'placed')
+      .reduce((sum, order) => sum + order.totalMinor, 0),
+    steps: paid
+      .map((order) => ({ at: (order.paidAt as Date).toISOString(), amountMinor: order.totalMinor }))
+      .sort((a, b) => a.at.localeCompare(b.at)),
   };
 }
 
 /** Orders of an event that a person must look at. */
-export const odditiesOf = (eventId: string): Promise<number> => OrderRow.count({ where: { eventId, oddity: { [Op.ne]: null } } });
+export const odditiesOf = (eventId: string): Promise<number> =>
+  OrderRow.count({ where: { eventId, oddity: { [Op.ne]: null } } });

@@ -12,7 +12,14 @@ import { requireEvent, todayAt } from '@server/features/events/events.service';
 import { postJournalEntry } from '@server/features/finance/finance-ledger.service';
 import { readMyGrant } from './grants-applications.service';
 import { countsOf, sendingRefused } from './grants-board.service';
-import { caseOf, grantDates, openAwards, submittedCases, type AwardCase, type GrantCase } from './grants-cases.service';
+import {
+  caseOf,
+  grantDates,
+  openAwards,
+  submittedCases,
+  type AwardCase,
+  type GrantCase,
+} from './grants-cases.service';
 import { awardAnswered, awardsOffered, grantNotAwarded } from './grants.jobs';
 import { AwardLineRow, AwardRow, FundRow, GrantApplicationRow } from './grants.model';
 import { canPropose } from './grants.policy';
@@ -23,12 +30,18 @@ const ANSWER_DAYS_MAX = 120;
  * Sends the decision letters, once to each person: offers where every award is approved, regrets where there is no
  * award. Applications that wait for a funder are held for the next time. @throws 409 with the reason, 422.
  */
-export async function sendDecisions(actor: Actor, slug: string, answerByDate: string, now: Date): Promise<{ offered: number; notAwarded: number; held: number }> {
+export async function sendDecisions(
+  actor: Actor,
+  slug: string,
+  answerByDate: string,
+  now: Date,
+): Promise<{ offered: number; notAwarded: number; held: number }> {
   const event = await requireEvent(slug);
   if (!canPropose(actor, event.id)) throw forbidden();
   const today = todayAt(event, now);
   if (answerByDate <= today) throw invalid({ answerBy: 'Choose a day after today.' });
-  if (answerByDate > addDays(today, ANSWER_DAYS_MAX)) throw invalid({ answerBy: `At most ${ANSWER_DAYS_MAX} days from today.` });
+  if (answerByDate > addDays(today, ANSWER_DAYS_MAX))
+    throw invalid({ answerBy: `At most ${ANSWER_DAYS_MAX} days from today.` });
   const answerBy = new Date(localToInstant(answerByDate, '23:59', event.timeZone));
   const { dueAt } = await grantDates(event.id);
   return transaction(async () => {
@@ -56,7 +69,15 @@ async function offer(actor: Actor, grant: GrantCase, answerBy: Date, now: Date):
   for (const award of openAwards(grant).filter((candidate) => candidate.row.state === 'approved')) {
     await award.row.update({ state: 'offered' });
     await postCommitment(award, 'offered', now);
-    await recordAudit({ actor, action: 'grants.award_offered', subject: 'award', subjectId: award.row.id, eventId: row.eventId, before: { state: 'approved' }, after: { state: 'offered', lines: award.lines } });
+    await recordAudit({
+      actor,
+      action: 'grants.award_offered',
+      subject: 'award',
+      subjectId: award.row.id,
+      eventId: row.eventId,
+      before: { state: 'approved' },
+      after: { state: 'offered', lines: award.lines },
+    });
   }
   await row.update({ decision: 'offered', decidedAt: now, answerBy });
   await announce(awardsOffered, { applicationId: row.id, answerBy: answerBy.toISOString() });
@@ -64,7 +85,13 @@ async function offer(actor: Actor, grant: GrantCase, answerBy: Date, now: Date):
 
 async function regret(actor: Actor, grant: GrantCase, now: Date): Promise<void> {
   await grant.row.update({ decision: 'not_awarded', decidedAt: now, answerBy: null });
-  await recordAudit({ actor, action: 'grants.not_awarded', subject: 'grant application', subjectId: grant.row.id, eventId: grant.row.eventId });
+  await recordAudit({
+    actor,
+    action: 'grants.not_awarded',
+    subject: 'grant application',
+    subjectId: grant.row.id,
+    eventId: grant.row.eventId,
+  });
   await announce(grantNotAwarded, { applicationId: grant.row.id });
 }
 
@@ -87,30 +114,57 @@ async function postCommitment(award: AwardCase, step: 'offered' | 'returned', no
 }
 
 /** The person accepts what is offered, or gives it back; then the money is the fund's again. @throws 404, 409, 412. */
-export async function answerAward(actor: Actor, slug: string, version: number, answer: 'accepted' | 'returned', now: Date): Promise<MyGrant> {
+export async function answerAward(
+  actor: Actor,
+  slug: string,
+  version: number,
+  answer: 'accepted' | 'returned',
+  now: Date,
+): Promise<MyGrant> {
   const event = await requireEvent(slug);
   await transaction(async () => {
-    const row = await GrantApplicationRow.findOne({ where: { eventId: event.id, accountId: actor.accountId } });
+    const row = await GrantApplicationRow.findOne({
+      where: { eventId: event.id, accountId: actor.accountId },
+    });
     if (!row) throw notFound('Your grant application');
     sameVersion(row.version, version);
     const grant = await caseOf(row);
     const from = answer === 'accepted' ? ['offered'] : ['offered', 'accepted'];
     const awards = grant.awards.filter((award) => from.includes(award.row.state));
-    if (awards.length === 0) throw conflict('grants.step', answer === 'accepted' ? 'There is no open offer.' : 'There is no grant to give back.');
-    if (answer === 'accepted' && row.answerBy && now > row.answerBy) throw conflict('grants.late', 'The date for accepting is past. Write to the organisers.');
+    if (awards.length === 0)
+      throw conflict(
+        'grants.step',
+        answer === 'accepted' ? 'There is no open offer.' : 'There is no grant to give back.',
+      );
+    if (answer === 'accepted' && row.answerBy && now > row.answerBy)
+      throw conflict('grants.late', 'The date for accepting is past. Write to the organisers.');
     await settle(actor, grant, awards, answer, now);
   });
   return readMyGrant(actor, slug, now);
 }
 
-async function settle(actor: Actor, grant: GrantCase, awards: AwardCase[], answer: 'accepted' | 'returned' | 'lapsed', now: Date): Promise<void> {
+async function settle(
+  actor: Actor,
+  grant: GrantCase,
+  awards: AwardCase[],
+  answer: 'accepted' | 'returned' | 'lapsed',
+  now: Date,
+): Promise<void> {
   const { row } = grant;
   const state = answer === 'accepted' ? 'accepted' : 'returned';
   for (const award of awards) {
     const before = award.row.state;
     if (state === 'returned') await giveBack(award, now);
     await award.row.update({ state, answeredAt: now });
-    await recordAudit({ actor, action: `grants.award_${answer}`, subject: 'award', subjectId: award.row.id, eventId: row.eventId, before: { state: before }, after: { state } });
+    await recordAudit({
+      actor,
+      action: `grants.award_${answer}`,
+      subject: 'award',
+      subjectId: award.row.id,
+      eventId: row.eventId,
+      before: { state: before },
+      after: { state },
+    });
   }
   row.changed('updatedAt', true);
   await row.update({ updatedAt: now });
@@ -119,7 +173,8 @@ async function settle(actor: Actor, grant: GrantCase, awards: AwardCase[], answe
 
 async function giveBack(award: AwardCase, now: Date): Promise<void> {
   const paid = await AwardLineRow.sum('paidMinor', { where: { awardId: award.row.id } });
-  if (paid > 0) throw conflict('grants.paid', 'Part of the grant has been paid. Write to the finance office.');
+  if (paid > 0)
+    throw conflict('grants.paid', 'Part of the grant has been paid. Write to the finance office.');
   await AwardLineRow.update({ returned: true }, { where: { awardId: award.row.id } });
   await postCommitment(award, 'returned', now);
 }
@@ -127,7 +182,9 @@ async function giveBack(award: AwardCase, now: Date): Promise<void> {
 /** Offers that were not answered in time go back to their funds. Returns how many people lost one. */
 export async function lapseAwards(now: Date): Promise<number> {
   const open = await AwardRow.findAll({ where: { state: 'offered' }, attributes: ['applicationId'] });
-  const late = await GrantApplicationRow.findAll({ where: { id: [...new Set(open.map((award) => award.applicationId))], answerBy: { [Op.lt]: now } } });
+  const late = await GrantApplicationRow.findAll({
+    where: { id: [...new Set(open.map((award) => award.applicationId))], answerBy: { [Op.lt]: now } },
+  });
   for (const row of late) {
     await transaction(async () => {
       const grant = await caseOf(row);

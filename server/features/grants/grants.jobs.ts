@@ -7,4 +7,7 @@ export const awardQueried = defineFact<{ awardId: string; talkId: string }>('awa
 export const awardQueryAnswered = defineFact<{ awardId: string; talkId: string }>('awardQueryAnswered');
 export const awardsOffered = defineFact<{ applicationId: string; answerBy: string }>('awardsOffered');
 export const grantNotAwarded = defineFact<{ applicationId: string }>('grantNotAwarded');
-export const awardAnswered = defineFact<{ applicationId: string; answer: 'accepted' | 'returned' | 'lapsed' }>('awardAnswered');
+export const awardAnswered = defineFact<{
+  applicationId: string;
+  answer: 'accepted' | 'returned' | 'lapsed';
+}>('awardAnswered');

@@ -1,7 +1,23 @@
 import { Model, type Sequelize } from 'sequelize';
-import type { AwardState, CostKind, Eligibility, FloorShare, GrantState } from '@shared/features/grants/grants.contract';
+import type {
+  AwardState,
+  CostKind,
+  Eligibility,
+  FloorShare,
+  GrantState,
+} from '@shared/features/grants/grants.contract';
 import type { CareerStage } from '@shared/features/accounts/accounts.contract';
-import { flag, integer, json, key, optionalAt, optionalInteger, optionalText, text, version } from '@server/db/columns';
+import {
+  flag,
+  integer,
+  json,
+  key,
+  optionalAt,
+  optionalInteger,
+  optionalText,
+  text,
+  version,
+} from '@server/db/columns';
 
 export class FundRow extends Model {
   declare id: string;
@@ -107,26 +123,110 @@ export class AwardTalkRow extends Model {
 
 export function initialiseGrants(sequelize: Sequelize): void {
   FundRow.init(
-    { id: key(), eventId: text(), name: text(), funder: text(), budgetMinor: integer(), currency: text(), covers: json(), eligibility: json(), capPerPersonMinor: optionalInteger(), floors: json(), showScores: flag(), version: version() },
+    {
+      id: key(),
+      eventId: text(),
+      name: text(),
+      funder: text(),
+      budgetMinor: integer(),
+      currency: text(),
+      covers: json(),
+      eligibility: json(),
+      capPerPersonMinor: optionalInteger(),
+      floors: json(),
+      showScores: flag(),
+      version: version(),
+    },
     { sequelize, modelName: 'funds', version: true },
   );
   GrantApplicationRow.init(
     {
-      id: key(), eventId: text(), accountId: text(), basis: text(), number: integer(), reference: text(), state: text(), motivation: text(''), minUsefulMinor: integer(0), firstMeeting: flag(), noOtherMoney: flag(),
-      talkId: optionalText(), stage: optionalText(), country: optionalText(), affiliation: text(''), submittedAt: optionalAt(), decision: optionalText(), decidedAt: optionalAt(), answerBy: optionalAt(), version: version(),
+      id: key(),
+      eventId: text(),
+      accountId: text(),
+      basis: text(),
+      number: integer(),
+      reference: text(),
+      state: text(),
+      motivation: text(''),
+      minUsefulMinor: integer(0),
+      firstMeeting: flag(),
+      noOtherMoney: flag(),
+      talkId: optionalText(),
+      stage: optionalText(),
+      country: optionalText(),
+      affiliation: text(''),
+      submittedAt: optionalAt(),
+      decision: optionalText(),
+      decidedAt: optionalAt(),
+      answerBy: optionalAt(),
+      version: version(),
     },
     { sequelize, modelName: 'grant_applications', version: true },
   );
-  GrantItemRow.init({ id: key(), applicationId: text(), kind: text(), amountMinor: integer(), quantity: optionalInteger(), note: text('') }, { sequelize, modelName: 'grant_items' });
+  GrantItemRow.init(
+    {
+      id: key(),
+      applicationId: text(),
+      kind: text(),
+      amountMinor: integer(),
+      quantity: optionalInteger(),
+      note: text(''),
+    },
+    { sequelize, modelName: 'grant_items' },
+  );
   GrantEvidenceRow.init(
-    { id: key(), applicationId: text(), kind: text(), fileName: text(), bytes: integer(), sha256: text(), type: text(), storedName: text() },
+    {
+      id: key(),
+      applicationId: text(),
+      kind: text(),
+      fileName: text(),
+      bytes: integer(),
+      sha256: text(),
+      type: text(),
+      storedName: text(),
+    },
     { sequelize, modelName: 'grant_evidence', tableName: 'grant_evidence' },
   );
-  GrantReviewRow.init({ id: key(), applicationId: text(), reviewerId: text(), score: optionalInteger(), comment: text(''), conflict: flag() }, { sequelize, modelName: 'grant_reviews' });
+  GrantReviewRow.init(
+    {
+      id: key(),
+      applicationId: text(),
+      reviewerId: text(),
+      score: optionalInteger(),
+      comment: text(''),
+      conflict: flag(),
+    },
+    { sequelize, modelName: 'grant_reviews' },
+  );
   AwardRow.init(
-    { id: key(), fundId: text(), applicationId: text(), state: text(), proposedBy: text(), decidedBy: optionalText(), decidedAt: optionalAt(), answeredAt: optionalAt(), version: version() },
+    {
+      id: key(),
+      fundId: text(),
+      applicationId: text(),
+      state: text(),
+      proposedBy: text(),
+      decidedBy: optionalText(),
+      decidedAt: optionalAt(),
+      answeredAt: optionalAt(),
+      version: version(),
+    },
     { sequelize, modelName: 'awards', version: true },
   );
-  AwardLineRow.init({ id: key(), awardId: text(), applicationId: text(), kind: text(), amountMinor: integer(), paidMinor: integer(0), returned: flag() }, { sequelize, modelName: 'award_lines' });
-  AwardTalkRow.init({ id: key(), awardId: text(), authorId: text(), side: text(), text: text() }, { sequelize, modelName: 'award_talks' });
+  AwardLineRow.init(
+    {
+      id: key(),
+      awardId: text(),
+      applicationId: text(),
+      kind: text(),
+      amountMinor: integer(),
+      paidMinor: integer(0),
+      returned: flag(),
+    },
+    { sequelize, modelName: 'award_lines' },
+  );
+  AwardTalkRow.init(
+    { id: key(), awardId: text(), authorId: text(), side: text(), text: text() },
+    { sequelize, modelName: 'award_talks' },
+  );
 }

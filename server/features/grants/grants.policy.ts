@@ -13,7 +13,8 @@ interface Subject {
 }
 export type Conflict = 'declared' | 'institution' | 'own' | null;
 
-export const onCommittee = (actor: Actor, eventId: string): boolean => holds(actor, 'organiser', eventId) || holds(actor, 'reviewer', eventId);
+export const onCommittee = (actor: Actor, eventId: string): boolean =>
+  holds(actor, 'organiser', eventId) || holds(actor, 'reviewer', eventId);
 export const canPropose = (actor: Actor, eventId: string): boolean => holds(actor, 'organiser', eventId);
 export const canEditFunds = canPropose;
 /** Roles in a fund are given by the event office. */
@@ -27,12 +28,18 @@ export function conflictOf({ actor, affiliation }: Viewer, subject: Subject, dec
 }
 
 /** Nothing is hidden from the event office; everybody else of the committee sees nothing of an application in conflict. */
-export const isHidden = (viewer: Viewer, conflict: Conflict): boolean => conflict !== null && !isAdministrator(viewer.actor);
+export const isHidden = (viewer: Viewer, conflict: Conflict): boolean =>
+  conflict !== null && !isAdministrator(viewer.actor);
 
-export const canScore = (viewer: Viewer, subject: Subject, conflict: Conflict): boolean => onCommittee(viewer.actor, subject.eventId) && (conflict === null || conflict === 'declared');
+export const canScore = (viewer: Viewer, subject: Subject, conflict: Conflict): boolean =>
+  onCommittee(viewer.actor, subject.eventId) && (conflict === null || conflict === 'declared');
 
 /** Other people's scores and their mean: after one's own; organisers also when nobody can apply any more, since they rank. */
-export function canSeeScores(viewer: Viewer, subject: Subject, facts: { hasScored: boolean; scoringIsLate: boolean }): boolean {
+export function canSeeScores(
+  viewer: Viewer,
+  subject: Subject,
+  facts: { hasScored: boolean; scoringIsLate: boolean },
+): boolean {
   if (isAdministrator(viewer.actor) || facts.hasScored) return true;
   return facts.scoringIsLate && holds(viewer.actor, 'organiser', subject.eventId);
 }

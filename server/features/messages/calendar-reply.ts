@@ -20,7 +20,10 @@ export function readReply(text: string): CalendarReply | null {
     .replace(/\r?\n[ \t]/g, '')
     .split(/\r?\n/)
     .flatMap((line) => readLine(line) ?? []);
-  const method = lines.find(({ name }) => name === 'METHOD')?.value.trim().toUpperCase();
+  const method = lines
+    .find(({ name }) => name === 'METHOD')
+    ?.value.trim()
+    .toUpperCase();
   const start = lines.findIndex(({ name, value }) => name === 'BEGIN' && value.toUpperCase() === 'VEVENT');
   const end = lines.findIndex(({ name, value }) => name === 'END' && value.toUpperCase() === 'VEVENT');
   if (method !== 'REPLY' || start < 0 || end < start) return null;
@@ -44,7 +47,8 @@ function readLine(line: string): Line | null {
   const match = /^([\w-]+)((?:;[\w-]+=(?:"[^"]*"|[^";:,]*)(?:,(?:"[^"]*"|[^";:,]*))*)*):(.*)$/.exec(line);
   if (!match) return null;
   const parameters = new Map<string, string>();
-  for (const [, name = '', value = ''] of (match[2] ?? '').matchAll(/;([\w-]+)=("[^"]*"|[^";:]*)/g)) parameters.set(name.toUpperCase(), value.replace(/^"|"$/g, ''));
+  for (const [, name = '', value = ''] of (match[2] ?? '').matchAll(/;([\w-]+)=("[^"]*"|[^";:]*)/g))
+    parameters.set(name.toUpperCase(), value.replace(/^"|"$/g, ''));
   return { name: (match[1] ?? '').toUpperCase(), parameters, value: match[3] ?? '' };
 }
 

@@ -27,22 +27,40 @@ export interface Organizer {
 const PRODUCT = '-//Analemma//Analemma//EN';
 
 /** Controls other than line breaks and tabs are not TEXT (RFC 5545 section 3.1). */
-const cleanText = (text: string): string => text.replace(/\r\n?/g, '\n').replace(/[\u0000-\u0008\u000B\u000C\u000E-\u001F\u007F]/g, '').replace(/\p{Cs}/gu, '\uFFFD');
-const oneLine = (text: string): string => cleanText(text).replace(/[\n\t]+/g, ' ').trim();
+const cleanText = (text: string): string =>
+  text
+    .replace(/\r\n?/g, '\n')
+    .replace(/[\u0000-\u0008\u000B\u000C\u000E-\u001F\u007F]/g, '')
+    .replace(/\p{Cs}/gu, '\uFFFD');
+const oneLine = (text: string): string =>
+  cleanText(text)
+    .replace(/[\n\t]+/g, ' ')
+    .trim();
 
 /**
  * Parameter values can't hold a double quote; RFC 6868 writes it ^' and a caret ^^. A backslash has no meaning there
  * (RFC 5545 section 3.2), but some readers take \\n for a line break all the same: names get a slash instead.
  */
-const parameter = (text: string): string => oneLine(text).replace(/\\/g, '/').replace(/\^/g, '^^').replace(/"/g, "^'");
+const parameter = (text: string): string =>
+  oneLine(text).replace(/\\/g, '/').replace(/\^/g, '^^').replace(/"/g, "^'");
 
 const utc = (iso: string): [number, number, number, number, number] => {
   const date = new Date(iso);
-  return [date.getUTCFullYear(), date.getUTCMonth() + 1, date.getUTCDate(), date.getUTCHours(), date.getUTCMinutes()];
+  return [
+    date.getUTCFullYear(),
+    date.getUTCMonth() + 1,
+    date.getUTCDate(),
+    date.getUTCHours(),
+    date.getUTCMinutes(),
+  ];
 };
 
 /** `timestamp` is read by the package (DTSTAMP) but missing in its types. */
-function attributes(item: CalendarItem, method: string, organizer: Organizer): EventAttributes & { timestamp: number } {
+function attributes(
+  item: CalendarItem,
+  method: string,
+  organizer: Organizer,
+): EventAttributes & { timestamp: number } {
   return {
     productId: PRODUCT,
     method,
@@ -62,21 +80,56 @@ function attributes(item: CalendarItem, method: string, organizer: Organizer): E
     status: item.cancelled ? 'CANCELLED' : 'CONFIRMED',
     organizer: { name: parameter(organizer.name), email: organizer.email },
     ...(item.attendee && {
-      attendees: [{ name: parameter(item.attendee.name), email: item.attendee.email, rsvp: method === 'REQUEST', role: 'REQ-PARTICIPANT', partstat: 'NEEDS-ACTION' }],
+      attendees: [
+        {
+          name: parameter(item.attendee.name),
+          email: item.attendee.email,
+          rsvp: method === 'REQUEST',
+          role: 'REQ-PARTICIPANT',
+          partstat: 'NEEDS-ACTION',
+        },
+      ],
     }),
   };
 }
 
 /** An invitation or a cancellation for one person (RFC 5546 REQUEST, CANCEL): one component, one UID. */
-export function invitationText(method: 'REQUEST' | 'CANCEL', item: CalendarItem, organizer: Organizer): string {
+export function invitationText(
+  method: 'REQUEST' | 'CANCEL',
+  item: CalendarItem,
+  organizer: Organizer,
+): string {
   return finish(write([attributes({ ...item, cancelled: method === 'CANCEL' }, method, organizer)]), []);
 }
 
 /** A feed to subscribe to (METHOD:PUBLISH) with its name and the shortest interval at which to ask again (RFC 7986). */
-export function feedText(name: string, items: readonly CalendarItem[], organizer: Organizer, minutes = 60): string {
-  const head = [`NAME:${escapeText(oneLine(name))}`, `X-WR-CALNAME:${escapeText(oneLine(name))}`, `REFRESH-INTERVAL;VALUE=DURATION:PT${minutes}M`];
-  if (items.length === 0) return finish(['BEGIN:VCALENDAR', 'VERSION:2.0', 'CALSCALE:GREGORIAN', `PRODID:${PRODUCT}`, 'METHOD:PUBLISH', 'END:VCALENDAR'].join('\r\n'), head);
-  return finish(write(items.map((item) => attributes({ ...item, attendee: undefined }, 'PUBLISH', organizer))), head);
+export function feedText(
+  name: string,
+  items: readonly CalendarItem[],
+  organizer: Organizer,
+  minutes = 60,
+): string {
+  const head = [
+    `NAME:${escapeText(oneLine(name))}`,
+    `X-WR-CALNAME:${escapeText(oneLine(name))}`,
+    `REFRESH-INTERVAL;VALUE=DURATION:PT${minutes}M`,
+  ];
+  if (items.length === 0)
+    return finish(
+      [
+        'BEGIN:VCALENDAR',
+        'VERSION:2.0',
+        'CALSCALE:GREGORIAN',
+        `PRODID:${PRODUCT}`,
+        'METHOD:PUBLISH',
+        'END:VCALENDAR',
+      ].join('\r\n'),
+      head,
+    );
+  return finish(
+    write(items.map((item) => attributes({ ...item, attendee: undefined }, 'PUBLISH', organizer))),
+    head,
+  );
 }
 
 function write(events: EventAttributes[]): string {
@@ -85,7 +138,8 @@ function write(events: EventAttributes[]): string {
   return value;
 }
 
-const escapeText = (text: string): string => text.replace(/\\/g, '\\\\').replace(/\n/g, '\\n').replace(/;/g, '\\;').replace(/,/g, '\\,');
+const escapeText = (text: string): string =>
+  text.replace(/\\/g, '\\\\').replace(/\n/g, '\\n').replace(/;/g, '\\;').replace(/,/g, '\\,');
 
 /** The package folds by characters: unfold, mend what it leaves, fold again by octets. */
 function finish(raw: string, head: string[]): string {

@@ -6,7 +6,11 @@ import { transaction } from '@server/db/transaction';
 import { env } from '@server/env';
 import type { Actor } from '@server/http/authorize';
 import { eventsById, requireEvent, roomsOf, type eventById } from '@server/features/events/events.service';
-import { droppedPlacements, publishedProgramme, type PublishedPlacement } from '@server/features/programme/programme.service';
+import {
+  droppedPlacements,
+  publishedProgramme,
+  type PublishedPlacement,
+} from '@server/features/programme/programme.service';
 import { talkTitle } from '@server/features/talks/talks.service';
 import { feedText, type CalendarItem } from './calendar-text';
 import { CalendarFeedRow, CalendarInvitationRow } from './messages.model';
@@ -29,7 +33,10 @@ type Event = Awaited<ReturnType<typeof eventById>>;
 
 const summaryOf = (title: string): string => plainLatex(title).replace(/\s+/g, ' ').trim();
 
-function itemOf(event: Event, placement: Pick<PublishedPlacement, 'startsAt' | 'endsAt' | 'roomName' | 'title' | 'word'>) {
+function itemOf(
+  event: Event,
+  placement: Pick<PublishedPlacement, 'startsAt' | 'endsAt' | 'roomName' | 'title' | 'word'>,
+) {
   return {
     startsAt: placement.startsAt,
     endsAt: placement.endsAt,
@@ -45,7 +52,9 @@ const written = new Map<string, Feed>();
 
 /** The feed of these items. Writing one takes far longer than looking them up, and calendar programs ask all day: the same items are written once. */
 function feedOf(name: string, items: CalendarItem[]): Feed {
-  const key = createHash('sha256').update(JSON.stringify([name, items])).digest('base64url');
+  const key = createHash('sha256')
+    .update(JSON.stringify([name, items]))
+    .digest('base64url');
   const known = written.get(key);
   if (known) return known;
   const feed = { content: feedText(name, items, ORGANIZER), etag: `"${key.slice(0, 27)}"` };
@@ -56,7 +65,8 @@ function feedOf(name: string, items: CalendarItem[]): Feed {
 
 const hashOf = (secret: string): string => createHash('sha256').update(secret).digest('hex');
 /** 256 bits that only this server can compute, so that the owner is shown the address again though it is kept as a hash. */
-const secretOf = (rowId: string): string => createHmac('sha256', env.SESSION_SECRET).update(`calendar feed ${rowId}`).digest('base64url');
+const secretOf = (rowId: string): string =>
+  createHmac('sha256', env.SESSION_SECRET).update(`calendar feed ${rowId}`).digest('base64url');
 
 /** The secret part of one's own feed address; made when there is none, new (and the old one ended) when asked. */
 export function myFeedToken(actor: Actor, renew: boolean): Promise<string> {
@@ -81,16 +91,24 @@ export async function eventFeed(slug: string, now: Date, roomId?: string): Promi
   // Stamp and sequence come from the revision, so that the same programme is the same text and who asks often gets 304.
   const stamp = new Date(programme?.publishedAt ?? 0);
   const sequence = 2 * (programme?.number ?? 0);
-  const item = (cancelled: boolean) => (placement: PublishedPlacement): CalendarItem => ({
-    ...itemOf(event, placement),
-    uid: stableUid('feed', event.id, placement.talkId),
-    sequence: cancelled ? sequence + 1 : sequence,
-    cancelled,
-    stamp,
-  });
-  const items = [...(programme?.placements ?? []).map((one) => ({ one, write: item(false) })), ...dropped.map((one) => ({ one, write: item(true) }))];
+  const item =
+    (cancelled: boolean) =>
+    (placement: PublishedPlacement): CalendarItem => ({
+      ...itemOf(event, placement),
+      uid: stableUid('feed', event.id, placement.talkId),
+      sequence: cancelled ? sequence + 1 : sequence,
+      cancelled,
+      stamp,
+    });
+  const items = [
+    ...(programme?.placements ?? []).map((one) => ({ one, write: item(false) })),
+    ...dropped.map((one) => ({ one, write: item(true) })),
+  ];
   const chosen = items.filter(({ one }) => !roomId || one.roomId === roomId);
-  return feedOf(room ? `${event.title}, ${room.name}` : event.title, chosen.map(({ one, write }) => write(one)));
+  return feedOf(
+    room ? `${event.title}, ${room.name}` : event.title,
+    chosen.map(({ one, write }) => write(one)),
+  );
 }
 
 const daysBefore = (now: Date): Date => new Date(now.getTime() - KEPT_DAYS * 86_400_000);
@@ -100,7 +118,10 @@ export async function personFeed(token: string, now: Date): Promise<Feed | null>
   const feed = await CalendarFeedRow.findOne({ where: { tokenHash: hashOf(token) } });
   if (!feed) return null;
   const rows = await CalendarInvitationRow.findAll({
-    where: { accountId: feed.accountId, [Op.or]: [{ lastMethod: 'REQUEST' }, { updatedAt: { [Op.gt]: daysBefore(now) } }] },
+    where: {
+      accountId: feed.accountId,
+      [Op.or]: [{ lastMethod: 'REQUEST' }, { updatedAt: { [Op.gt]: daysBefore(now) } }],
+    },
     order: ['startsAt', 'id'],
   });
   const events = await eventsById(rows.map((row) => row.eventId));
@@ -110,7 +131,13 @@ export async function personFeed(token: string, now: Date): Promise<Feed | null>
       const { title, word } = titles.get(row.talkId) ?? { title: await talkTitle(row.talkId), word: 'Talk' };
       const event = events.get(row.eventId) as Event;
       const { startsAt, endsAt, roomName } = row;
-      return { ...itemOf(event, { startsAt, endsAt, roomName, title, word }), uid: row.uid, sequence: row.sequence, cancelled: row.lastMethod === 'CANCEL', stamp: row.updatedAt };
+      return {
+        ...itemOf(event, { startsAt, endsAt, roomName, title, word }),
+        uid: row.uid,
+        sequence: row.sequence,
+        cancelled: row.lastMethod === 'CANCEL',
+        stamp: row.updatedAt,
+      };
     }),
   );
   return feedOf('My programme', items);
@@ -118,5 +145,9 @@ export async function personFeed(token: string, now: Date): Promise<Feed | null>
 
 async function publishedTitles(eventIds: string[]): Promise<Map<string, PublishedPlacement>> {
   const programmes = await Promise.all(eventIds.map(publishedProgramme));
-  return new Map(programmes.flatMap((programme) => programme?.placements ?? []).map((placement) => [placement.talkId, placement]));
+  return new Map(
+    programmes
+      .flatMap((programme) => programme?.placements ?? [])
+      .map((placement) => [placement.talkId, placement]),
+  );
 }

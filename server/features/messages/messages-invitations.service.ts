@@ -1,12 +1,24 @@
 import { randomUUID } from 'node:crypto';
-import { answerCounts, answerOf, invitationChanges, type Answer, type InvitationChange } from '@shared/features/messages/invitations.rules';
+import {
+  answerCounts,
+  answerOf,
+  invitationChanges,
+  type Answer,
+  type InvitationChange,
+} from '@shared/features/messages/invitations.rules';
 import { plainLatex } from '@shared/lib/latex';
 import { conflict, notFound } from '@shared/http/problem';
 import { newId } from '@server/db/id';
 import { transaction } from '@server/db/transaction';
 import { env } from '@server/env';
 import { queueMessage } from '@server/mail/outbox';
-import { accountById, accountsById, issueToken, peekToken, type PersonView } from '@server/features/accounts/accounts.service';
+import {
+  accountById,
+  accountsById,
+  issueToken,
+  peekToken,
+  type PersonView,
+} from '@server/features/accounts/accounts.service';
 import { eventById } from '@server/features/events/events.service';
 import { talksForProgramme, talkTitle } from '@server/features/talks/talks.service';
 import { publishedProgramme, type PublishedPlacement } from '@server/features/programme/programme.service';
@@ -25,11 +37,14 @@ export async function syncInvitations(eventId: string): Promise<number> {
   return transaction(async () => {
     // Read inside, so that what is compared and what is saved belong to the same revision.
     const programme = await publishedProgramme(eventId);
-    const placements = new Map((programme?.placements ?? []).map((placement) => [placement.talkId, placement]));
+    const placements = new Map(
+      (programme?.placements ?? []).map((placement) => [placement.talkId, placement]),
+    );
     const sent = await CalendarInvitationRow.findAll({ where: { eventId } });
     const changes = invitationChanges(sent, [...placements.values()]);
     const people = await accountsById(changes.map((change) => change.accountId));
-    for (const change of changes) await carryOut(eventId, change, placements.get(change.talkId), sent, people);
+    for (const change of changes)
+      await carryOut(eventId, change, placements.get(change.talkId), sent, people);
     return changes.length;
   });
 }
@@ -46,13 +61,39 @@ async function carryOut(
   if (!person) return; // erased since: nobody is left to write to
   const fields = { sequence, lastMethod: method, startsAt, endsAt, roomName, answer: null, answeredAt: null };
   const before = sent.find((row) => row.id === change.invitationId);
-  const row = before ? await before.update(fields) : await CalendarInvitationRow.create({ id: newId(), eventId, talkId, accountId, uid: randomUUID(), ...fields });
+  const row = before
+    ? await before.update(fields)
+    : await CalendarInvitationRow.create({
+        id: newId(),
+        eventId,
+        talkId,
+        accountId,
+        uid: randomUUID(),
+        ...fields,
+      });
   const event = await eventById(eventId);
   const { title, word } = placement ?? (await titleOf(talkId));
   const summary = plainLatex(title).replace(/\s+/g, ' ').trim();
   const url = `${env.BASE_URL}/events/${event.slug}/programme`;
-  const token = await issueToken({ purpose: 'calendar-answer', accountId, subjectId: row.id, hours: 24 * 400 });
-  const item = { uid: row.uid, sequence, startsAt, endsAt, summary, description: `${word}. ${event.title}`, location: `${roomName}, ${event.venue}, ${event.town}`, url, cancelled: method === 'CANCEL', stamp: new Date(), attendee: { name: person.printedName, email: person.email } };
+  const token = await issueToken({
+    purpose: 'calendar-answer',
+    accountId,
+    subjectId: row.id,
+    hours: 24 * 400,
+  });
+  const item = {
+    uid: row.uid,
+    sequence,
+    startsAt,
+    endsAt,
+    summary,
+    description: `${word}. ${event.title}`,
+    location: `${roomName}, ${event.venue}, ${event.town}`,
+    url,
+    cancelled: method === 'CANCEL',
+    stamp: new Date(),
+    attendee: { name: person.printedName, email: person.email },
+  };
   await queueMessage({
     letter: method === 'CANCEL' ? 'calendar.cancel' : sequence > 0 ? 'calendar.update' : 'calendar.request',
     accountId,
@@ -61,7 +102,19 @@ async function carryOut(
     to: { name: person.printedName, address: person.email },
     replyTo: env.OFFICE_EMAIL,
     dedupKey: `calendar:${row.uid}:${sequence}`,
-    mail: calendarLetter({ method, sequence, name: person.printedName, event, word, title: summary, startsAt, endsAt, roomName, url, answerUrl: `${env.BASE_URL}/calendar-answer/${token}` }),
+    mail: calendarLetter({
+      method,
+      sequence,
+      name: person.printedName,
+      event,
+      word,
+      title: summary,
+      startsAt,
+      endsAt,
+      roomName,
+      url,
+      answerUrl: `${env.BASE_URL}/calendar-answer/${token}`,
+    }),
     calendar: { method, content: invitationText(method, item, ORGANIZER) },
   });
 }
@@ -84,14 +137,28 @@ export async function readAnswer(token: string) {
 
 async function presentAnswer(row: CalendarInvitationRow) {
   const [event, { title }] = await Promise.all([eventById(row.eventId), titleOf(row.talkId)]);
-  return { eventTitle: event.title, eventSlug: event.slug, talkTitle: plainLatex(title), startsAt: row.startsAt, endsAt: row.endsAt, timeZone: event.timeZone, roomName: row.roomName, answer: row.answer, cancelled: row.lastMethod === 'CANCEL' };
+  return {
+    eventTitle: event.title,
+    eventSlug: event.slug,
+    talkTitle: plainLatex(title),
+    startsAt: row.startsAt,
+    endsAt: row.endsAt,
+    timeZone: event.timeZone,
+    roomName: row.roomName,
+    answer: row.answer,
+    cancelled: row.lastMethod === 'CANCEL',
+  };
 }
 
 /** Records the answer of the link's owner. @throws 409 when the talk is no longer in the programme. */
 export async function recordAnswer(token: string, answer: Answer) {
   const row = await transaction(async () => {
     const found = await invitationByToken(token);
-    if (found.lastMethod === 'CANCEL') throw conflict('messages.cancelled', 'This is no longer in the programme, so there is nothing to answer.');
+    if (found.lastMethod === 'CANCEL')
+      throw conflict(
+        'messages.cancelled',
+        'This is no longer in the programme, so there is nothing to answer.',
+      );
     return found.update({ answer, answeredAt: new Date() });
   });
   return presentAnswer(row);
@@ -133,5 +200,5 @@ export async function answersOf(eventId: string) {
   }));
 }
 
-export const invitationsOfTalk = (talkId: string): Promise<CalendarInvitationRow[]> => CalendarInvitationRow.findAll({ where: { talkId } });
-
+export const invitationsOfTalk = (talkId: string): Promise<CalendarInvitationRow[]> =>
+  CalendarInvitationRow.findAll({ where: { talkId } });

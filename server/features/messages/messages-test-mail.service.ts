@@ -16,7 +16,13 @@ function visible(actor: Actor): StoredMail[] {
   return mailbox.mails.filter((mail) => mail.recipients.includes(actor.email.toLowerCase()));
 }
 
-const row = ({ id, to, subject, at, calendarMethod }: StoredMail) => ({ id, to, subject, at, calendarMethod });
+const row = ({ id, to, subject, at, calendarMethod }: StoredMail) => ({
+  id,
+  to,
+  subject,
+  at,
+  calendarMethod,
+});
 
 export function listTestMail(actor: Actor, q = '') {
   const wanted = q.toLowerCase();
@@ -33,20 +39,36 @@ function requireMail(actor: Actor, id: string): StoredMail {
 export function readTestMail(actor: Actor, id: string): TestMail {
   const mail = requireMail(actor, id);
   const { from, text, html, calendar, attachments, headers } = mail;
-  return { ...row(mail), from, text, html, calendar, attachments: attachments.map(({ name, type, bytes }) => ({ name, type, bytes })), headers };
+  return {
+    ...row(mail),
+    from,
+    text,
+    html,
+    calendar,
+    attachments: attachments.map(({ name, type, bytes }) => ({ name, type, bytes })),
+    headers,
+  };
 }
 
 export function testCalendar(actor: Actor, id: string): FileResponse {
   const mail = requireMail(actor, id);
   if (!mail.calendar) throw notFound('A calendar part');
-  return fileResponse({ content: mail.calendar, downloadName: 'invitation.ics', type: 'text/calendar; charset=utf-8' });
+  return fileResponse({
+    content: mail.calendar,
+    downloadName: 'invitation.ics',
+    type: 'text/calendar; charset=utf-8',
+  });
 }
 
 /** An attachment by its place in the letter, from 0; never shown in place, always as a file. */
 export function testAttachment(actor: Actor, id: string, index: number): FileResponse {
   const part = requireMail(actor, id).attachments[index];
   if (!part?.content) throw notFound('This attachment');
-  return fileResponse({ content: Buffer.from(part.content, 'base64'), downloadName: part.name, type: part.type });
+  return fileResponse({
+    content: Buffer.from(part.content, 'base64'),
+    downloadName: part.name,
+    type: part.type,
+  });
 }
 
 /**
@@ -55,8 +77,13 @@ export function testAttachment(actor: Actor, id: string, index: number): FileRes
  */
 export function acceptReplies(): void {
   localMailbox()?.onMail((mail) => {
-    const reply = mail.recipients.includes(env.OFFICE_EMAIL.toLowerCase()) && mail.calendar ? readReply(mail.calendar) : null;
+    const reply =
+      mail.recipients.includes(env.OFFICE_EMAIL.toLowerCase()) && mail.calendar
+        ? readReply(mail.calendar)
+        : null;
     if (!reply) return;
-    recordReply(reply, new Date()).catch((error: unknown) => log.error({ err: error, mail: mail.id }, 'a reply to an invitation was not recorded'));
+    recordReply(reply, new Date()).catch((error: unknown) =>
+      log.error({ err: error, mail: mail.id }, 'a reply to an invitation was not recorded'),
+    );
   });
 }

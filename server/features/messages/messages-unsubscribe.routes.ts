@@ -14,11 +14,14 @@ export function unsubscribeRoutes(router: Router): void {
       return `<p>No more letters about ${escapeHtml(title)}, except what concerns your own talk, registration or money?</p><form method="post"><button>Stop these letters</button></form>`;
     }),
   );
-  router.post('/unsubscribe/:token', express.urlencoded({ extended: false, limit: '1kb' }), (req: Request, res: Response) =>
-    show(res, async () => {
-      const { title } = await refuseLetters(String(req.params.token));
-      return `<p>You will get no more such letters about ${escapeHtml(title)}. What concerns your own talk, registration or money is still sent.</p>`;
-    }),
+  router.post(
+    '/unsubscribe/:token',
+    express.urlencoded({ extended: false, limit: '1kb' }),
+    (req: Request, res: Response) =>
+      show(res, async () => {
+        const { title } = await refuseLetters(String(req.params.token));
+        return `<p>You will get no more such letters about ${escapeHtml(title)}. What concerns your own talk, registration or money is still sent.</p>`;
+      }),
   );
 }
 

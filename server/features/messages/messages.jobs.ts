@@ -7,5 +7,9 @@ import { syncInvitations } from './messages-invitations.service';
 /** Calendars follow every change of the published programme. */
 export const messageReactions: readonly Reaction[] = [
   on(revisionPublished, 'calendar invitations', async ({ eventId }) => void (await syncInvitations(eventId))),
-  on(talkWithdrawn, 'calendar cancellation', async ({ talkId }) => void (await syncInvitations(await eventOfTalk(talkId)))),
+  on(
+    talkWithdrawn,
+    'calendar cancellation',
+    async ({ talkId }) => void (await syncInvitations(await eventOfTalk(talkId))),
+  ),
 ] as unknown as Reaction[];

@@ -35,11 +35,28 @@ export class LetterRefusalRow extends Model {
 export function initialiseMessagesFeature(sequelize: Sequelize): void {
   CalendarInvitationRow.init(
     {
-      id: key(), eventId: text(), talkId: text(), accountId: text(), uid: text(), sequence: integer(), lastMethod: text(), startsAt: text(), endsAt: text(), roomName: text(),
-      answer: optionalText(), answeredAt: optionalAt(), version: version(),
+      id: key(),
+      eventId: text(),
+      talkId: text(),
+      accountId: text(),
+      uid: text(),
+      sequence: integer(),
+      lastMethod: text(),
+      startsAt: text(),
+      endsAt: text(),
+      roomName: text(),
+      answer: optionalText(),
+      answeredAt: optionalAt(),
+      version: version(),
     },
     { sequelize, modelName: 'calendar_invitations', version: true },
   );
-  CalendarFeedRow.init({ id: key(), accountId: text(), tokenHash: text() }, { sequelize, modelName: 'calendar_feeds' });
-  LetterRefusalRow.init({ id: key(), accountId: text(), eventId: text() }, { sequelize, modelName: 'letter_refusals' });
+  CalendarFeedRow.init(
+    { id: key(), accountId: text(), tokenHash: text() },
+    { sequelize, modelName: 'calendar_feeds' },
+  );
+  LetterRefusalRow.init(
+    { id: key(), accountId: text(), eventId: text() },
+    { sequelize, modelName: 'letter_refusals' },
+  );
 }

@@ -32,17 +32,25 @@ export interface MessageQuery {
 }
 
 // LIKE has no escape character in SQLite unless one is named, and addresses are full of underscores.
-const holds = (column: string, text: string) => where(fn('instr', fn('lower', col(column)), text.toLowerCase()), Op.gt, 0);
+const holds = (column: string, text: string) =>
+  where(fn('instr', fn('lower', col(column)), text.toLowerCase()), Op.gt, 0);
 
 /** Messages, the latest first; of one event, or of all. */
-export async function listMessages(eventId: string | null, query: MessageQuery): Promise<Page<MessageListRow>> {
+export async function listMessages(
+  eventId: string | null,
+  query: MessageQuery,
+): Promise<Page<MessageListRow>> {
   const rows = await MessageRow.findAll({
     where: {
       [Op.and]: [
         eventId ? { eventId } : {},
         query.state ? { state: query.state } : {},
         query.account ? { accountId: query.account } : {},
-        query.q ? { [Op.or]: ['to_name', 'to_address', 'subject'].map((column) => holds(column, query.q as string)) } : {},
+        query.q
+          ? {
+              [Op.or]: ['to_name', 'to_address', 'subject'].map((column) => holds(column, query.q as string)),
+            }
+          : {},
         query.cursor ? { id: { [Op.lt]: query.cursor } } : {},
       ],
     },
@@ -50,11 +58,17 @@ export async function listMessages(eventId: string | null, query: MessageQuery):
     limit: query.limit + 1,
   });
   const page = rows.slice(0, query.limit);
-  return { items: page.map(present), next: rows.length > query.limit ? (page[page.length - 1]?.id ?? null) : null };
+  return {
+    items: page.map(present),
+    next: rows.length > query.limit ? (page[page.length - 1]?.id ?? null) : null,
+  };
 }
 
 /** One message of an event (of any, for null) with its text. The links of a letter open doors that are its reader's alone: their secret part is left out. */
-export async function readMessage(eventId: string | null, id: string): Promise<MessageListRow & { text: string }> {
+export async function readMessage(
+  eventId: string | null,
+  id: string,
+): Promise<MessageListRow & { text: string }> {
   const row = await requireMessage(eventId, id);
   return { ...present(row), text: row.text.replace(/[\w-]{40,}/g, '…') };
 }
@@ -68,8 +82,10 @@ async function requireMessage(eventId: string | null, id: string): Promise<Messa
 /** Queues a failed message again. @throws 409 when it has not failed. */
 export async function sendAgain(eventId: string | null, id: string): Promise<void> {
   await requireMessage(eventId, id);
-  if (!(await retryMessage(id))) throw conflict('messages.not_failed', 'Only a failed message is sent again.');
+  if (!(await retryMessage(id)))
+    throw conflict('messages.not_failed', 'Only a failed message is sent again.');
 }
 
 /** Failed messages of an event. */
-export const failedMessages = (eventId: string): Promise<number> => MessageRow.count({ where: { eventId, state: 'failed' } });
+export const failedMessages = (eventId: string): Promise<number> =>
+  MessageRow.count({ where: { eventId, state: 'failed' } });

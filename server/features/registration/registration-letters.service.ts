@@ -2,19 +2,44 @@ import { transaction } from '@server/db/transaction';
 import { env } from '@server/env';
 import { on, announce, type Reaction } from '@server/jobs/job';
 import { queueMessage } from '@server/mail/outbox';
-import { accountById, recordAudit, systemActor, type PersonView } from '@server/features/accounts/accounts.service';
+import {
+  accountById,
+  recordAudit,
+  systemActor,
+  type PersonView,
+} from '@server/features/accounts/accounts.service';
 import { eventById } from '@server/features/events/events.service';
 import { orderExpired, orderPaid, paymentFailed } from '@server/features/finance/finance.jobs';
 import { orderOf } from '@server/features/finance/finance.service';
 import { offerFreedPlaces } from './registration-applications.service';
-import { applicationDecided, applicationReceived, registrationCancelled, registrationConfirmed } from './registration.jobs';
-import { applicationDecisionLetter, applicationReceivedLetter, paymentFailedLetter, receiptLetter } from './registration.mail';
+import {
+  applicationDecided,
+  applicationReceived,
+  registrationCancelled,
+  registrationConfirmed,
+} from './registration.jobs';
+import {
+  applicationDecisionLetter,
+  applicationReceivedLetter,
+  paymentFailedLetter,
+  receiptLetter,
+} from './registration.mail';
 import { ApplicationRow, RegistrationRow } from './registration.model';
 
 async function partsOf(registrationId: string) {
   const row = (await RegistrationRow.findByPk(registrationId)) as RegistrationRow;
-  const [event, person, order] = await Promise.all([eventById(row.eventId), accountById(row.accountId), orderOf(registrationId)]);
-  return { row, event, person: person as PersonView, order, url: `${env.BASE_URL}/events/${event.slug}/registration` };
+  const [event, person, order] = await Promise.all([
+    eventById(row.eventId),
+    accountById(row.accountId),
+    orderOf(registrationId),
+  ]);
+  return {
+    row,
+    event,
+    person: person as PersonView,
+    order,
+    url: `${env.BASE_URL}/events/${event.slug}/registration`,
+  };
 }
 
 async function applicationParts(applicationId: string) {
@@ -30,7 +55,13 @@ export const registrationReactions: readonly Reaction[] = [
       const row = (await RegistrationRow.findByPk(registrationId)) as RegistrationRow;
       if (row.state !== 'reserved') return;
       await row.update({ state: 'registered' });
-      await recordAudit({ actor: systemActor, action: 'registration.confirmed', subject: 'registration', subjectId: row.id, eventId: row.eventId });
+      await recordAudit({
+        actor: systemActor,
+        action: 'registration.confirmed',
+        subject: 'registration',
+        subjectId: row.id,
+        eventId: row.eventId,
+      });
       await announce(registrationConfirmed, { registrationId, orderId });
     });
   }),
@@ -45,7 +76,15 @@ export const registrationReactions: readonly Reaction[] = [
       to: { name: person.printedName, address: person.email },
       replyTo: event.contactEmail,
       dedupKey: `registration.receipt:${orderId}`,
-      mail: receiptLetter({ name: person.printedName, event, number: order.number, code: row.code, paidAt: (order.paidAt ?? new Date()).toISOString(), price: order.price, url }),
+      mail: receiptLetter({
+        name: person.printedName,
+        event,
+        number: order.number,
+        code: row.code,
+        paidAt: (order.paidAt ?? new Date()).toISOString(),
+        price: order.price,
+        url,
+      }),
     });
   }),
   on(paymentFailed, 'say that the card was not charged', async ({ registrationId, sentence, paymentId }) => {
@@ -58,7 +97,13 @@ export const registrationReactions: readonly Reaction[] = [
       to: { name: person.printedName, address: person.email },
       replyTo: event.contactEmail,
       dedupKey: `registration.payment_failed:${paymentId}`,
-      mail: paymentFailedLetter({ name: person.printedName, event, sentence, until: order?.reservedUntil?.toISOString() ?? null, url }),
+      mail: paymentFailedLetter({
+        name: person.printedName,
+        event,
+        sentence,
+        until: order?.reservedUntil?.toISOString() ?? null,
+        url,
+      }),
     });
   }),
   on(orderExpired, 'give the place back', async ({ registrationId }) => {
@@ -66,7 +111,13 @@ export const registrationReactions: readonly Reaction[] = [
       const row = (await RegistrationRow.findByPk(registrationId)) as RegistrationRow;
       if (row.state === 'reserved') {
         await row.update({ state: 'cancelled' });
-        await recordAudit({ actor: systemActor, action: 'registration.lapsed', subject: 'registration', subjectId: row.id, eventId: row.eventId });
+        await recordAudit({
+          actor: systemActor,
+          action: 'registration.lapsed',
+          subject: 'registration',
+          subjectId: row.id,
+          eventId: row.eventId,
+        });
       }
       return row.eventId;
     });
@@ -86,7 +137,12 @@ export const registrationReactions: readonly Reaction[] = [
       to: { name: person.printedName, address: person.email },
       replyTo: event.contactEmail,
       dedupKey: `registration.application_received:${applicationId}`,
-      mail: applicationReceivedLetter({ name: person.printedName, event, waiting: row.state === 'waiting', url }),
+      mail: applicationReceivedLetter({
+        name: person.printedName,
+        event,
+        waiting: row.state === 'waiting',
+        url,
+      }),
     });
   }),
   on(applicationDecided, 'letter', async ({ applicationId, decision }, job) => {
@@ -99,7 +155,14 @@ export const registrationReactions: readonly Reaction[] = [
       to: { name: person.printedName, address: person.email },
       replyTo: event.contactEmail,
       dedupKey: `registration.application_decision:${job.id}`,
-      mail: applicationDecisionLetter({ name: person.printedName, event, decision, note: row.note, answerBy: row.answerBy?.toISOString() ?? null, url }),
+      mail: applicationDecisionLetter({
+        name: person.printedName,
+        event,
+        decision,
+        note: row.note,
+        answerBy: row.answerBy?.toISOString() ?? null,
+        url,
+      }),
     });
   }),
 ] as unknown as Reaction[];

@@ -1,5 +1,10 @@
 import { Model, type Sequelize } from 'sequelize';
-import type { ApplicationState, Diet, RegistrationInput, RegistrationState } from '@shared/features/registration/registration.contract';
+import type {
+  ApplicationState,
+  Diet,
+  RegistrationInput,
+  RegistrationState,
+} from '@shared/features/registration/registration.contract';
 import { json, key, optionalAt, optionalText, text, version } from '@server/db/columns';
 
 export class RegistrationRow extends Model {
@@ -39,13 +44,37 @@ export class ApplicationRow extends Model {
 export function initialiseRegistration(sequelize: Sequelize): void {
   RegistrationRow.init(
     {
-      id: key(), eventId: text(), accountId: text(), code: text(), state: text(), categoryId: text(), arrivesOn: optionalText(), leavesOn: optionalText(), badgeName: text(),
-      diet: text(), allergies: text(''), needs: text(''), invoice: json(), checkedInAt: optionalAt(), checkedInBy: optionalText(), version: version(),
+      id: key(),
+      eventId: text(),
+      accountId: text(),
+      code: text(),
+      state: text(),
+      categoryId: text(),
+      arrivesOn: optionalText(),
+      leavesOn: optionalText(),
+      badgeName: text(),
+      diet: text(),
+      allergies: text(''),
+      needs: text(''),
+      invoice: json(),
+      checkedInAt: optionalAt(),
+      checkedInBy: optionalText(),
+      version: version(),
     },
     { sequelize, modelName: 'registrations', version: true },
   );
   ApplicationRow.init(
-    { id: key(), eventId: text(), accountId: text(), state: text(), motivation: text(), background: text(), answerBy: optionalAt(), note: text(''), version: version() },
+    {
+      id: key(),
+      eventId: text(),
+      accountId: text(),
+      state: text(),
+      motivation: text(),
+      background: text(),
+      answerBy: optionalAt(),
+      note: text(''),
+      version: version(),
+    },
     { sequelize, modelName: 'applications', version: true },
   );
 }

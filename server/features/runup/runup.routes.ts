@@ -5,5 +5,8 @@ import { serve } from '@server/http/serve';
 import { overviewOf } from './runup.service';
 
 export function runupRoutes(router: Router): void {
-  serve(router, readOverview, { access: inEvent('organiser', 'finance'), handle: ({ actor, params, now }) => overviewOf(actor, params.event, now) });
+  serve(router, readOverview, {
+    access: inEvent('organiser', 'finance'),
+    handle: ({ actor, params, now }) => overviewOf(actor, params.event, now),
+  });
 }

@@ -19,7 +19,21 @@ const DAY_MS = 86_400_000;
 /** The overview of an event, all of it computed from the data of the features. */
 export async function overviewOf(actor: Actor, slug: string, now: Date): Promise<Overview> {
   const event = await requireEvent(slug);
-  const [detail, talks, presences, places, registrations, money, draft, deadlines, oddities, failed, undecided, grants, audit] = await Promise.all([
+  const [
+    detail,
+    talks,
+    presences,
+    places,
+    registrations,
+    money,
+    draft,
+    deadlines,
+    oddities,
+    failed,
+    undecided,
+    grants,
+    audit,
+  ] = await Promise.all([
     readEvent(actor, slug, now),
     talksForProgramme(event.id),
     presencesOf(event.id),
@@ -37,9 +51,12 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
   const today = instantToLocal(now, event.timeZone).date;
   const on = talks.filter((talk) => !['declined', 'withdrawn'].includes(talk.state));
   const speakers = on.flatMap((talk) => talk.people.filter((person) => person.part !== 'chair'));
-  const stays = new Set(presences.filter((presence) => presence.arrivesAt).map((presence) => presence.accountId));
+  const stays = new Set(
+    presences.filter((presence) => presence.arrivesAt).map((presence) => presence.accountId),
+  );
   const present = registrations.filter((row) => row.state !== 'cancelled');
-  const nameOf = (talk: (typeof talks)[number]): string => talk.people.find((person) => person.part === 'speaker')?.printedName ?? talk.title;
+  const nameOf = (talk: (typeof talks)[number]): string =>
+    talk.people.find((person) => person.part === 'speaker')?.printedName ?? talk.title;
   const later = today <= event.endsOn;
   return {
     duties: dutiesOf({
@@ -51,7 +68,13 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
       deadlines,
       missingSteps: detail.nextStates[0]?.missing ?? [],
       unanswered: on.filter((talk) => talk.invitation === 'invited').map(nameOf),
-      missingAbstracts: later ? on.filter((talk) => owesAbstract(talk.kind) && talk.state === 'accepted' && talk.abstractAt === null).map(nameOf) : [],
+      missingAbstracts: later
+        ? on
+            .filter(
+              (talk) => owesAbstract(talk.kind) && talk.state === 'accepted' && talk.abstractAt === null,
+            )
+            .map(nameOf)
+        : [],
       submitted: on.filter((talk) => talk.state === 'submitted').length,
       toBePlaced: later ? draft.toBePlaced : 0,
       clashes: later ? draft.clashes.length : 0,
@@ -59,7 +82,16 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
       undecidedApplications: undecided,
       oddities,
       failedMessages: failed,
-      speakersWithoutStay: today < event.startsOn ? [...new Map(speakers.filter((person) => person.part === 'speaker' && !stays.has(person.accountId)).map((person) => [person.accountId, person.printedName])).values()] : [],
+      speakersWithoutStay:
+        today < event.startsOn
+          ? [
+              ...new Map(
+                speakers
+                  .filter((person) => person.part === 'speaker' && !stays.has(person.accountId))
+                  .map((person) => [person.accountId, person.printedName]),
+              ).values(),
+            ]
+          : [],
       grants: { undecided: grants.toDecline, queried: grants.queried, toTell: grants.toOffer },
     }),
     places,
@@ -68,12 +100,19 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
       currency: money.currency,
       receivedMinor: money.receivedMinor,
       openMinor: money.openMinor,
-      steps: incomeByDay(money.steps.map((step) => ({ on: instantToLocal(step.at, event.timeZone).date, amountMinor: step.amountMinor }))),
+      steps: incomeByDay(
+        money.steps.map((step) => ({
+          on: instantToLocal(step.at, event.timeZone).date,
+          amountMinor: step.amountMinor,
+        })),
+      ),
     },
     abstracts: await talkCounts(event.id),
     arrivals: arrivalsOf(present.map((row) => row.arrivesOn)),
     meals: {
-      diets: diets.map((diet) => ({ diet, people: present.filter((row) => row.diet === diet).length })).filter((row) => row.people > 0),
+      diets: diets
+        .map((diet) => ({ diet, people: present.filter((row) => row.diet === diet).length }))
+        .filter((row) => row.people > 0),
       allergies: present.filter((row) => row.allergies !== '').length,
     },
     log: audit.map((row) => ({ id: row.id, at: row.at.toISOString(), who: row.actorName, what: row.action })),
@@ -83,7 +122,10 @@ export async function overviewOf(actor: Actor, slug: string, now: Date): Promise
 /** People by day of arrival; those who have not said stand last. */
 function arrivalsOf(days: readonly (string | null)[]): Overview['arrivals'] {
   const known = [...new Set(days.filter((day) => day !== null))].sort();
-  const rows: Overview['arrivals'] = known.map((on) => ({ on, people: days.filter((day) => day === on).length }));
+  const rows: Overview['arrivals'] = known.map((on) => ({
+    on,
+    people: days.filter((day) => day === on).length,
+  }));
   const silent = days.filter((day) => day === null).length;
   return silent > 0 ? [...rows, { on: null, people: silent }] : rows;
 }

@@ -1,4 +1,10 @@
-import type { PublicEvent, PublicEventSummary, PublicPeople, PublicRegistration, PublicTalkPage } from '@shared/features/site/site.contract';
+import type {
+  PublicEvent,
+  PublicEventSummary,
+  PublicPeople,
+  PublicRegistration,
+  PublicTalkPage,
+} from '@shared/features/site/site.contract';
 import { bySeason, feeRule, feesOn } from '@shared/features/site/site.rules';
 import { closedBecause } from '@shared/features/registration/registration.rules';
 import { notFound } from '@shared/http/problem';
@@ -18,11 +24,22 @@ type Deadlines = PublicEvent['dates'];
 type Part = PublicPeople['items'][number]['talks'][number]['part'];
 
 /** Names and affiliations are public with the published programme; nothing else of a person is. */
-const printed = (person: { printedName: string; affiliation: string } | undefined) => ({ printedName: person?.printedName ?? 'Unknown', affiliation: person?.affiliation ?? '' });
+const printed = (person: { printedName: string; affiliation: string } | undefined) => ({
+  printedName: person?.printedName ?? 'Unknown',
+  affiliation: person?.affiliation ?? '',
+});
 
 const summaryOf = (row: EventRow): PublicEventSummary => ({
-  slug: row.slug, kind: row.kind, title: row.title, startsOn: row.startsOn, endsOn: row.endsOn,
-  timeZone: row.timeZone, venue: row.venue, town: row.town, state: row.state, lead: row.texts.lead,
+  slug: row.slug,
+  kind: row.kind,
+  title: row.title,
+  startsOn: row.startsOn,
+  endsOn: row.endsOn,
+  timeZone: row.timeZone,
+  venue: row.venue,
+  town: row.town,
+  state: row.state,
+  lead: row.texts.lead,
 });
 
 /** @throws 404 for a draft as for an address that does not exist. */
@@ -38,7 +55,12 @@ export async function listPublicEvents(): Promise<PublicEventSummary[]> {
 }
 
 async function datesOf(event: EventRow): Promise<Deadlines> {
-  const rows = (await deadlinesOf(event.id)).map(({ kind, date, time }) => ({ kind, date, time, at: localToInstant(date, time, event.timeZone) }));
+  const rows = (await deadlinesOf(event.id)).map(({ kind, date, time }) => ({
+    kind,
+    date,
+    time,
+    at: localToInstant(date, time, event.timeZone),
+  }));
   return rows.sort((a, b) => a.at.localeCompare(b.at));
 }
 
@@ -46,15 +68,33 @@ async function registrationFor(event: EventRow, dates: Deadlines, now: Date): Pr
   const [fees, places] = await Promise.all([feeTableOf(event.id), placesOf(event.id, now)]);
   const today = todayAt(event, now);
   const at = (kind: string): string | null => dates.find((row) => row.kind === kind)?.at ?? null;
-  const facts = { eventState: event.state, timeZone: event.timeZone, opensAt: at('registration_opens'), closesAt: at('registration_closes'), feeCategories: fees.categories.length, application: null };
+  const facts = {
+    eventState: event.state,
+    timeZone: event.timeZone,
+    opensAt: at('registration_opens'),
+    closesAt: at('registration_closes'),
+    feeCategories: fees.categories.length,
+    application: null,
+  };
   // Whoever applies is let in by the office later: the public door asks only whether anything is taken now.
-  const closed = closedBecause({ ...facts, admission: 'open' }, now) ?? applicationsClosed(event, at('applications_due'), now);
+  const closed =
+    closedBecause({ ...facts, admission: 'open' }, now) ??
+    applicationsClosed(event, at('applications_due'), now);
   const amounts = feesOn(fees.categories, today);
   return {
     open: closed === null,
     admission: event.admission,
     closedBecause: closed,
-    feeRule: isOver(event) ? [] : feeRule({ categories: fees.categories, currency: fees.currency, town: event.town, today, capacity: places.capacity, free: places.free }),
+    feeRule: isOver(event)
+      ? []
+      : feeRule({
+          categories: fees.categories,
+          currency: fees.currency,
+          town: event.town,
+          today,
+          capacity: places.capacity,
+          free: places.free,
+        }),
     currency: fees.currency,
     feeNow: amounts.length > 0 ? { leastMinor: Math.min(...amounts), mostMinor: Math.max(...amounts) } : null,
     capacity: places.capacity,
@@ -65,23 +105,39 @@ async function registrationFor(event: EventRow, dates: Deadlines, now: Date): Pr
 const isOver = (event: EventRow): boolean => event.state === 'finished' || event.state === 'archived';
 
 const applicationsClosed = (event: EventRow, dueAt: string | null, now: Date): string | null =>
-  event.admission === 'application' && dueAt !== null && now.toISOString() > dueAt ? 'Applications are closed. Whoever has an offer can register.' : null;
+  event.admission === 'application' && dueAt !== null && now.toISOString() > dueAt
+    ? 'Applications are closed. Whoever has an offer can register.'
+    : null;
 
 async function coursesFor(eventId: string): Promise<PublicEvent['courses']> {
   const [courses, talks] = await Promise.all([coursesOf(eventId), talksForProgramme(eventId)]);
   const lectures = talks.filter((talk) => talk.kind === 'course_lecture' && talk.state === 'accepted');
   const speakers = (courseId: string): string[] => [
-    ...new Set(lectures.filter((talk) => talk.courseId === courseId).flatMap((talk) => talk.people.filter((one) => one.part === 'speaker').map((one) => one.accountId))),
+    ...new Set(
+      lectures
+        .filter((talk) => talk.courseId === courseId)
+        .flatMap((talk) => talk.people.filter((one) => one.part === 'speaker').map((one) => one.accountId)),
+    ),
   ];
   const people = await accountsById(courses.flatMap((course) => speakers(course.id)));
-  return courses.map((course) => ({ letter: course.letter, title: course.title, lecturers: speakers(course.id).map((id) => printed(people.get(id))) }));
+  return courses.map((course) => ({
+    letter: course.letter,
+    title: course.title,
+    lecturers: speakers(course.id).map((id) => printed(people.get(id))),
+  }));
 }
 
 /** The public page of an event. @throws 404. */
 export async function readPublicEvent(slug: string, now: Date): Promise<PublicEvent> {
   const event = await announced(slug);
   const dates = await datesOf(event);
-  const [registration, courses, call, funds, programme] = await Promise.all([registrationFor(event, dates, now), coursesFor(event.id), readCall(slug, now), fundsOf(event.id), publishedProgramme(event.id)]);
+  const [registration, courses, call, funds, programme] = await Promise.all([
+    registrationFor(event, dates, now),
+    coursesFor(event.id),
+    readCall(slug, now),
+    fundsOf(event.id),
+    publishedProgramme(event.id),
+  ]);
   const grantsDue = dates.find((row) => row.kind === 'grants_due')?.at ?? null;
   const asks = funds.length > 0 && grantsDue !== null && now.toISOString() <= grantsDue;
   return {
@@ -97,7 +153,9 @@ export async function readPublicEvent(slug: string, now: Date): Promise<PublicEv
     callUntil: call.open ? call.until : null,
     grantsUntil: asks ? grantsDue : null,
     revision: programme?.number ?? null,
-    people: new Set(programme?.placements.flatMap((placement) => placement.people.map((one) => one.accountId))).size,
+    people: new Set(
+      programme?.placements.flatMap((placement) => placement.people.map((one) => one.accountId)),
+    ).size,
   };
 }
 
@@ -115,7 +173,10 @@ export async function readPublicTalk(slug: string, talkId: string): Promise<Publ
     kind: talk.kind,
     word: placement.word,
     title: placement.title,
-    people: placement.people.map(({ accountId, part }) => ({ ...printed(people.get(accountId)), part: part as Part })),
+    people: placement.people.map(({ accountId, part }) => ({
+      ...printed(people.get(accountId)),
+      part: part as Part,
+    })),
     coAuthors: handedIn ? talk.coAuthors : [],
     abstract: handedIn ? talk.abstract : '',
     msc: handedIn ? talk.msc : [],
@@ -136,6 +197,13 @@ export async function listPublicPeople(slug: string): Promise<PublicPeople> {
       talks.set(accountId, own);
     }
   }
-  const people = [...(await accountsById([...talks.keys()])).values()].sort((a, b) => foldCase(a.familyName).localeCompare(foldCase(b.familyName)) || foldCase(a.givenName).localeCompare(foldCase(b.givenName)));
-  return { event: summaryOf(event), items: people.map((person) => ({ ...printed(person), talks: talks.get(person.id) ?? [] })) };
+  const people = [...(await accountsById([...talks.keys()])).values()].sort(
+    (a, b) =>
+      foldCase(a.familyName).localeCompare(foldCase(b.familyName)) ||
+      foldCase(a.givenName).localeCompare(foldCase(b.givenName)),
+  );
+  return {
+    event: summaryOf(event),
+    items: people.map((person) => ({ ...printed(person), talks: talks.get(person.id) ?? [] })),
+  };
 }

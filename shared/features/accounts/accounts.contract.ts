@@ -62,7 +62,8 @@ export const profileInput = z.strictObject({
       if (parsed) return parsed;
       context.addIssue({
         code: 'custom',
-        message: 'An ORCID iD has 16 characters like 0000-0002-1825-0097, and the last one must fit the others.',
+        message:
+          'An ORCID iD has 16 characters like 0000-0002-1825-0097, and the last one must fit the others.',
       });
       return z.NEVER;
     }),
@@ -122,7 +123,11 @@ export const signIn = endpoint({
   method: 'POST',
   path: '/api/session',
   summary: 'Sign in with address and password.',
-  body: z.strictObject({ email, password: z.string().min(1, 'This is needed.').max(128), stay: z.boolean().default(false) }),
+  body: z.strictObject({
+    email,
+    password: z.string().min(1, 'This is needed.').max(128),
+    stay: z.boolean().default(false),
+  }),
   response: sessionSchema,
 });
 export const signOut = endpoint({
@@ -136,8 +141,15 @@ export const signUp = endpoint({
   id: 'accounts.sign_up',
   method: 'POST',
   path: '/api/accounts',
-  summary: 'Open an account; a letter with a link verifies the address. The answer is the same for a known address.',
-  body: z.strictObject({ email, password, givenName: name, familyName: name, timeZone: timeZone.default('UTC') }),
+  summary:
+    'Open an account; a letter with a link verifies the address. The answer is the same for a known address.',
+  body: z.strictObject({
+    email,
+    password,
+    givenName: name,
+    familyName: name,
+    timeZone: timeZone.default('UTC'),
+  }),
   response: z.object({ sent: z.literal(true) }),
 });
 export const verifyEmail = endpoint({

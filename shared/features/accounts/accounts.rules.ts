@@ -80,19 +80,26 @@ const COMMON = new Set([
  * Why a password is refused, in a sentence; undefined when it is fine. Length is the contract's matter; here: common
  * passwords, one character or a run repeated, and passwords that are little more than the person's own address or name.
  */
-export function passwordRefusal(password: string, person: { email: string; name: string }): string | undefined {
+export function passwordRefusal(
+  password: string,
+  person: { email: string; name: string },
+): string | undefined {
   const folded = foldCase(password);
   if (COMMON.has(folded)) return 'This password is among the first that are tried. Choose another.';
   if (new Set(folded).size < 5) return 'This password repeats a few characters only. Choose another.';
   if (isRun(folded)) return 'This password is a run of neighbouring characters. Choose another.';
   const own = [person.email, person.email.split('@')[0] ?? '', ...person.name.split(/\s+/)].map(foldCase);
-  const rest = own.filter((word) => word.length >= 4).reduce((text, word) => text.split(word).join(''), folded);
-  if (rest.length < 6 && rest.length < folded.length) return 'This password is little more than your name or address. Choose another.';
+  const rest = own
+    .filter((word) => word.length >= 4)
+    .reduce((text, word) => text.split(word).join(''), folded);
+  if (rest.length < 6 && rest.length < folded.length)
+    return 'This password is little more than your name or address. Choose another.';
   return undefined;
 }
 
 function isRun(text: string): boolean {
   let neighbours = 0;
-  for (let i = 1; i < text.length; i++) if (Math.abs(text.charCodeAt(i) - text.charCodeAt(i - 1)) === 1) neighbours++;
+  for (let i = 1; i < text.length; i++)
+    if (Math.abs(text.charCodeAt(i) - text.charCodeAt(i - 1)) === 1) neighbours++;
   return neighbours >= text.length - 3;
 }

@@ -13,7 +13,15 @@ export const eventState = z.enum(eventStates);
 export type EventState = z.infer<typeof eventState>;
 
 export const admissions = ['open', 'application'] as const;
-export const roomFeatures = ['blackboard', 'projector', 'camera', 'recording', 'hearingLoop', 'stepFree', 'remoteLink'] as const;
+export const roomFeatures = [
+  'blackboard',
+  'projector',
+  'camera',
+  'recording',
+  'hearingLoop',
+  'stepFree',
+  'remoteLink',
+] as const;
 export const roomFeature = z.enum(roomFeatures);
 export type RoomFeature = z.infer<typeof roomFeature>;
 export const blockKinds = ['session', 'coffee', 'lunch', 'social'] as const;
@@ -242,7 +250,11 @@ export const replaceDayFrames = endpoint({
   versioned: true,
 });
 
-export const deadlineInput = z.strictObject({ kind: deadlineKind, date: localDate, time: localTime.default('23:59') });
+export const deadlineInput = z.strictObject({
+  kind: deadlineKind,
+  date: localDate,
+  time: localTime.default('23:59'),
+});
 export type DeadlineInput = z.infer<typeof deadlineInput>;
 export const replaceDeadlines = endpoint({
   id: 'events.replace_deadlines',

@@ -1,4 +1,11 @@
-import type { BlockInput, BlockKind, DeadlineInput, DeadlineKind, EventKind, EventState } from './events.contract';
+import type {
+  BlockInput,
+  BlockKind,
+  DeadlineInput,
+  DeadlineKind,
+  EventKind,
+  EventState,
+} from './events.contract';
 import { datesBetween, formatDate, formatTime, minuteOf } from '../../lib/time';
 
 export const eventKindNames: Record<EventKind, string> = {
@@ -17,7 +24,12 @@ export const eventStateNames: Record<EventState, string> = {
   archived: 'Archived',
 };
 
-export const blockKindNames: Record<BlockKind, string> = { session: 'Session', coffee: 'Coffee', lunch: 'Lunch', social: 'Social' };
+export const blockKindNames: Record<BlockKind, string> = {
+  session: 'Session',
+  coffee: 'Coffee',
+  lunch: 'Lunch',
+  social: 'Social',
+};
 
 export const deadlineNames: Record<DeadlineKind, string> = {
   registration_opens: 'Registration opens',
@@ -78,11 +90,13 @@ function missingFor(event: EventFacts, to: EventState, today: string): string[] 
       missing.push('Name a responsible adult and the local policy: the event admits people under 18.');
     }
   }
-  if (to === 'open' && event.feeCategories === 0) missing.push('Enter at least one fee category (it may be free).');
+  if (to === 'open' && event.feeCategories === 0)
+    missing.push('Enter at least one fee category (it may be free).');
   if (to === 'running') {
     if (event.rooms === 0) missing.push('Enter at least one room.');
     if (event.sessionBlocks === 0) missing.push('Enter at least one session block.');
-    if (event.state === 'open' && today < event.startsOn) missing.push(`The event begins on ${formatDate(event.startsOn)}.`);
+    if (event.state === 'open' && today < event.startsOn)
+      missing.push(`The event begins on ${formatDate(event.startsOn)}.`);
   }
   if (to === 'finished' && event.state === 'running' && today < event.endsOn) {
     missing.push(`The event ends on ${formatDate(event.endsOn)}.`);
@@ -96,12 +110,16 @@ export const isPublic = (state: EventState): boolean => state !== 'draft';
 /** Field errors of an event's particulars, keyed by field. */
 export function eventErrors(input: { startsOn: string; endsOn: string }): Record<string, string> {
   if (input.endsOn < input.startsOn) return { endsOn: 'The last day is before the first.' };
-  if (datesBetween(input.startsOn, input.endsOn).length > 200) return { endsOn: 'An event lasts at most 200 days.' };
+  if (datesBetween(input.startsOn, input.endsOn).length > 200)
+    return { endsOn: 'An event lasts at most 200 days.' };
   return {};
 }
 
 /** Field errors of day frames, keyed `blocks.<index>.<field>`: order, days outside the event, overlaps within a day. */
-export function blockErrors(blocks: readonly BlockInput[], event: { startsOn: string; endsOn: string }): Record<string, string> {
+export function blockErrors(
+  blocks: readonly BlockInput[],
+  event: { startsOn: string; endsOn: string },
+): Record<string, string> {
   const errors: Record<string, string> = {};
   blocks.forEach((block, index) => {
     if (block.endsAt <= block.startsAt) errors[`blocks.${index}.endsAt`] = 'The end is not after the start.';
@@ -115,16 +133,26 @@ export function blockErrors(blocks: readonly BlockInput[], event: { startsOn: st
     const other = blocks.findIndex(
       (b, i) => i < index && b.day === block.day && b.startsAt < block.endsAt && block.startsAt < b.endsAt,
     );
-    if (other >= 0) errors[`blocks.${index}.startsAt`] ??= `Overlaps with ${describeBlock(blocks[other] as BlockInput)}.`;
+    if (other >= 0)
+      errors[`blocks.${index}.startsAt`] ??= `Overlaps with ${describeBlock(blocks[other] as BlockInput)}.`;
   });
   return errors;
 }
 
-export const describeBlock = (block: { kind: BlockKind; startsAt: string; endsAt: string; title?: string }): string =>
+export const describeBlock = (block: {
+  kind: BlockKind;
+  startsAt: string;
+  endsAt: string;
+  title?: string;
+}): string =>
   `${block.title || blockKindNames[block.kind]} ${formatTime(block.startsAt)}–${formatTime(block.endsAt)}`;
 
 /** The blocks of one day put on other days; what stood there before is replaced. */
-export function copyDay<B extends { day: string; id?: string }>(blocks: readonly B[], from: string, to: readonly string[]): B[] {
+export function copyDay<B extends { day: string; id?: string }>(
+  blocks: readonly B[],
+  from: string,
+  to: readonly string[],
+): B[] {
   const pattern = blocks.filter((block) => block.day === from);
   const targets = new Set(to.filter((day) => day !== from));
   const kept = blocks.filter((block) => !targets.has(block.day));

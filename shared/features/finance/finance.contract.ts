@@ -6,7 +6,12 @@ import { careerStageSchema } from '../accounts/accounts.contract';
 
 const minor = z.number().int().min(0, 'Not below zero.').max(100_000_000);
 const taxBasisPoints = z.number().int().min(0).max(5000);
-const label = z.string().trim().min(1, 'This is needed.').max(80).regex(/^[^\p{Cc}]*$/u);
+const label = z
+  .string()
+  .trim()
+  .min(1, 'This is needed.')
+  .max(80)
+  .regex(/^[^\p{Cc}]*$/u);
 
 const categoryFields = {
   name: label,
@@ -35,7 +40,11 @@ const extraFields = {
 };
 export const feeCategory = z.object({ id, ...categoryFields });
 export type FeeCategory = z.infer<typeof feeCategory>;
-export const extraSchema = z.object({ id, ...extraFields, /** Pieces left; null = no limit. */ left: z.number().int().nullable() });
+export const extraSchema = z.object({
+  id,
+  ...extraFields,
+  /** Pieces left; null = no limit. */ left: z.number().int().nullable(),
+});
 export type Extra = z.infer<typeof extraSchema>;
 
 export const feeTable = z.object({
@@ -62,7 +71,9 @@ export type PriceLine = z.infer<typeof priceLine>;
 export const priceSchema = z.object({
   currency: z.string(),
   lines: z.array(priceLine),
-  taxes: z.array(z.object({ taxBasisPoints: z.number().int(), netMinor: z.number().int(), taxMinor: z.number().int() })),
+  taxes: z.array(
+    z.object({ taxBasisPoints: z.number().int(), netMinor: z.number().int(), taxMinor: z.number().int() }),
+  ),
   netMinor: z.number().int(),
   taxMinor: z.number().int(),
   totalMinor: z.number().int(),
@@ -87,7 +98,14 @@ export const orderSchema = z.object({
 export type Order = z.infer<typeof orderSchema>;
 
 const inEvent = z.object({ event: slug });
-export const readFeeTable = endpoint({ id: 'finance.fees', method: 'GET', path: '/api/events/:event/fees', summary: 'Fee categories and extras of an event.', params: inEvent, response: feeTable });
+export const readFeeTable = endpoint({
+  id: 'finance.fees',
+  method: 'GET',
+  path: '/api/events/:event/fees',
+  summary: 'Fee categories and extras of an event.',
+  params: inEvent,
+  response: feeTable,
+});
 export const replaceFeeTable = endpoint({
   id: 'finance.replace_fees',
   method: 'PUT',
@@ -101,7 +119,18 @@ export const replaceFeeTable = endpoint({
   }),
   response: feeTable,
 });
-export const ledgerRow = z.object({ account: z.string(), debitMinor: z.number().int(), creditMinor: z.number().int(), currency: z.string() });
-export const readTrialBalance = endpoint({ id: 'finance.trial_balance', method: 'GET', path: '/api/ledger/trial-balance', summary: 'Sum of every ledger account by currency; debits and credits are equal.', response: z.object({ rows: z.array(ledgerRow) }) });
+export const ledgerRow = z.object({
+  account: z.string(),
+  debitMinor: z.number().int(),
+  creditMinor: z.number().int(),
+  currency: z.string(),
+});
+export const readTrialBalance = endpoint({
+  id: 'finance.trial_balance',
+  method: 'GET',
+  path: '/api/ledger/trial-balance',
+  summary: 'Sum of every ledger account by currency; debits and credits are equal.',
+  response: z.object({ rows: z.array(ledgerRow) }),
+});
 
 export const financeEndpoints = [readFeeTable, replaceFeeTable, readTrialBalance];

@@ -10,7 +10,9 @@ export interface PriceInput {
 
 /** The last minute of the early fee, as an instant: the end of that day in the event's zone. */
 export const earlyUntil = (category: { earlyUntil: string | null }, zone: string): string | null =>
-  category.earlyUntil === null ? null : localToInstant(category.earlyUntil, '23:59', zone).replace('00.000Z', '59.999Z');
+  category.earlyUntil === null
+    ? null
+    : localToInstant(category.earlyUntil, '23:59', zone).replace('00.000Z', '59.999Z');
 
 /** The early fee holds until the end of its last day in the event's zone. */
 export function isEarly(category: { earlyUntil: string | null }, zone: string, now: Date): boolean {
@@ -20,7 +22,10 @@ export function isEarly(category: { earlyUntil: string | null }, zone: string, n
 
 /** Categories that a person may choose: those for the stage, and those for everybody. */
 export const categoriesFor = (table: FeeTable, stage: string | null): FeeCategory[] =>
-  table.categories.filter((category) => category.stages.length === 0 || (stage !== null && (category.stages as string[]).includes(stage)));
+  table.categories.filter(
+    (category) =>
+      category.stages.length === 0 || (stage !== null && (category.stages as string[]).includes(stage)),
+  );
 
 /**
  * Price of a registration, line by line, with the reasons. Amounts in minor units of the table's currency. Net amounts
@@ -32,12 +37,23 @@ export function price(input: PriceInput, table: FeeTable, now: Date): Price {
   const category = table.categories.find((candidate) => candidate.id === input.categoryId);
   if (!category) throw new RangeError('no such fee category');
   const reasons: string[] = [];
-  const lines = [feeLine(category, table, now, reasons), ...input.extras.filter((wish) => wish.quantity > 0).map((wish) => extraLine(wish, table))];
+  const lines = [
+    feeLine(category, table, now, reasons),
+    ...input.extras.filter((wish) => wish.quantity > 0).map((wish) => extraLine(wish, table)),
+  ];
   const taxes = taxesOf(lines);
   const netMinor = lines.reduce((sum, line) => sum + line.netMinor, 0);
   const taxMinor = taxes.reduce((sum, tax) => sum + tax.taxMinor, 0);
   if (taxMinor === 0 && table.taxNote) reasons.push(table.taxNote);
-  return { currency: table.currency, lines, taxes, netMinor, taxMinor, totalMinor: netMinor + taxMinor, reasons };
+  return {
+    currency: table.currency,
+    lines,
+    taxes,
+    netMinor,
+    taxMinor,
+    totalMinor: netMinor + taxMinor,
+    reasons,
+  };
 }
 
 function feeLine(category: FeeCategory, table: FeeTable, now: Date, reasons: string[]): PriceLine {
@@ -46,38 +62,73 @@ function feeLine(category: FeeCategory, table: FeeTable, now: Date, reasons: str
   const until = earlyUntil(category, table.timeZone);
   let note = '';
   if (until && category.earlyMinor !== null) {
-    note = early ? `${formatMoney(category.regularMinor, table.currency, false)} after ${formatInstant(until, table.timeZone)}` : `the early fee ended ${formatInstant(until, table.timeZone)}`;
-    reasons.push(early ? `Early fee until ${formatInstant(until, table.timeZone)} (${table.timeZone}).` : `Regular fee: the early fee ended ${formatInstant(until, table.timeZone)} (${table.timeZone}).`);
+    note = early
+      ? `${formatMoney(category.regularMinor, table.currency, false)} after ${formatInstant(until, table.timeZone)}`
+      : `the early fee ended ${formatInstant(until, table.timeZone)}`;
+    reasons.push(
+      early
+        ? `Early fee until ${formatInstant(until, table.timeZone)} (${table.timeZone}).`
+        : `Regular fee: the early fee ended ${formatInstant(until, table.timeZone)} (${table.timeZone}).`,
+    );
   }
-  return { kind: 'fee', refId: category.id, label: `Fee, ${category.name}${early ? ', early' : ''}`, note, quantity: 1, unitMinor, netMinor: unitMinor, taxBasisPoints: category.taxBasisPoints };
+  return {
+    kind: 'fee',
+    refId: category.id,
+    label: `Fee, ${category.name}${early ? ', early' : ''}`,
+    note,
+    quantity: 1,
+    unitMinor,
+    netMinor: unitMinor,
+    taxBasisPoints: category.taxBasisPoints,
+  };
 }
 
 function extraLine(wish: { extraId: string; quantity: number }, table: FeeTable): PriceLine {
   const extra = table.extras.find((candidate) => candidate.id === wish.extraId);
   if (!extra) throw new RangeError('no such extra');
-  const note = wish.quantity > 1 ? `${wish.quantity} × ${formatMoney(extra.priceMinor, table.currency, false)}` : '';
-  return { kind: 'extra', refId: extra.id, label: extra.name, note, quantity: wish.quantity, unitMinor: extra.priceMinor, netMinor: extra.priceMinor * wish.quantity, taxBasisPoints: extra.taxBasisPoints };
+  const note =
+    wish.quantity > 1 ? `${wish.quantity} × ${formatMoney(extra.priceMinor, table.currency, false)}` : '';
+  return {
+    kind: 'extra',
+    refId: extra.id,
+    label: extra.name,
+    note,
+    quantity: wish.quantity,
+    unitMinor: extra.priceMinor,
+    netMinor: extra.priceMinor * wish.quantity,
+    taxBasisPoints: extra.taxBasisPoints,
+  };
 }
 
 /** Tax per rate: basis points of the sum of the lines with that rate, rounded once. */
 export function taxesOf(lines: readonly Pick<PriceLine, 'netMinor' | 'taxBasisPoints'>[]): Price['taxes'] {
   const rates = [...new Set(lines.map((line) => line.taxBasisPoints))].sort((a, b) => b - a);
   return rates.map((taxBasisPoints) => {
-    const netMinor = lines.filter((line) => line.taxBasisPoints === taxBasisPoints).reduce((sum, line) => sum + line.netMinor, 0);
+    const netMinor = lines
+      .filter((line) => line.taxBasisPoints === taxBasisPoints)
+      .reduce((sum, line) => sum + line.netMinor, 0);
     return { taxBasisPoints, netMinor, taxMinor: divideRounded(netMinor * taxBasisPoints, 10_000) };
   });
 }
 
 /** Field errors of a fee table, keyed by path. */
-export function feeTableErrors(table: { categories: readonly Omit<FeeCategory, 'id'>[]; extras: readonly { name: string }[] }): Record<string, string> {
+export function feeTableErrors(table: {
+  categories: readonly Omit<FeeCategory, 'id'>[];
+  extras: readonly { name: string }[];
+}): Record<string, string> {
   const errors: Record<string, string> = {};
   table.categories.forEach((category, index) => {
-    if ((category.earlyMinor === null) !== (category.earlyUntil === null)) errors[`categories.${index}.earlyUntil`] = 'An early fee needs its last day, and a last day an early fee.';
-    if (category.earlyMinor !== null && category.earlyMinor > category.regularMinor) errors[`categories.${index}.earlyMinor`] = 'The early fee is above the regular one.';
-    if (table.categories.findIndex((other) => other.name === category.name) < index) errors[`categories.${index}.name`] = 'Another category has this name.';
+    if ((category.earlyMinor === null) !== (category.earlyUntil === null))
+      errors[`categories.${index}.earlyUntil`] =
+        'An early fee needs its last day, and a last day an early fee.';
+    if (category.earlyMinor !== null && category.earlyMinor > category.regularMinor)
+      errors[`categories.${index}.earlyMinor`] = 'The early fee is above the regular one.';
+    if (table.categories.findIndex((other) => other.name === category.name) < index)
+      errors[`categories.${index}.name`] = 'Another category has this name.';
   });
   table.extras.forEach((extra, index) => {
-    if (table.extras.findIndex((other) => other.name === extra.name) < index) errors[`extras.${index}.name`] = 'Another extra has this name.';
+    if (table.extras.findIndex((other) => other.name === extra.name) < index)
+      errors[`extras.${index}.name`] = 'Another extra has this name.';
   });
   return errors;
 }
@@ -90,7 +141,10 @@ export interface JournalLine {
 }
 
 /** Entry for a placed order: what is owed to us against income and tax. */
-export const orderEntry = (eventId: string, price: { netMinor: number; taxMinor: number; totalMinor: number }): JournalLine[] =>
+export const orderEntry = (
+  eventId: string,
+  price: { netMinor: number; taxMinor: number; totalMinor: number },
+): JournalLine[] =>
   withoutZero([
     { account: 'receivable', debitMinor: price.totalMinor, creditMinor: 0 },
     { account: `fee income:${eventId}`, debitMinor: 0, creditMinor: price.netMinor },
@@ -106,12 +160,20 @@ export const cardPaymentEntry = (amountMinor: number): JournalLine[] =>
 
 /** The same entry the other way round: corrections reverse, nothing is edited. */
 export const reversed = (lines: readonly JournalLine[]): JournalLine[] =>
-  lines.map((line) => ({ account: line.account, debitMinor: line.creditMinor, creditMinor: line.debitMinor }));
+  lines.map((line) => ({
+    account: line.account,
+    debitMinor: line.creditMinor,
+    creditMinor: line.debitMinor,
+  }));
 
-const withoutZero = (lines: JournalLine[]): JournalLine[] => lines.filter((line) => line.debitMinor !== 0 || line.creditMinor !== 0);
+const withoutZero = (lines: JournalLine[]): JournalLine[] =>
+  lines.filter((line) => line.debitMinor !== 0 || line.creditMinor !== 0);
 
 /** What a Checkout Session means for its order (docs.stripe.com: status, payment_status). */
-export function sessionOutcome(session: { status: string | null; paymentStatus: string }): 'paid' | 'waiting' | 'expired' | 'open' {
+export function sessionOutcome(session: {
+  status: string | null;
+  paymentStatus: string;
+}): 'paid' | 'waiting' | 'expired' | 'open' {
   if (session.status === 'complete') return session.paymentStatus === 'unpaid' ? 'waiting' : 'paid';
   if (session.status === 'expired') return 'expired';
   return 'open';

@@ -3,18 +3,42 @@ import { endpoint } from '../../http/endpoint';
 import { id, slug } from '../../lib/ids';
 import { instant, localDate } from '../../lib/time';
 import { careerStageSchema } from '../accounts/accounts.contract';
-import { awardLine, awardState, costKind, evidenceSchema, fundSchema, grantFlag, itemInput, talkLine } from './grants.contract';
+import {
+  awardLine,
+  awardState,
+  costKind,
+  evidenceSchema,
+  fundSchema,
+  grantFlag,
+  itemInput,
+  talkLine,
+} from './grants.contract';
 
 const inEvent = z.object({ event: slug });
 const positiveMinor = z.number().int().min(1, 'More than nothing is needed.').max(1_000_000_000);
 
-export const boardAward = z.object({ id, fundId: id, state: awardState, lines: z.array(awardLine), totalMinor: z.number().int(), version: z.number().int(), capped: z.boolean() });
+export const boardAward = z.object({
+  id,
+  fundId: id,
+  state: awardState,
+  lines: z.array(awardLine),
+  totalMinor: z.number().int(),
+  version: z.number().int(),
+  capped: z.boolean(),
+});
 export type BoardAward = z.infer<typeof boardAward>;
 export const boardRow = z.object({
   id,
   reference: z.string(),
   /** Null for a conflict of interest: then nothing about the person is told. */
-  person: z.object({ printedName: z.string(), affiliation: z.string(), country: z.string().nullable(), stage: careerStageSchema }).nullable(),
+  person: z
+    .object({
+      printedName: z.string(),
+      affiliation: z.string(),
+      country: z.string().nullable(),
+      stage: careerStageSchema,
+    })
+    .nullable(),
   conflict: z.enum(['declared', 'institution', 'own']).nullable(),
   rank: z.number().int().nullable(),
   /** Mean, one decimal; null before it may be seen or when there is none. */
@@ -38,13 +62,29 @@ export const grantBoard = z.object({
   decidedAt: instant.nullable(),
   rows: z.array(boardRow),
   funds: z.array(fundSchema),
-  counts: z.object({ submitted: z.number().int(), drafts: z.number().int(), awarded: z.number().int(), notFunded: z.number().int(), queried: z.number().int(), toOffer: z.number().int(), toDecline: z.number().int(), waiting: z.number().int() }),
+  counts: z.object({
+    submitted: z.number().int(),
+    drafts: z.number().int(),
+    awarded: z.number().int(),
+    notFunded: z.number().int(),
+    queried: z.number().int(),
+    toOffer: z.number().int(),
+    toDecline: z.number().int(),
+    waiting: z.number().int(),
+  }),
   /** Why decision letters can't be sent now; null when they can. */
   notYet: z.string().nullable(),
   can: z.object({ score: z.boolean(), propose: z.boolean(), send: z.boolean(), addFund: z.boolean() }),
 });
 export type GrantBoard = z.infer<typeof grantBoard>;
-export const readBoard = endpoint({ id: 'grants.board', method: 'GET', path: '/api/events/:event/grant-applications', summary: 'Grant applications by rank, with funds and awards.', params: inEvent, response: grantBoard });
+export const readBoard = endpoint({
+  id: 'grants.board',
+  method: 'GET',
+  path: '/api/events/:event/grant-applications',
+  summary: 'Grant applications by rank, with funds and awards.',
+  params: inEvent,
+  response: grantBoard,
+});
 
 export const grantDetail = z.object({
   row: boardRow,
@@ -55,15 +95,26 @@ export const grantDetail = z.object({
   submittedAt: instant.nullable(),
   items: z.array(itemInput),
   evidence: z.array(evidenceSchema),
-  myReview: z.object({ score: z.number().int().nullable(), comment: z.string(), conflict: z.boolean() }).nullable(),
+  myReview: z
+    .object({ score: z.number().int().nullable(), comment: z.string(), conflict: z.boolean() })
+    .nullable(),
   /** Other people's scores; null until one's own is given. */
-  reviews: z.array(z.object({ reviewer: z.string(), score: z.number().int(), comment: z.string() })).nullable(),
+  reviews: z
+    .array(z.object({ reviewer: z.string(), score: z.number().int(), comment: z.string() }))
+    .nullable(),
   talks: z.array(z.object({ awardId: id, lines: z.array(talkLine) })),
   can: z.object({ score: z.boolean(), propose: z.boolean() }),
 });
 export type GrantDetail = z.infer<typeof grantDetail>;
 const ofApplication = z.object({ event: slug, application: id });
-export const readGrant = endpoint({ id: 'grants.read', method: 'GET', path: '/api/events/:event/grant-applications/:application', summary: 'One grant application for the committee.', params: ofApplication, response: grantDetail });
+export const readGrant = endpoint({
+  id: 'grants.read',
+  method: 'GET',
+  path: '/api/events/:event/grant-applications/:application',
+  summary: 'One grant application for the committee.',
+  params: ofApplication,
+  response: grantDetail,
+});
 export const scoreGrant = endpoint({
   id: 'grants.score',
   method: 'PUT',
@@ -92,12 +143,22 @@ export const proposeAward = endpoint({
   }),
   response: grantDetail,
 });
-export const answerQuery = endpoint({ id: 'grants.answer_query', method: 'POST', path: '/api/events/:event/awards/:award/answer', summary: 'Answer a funder’s question; the award goes back to the funder.', params: z.object({ event: slug, award: id }), body: z.strictObject({ text: z.string().trim().min(2, 'Write an answer.').max(1000) }), response: grantDetail, versioned: true });
+export const answerQuery = endpoint({
+  id: 'grants.answer_query',
+  method: 'POST',
+  path: '/api/events/:event/awards/:award/answer',
+  summary: 'Answer a funder’s question; the award goes back to the funder.',
+  params: z.object({ event: slug, award: id }),
+  body: z.strictObject({ text: z.string().trim().min(2, 'Write an answer.').max(1000) }),
+  response: grantDetail,
+  versioned: true,
+});
 export const sendDecisions = endpoint({
   id: 'grants.send',
   method: 'POST',
   path: '/api/events/:event/grant-decisions',
-  summary: 'Send the decision letters: offers where all awards are approved, and regrets where there is none.',
+  summary:
+    'Send the decision letters: offers where all awards are approved, and regrets where there is none.',
   params: inEvent,
   body: z.strictObject({
     /** Last day for accepting, until 23:59 in the event’s zone. */
@@ -106,4 +167,11 @@ export const sendDecisions = endpoint({
   response: z.object({ offered: z.number().int(), notAwarded: z.number().int(), held: z.number().int() }),
 });
 
-export const grantsCommitteeEndpoints = [readBoard, readGrant, scoreGrant, proposeAward, answerQuery, sendDecisions];
+export const grantsCommitteeEndpoints = [
+  readBoard,
+  readGrant,
+  scoreGrant,
+  proposeAward,
+  answerQuery,
+  sendDecisions,
+];

@@ -47,14 +47,24 @@ export const funderView = z.object({
 });
 export type FunderView = z.infer<typeof funderView>;
 const inFundPath = z.object({ fund: id });
-export const readFund = endpoint({ id: 'grants.fund', method: 'GET', path: '/api/funds/:fund', summary: 'The awards proposed to one fund, for its funder: reference, stage and region, no names.', params: inFundPath, response: funderView });
+export const readFund = endpoint({
+  id: 'grants.fund',
+  method: 'GET',
+  path: '/api/funds/:fund',
+  summary: 'The awards proposed to one fund, for its funder: reference, stage and region, no names.',
+  params: inFundPath,
+  response: funderView,
+});
 export const decideAward = endpoint({
   id: 'grants.decide',
   method: 'POST',
   path: '/api/funds/:fund/awards/:award/decision',
   summary: 'Approve an award, query it with a question, or undo that.',
   params: z.object({ fund: id, award: id }),
-  body: z.strictObject({ decision: z.enum(['approved', 'queried', 'proposed']), question: z.string().trim().max(1000).default('') }),
+  body: z.strictObject({
+    decision: z.enum(['approved', 'queried', 'proposed']),
+    question: z.string().trim().max(1000).default(''),
+  }),
   response: funderAward,
   versioned: true,
 });
@@ -64,7 +74,12 @@ export const approveAwards = endpoint({
   path: '/api/funds/:fund/approvals',
   summary: 'Approve several awards as they were read; none when one has changed.',
   params: inFundPath,
-  body: z.strictObject({ awards: z.array(z.strictObject({ id, version: z.number().int() })).min(1).max(500) }),
+  body: z.strictObject({
+    awards: z
+      .array(z.strictObject({ id, version: z.number().int() }))
+      .min(1)
+      .max(500),
+  }),
   response: funderView,
 });
 

@@ -52,7 +52,14 @@ export const grantInput = z.strictObject({
 });
 export type GrantInput = z.infer<typeof grantInput>;
 
-export const evidenceSchema = z.object({ id, kind: costKind, fileName: z.string(), bytes: z.number().int(), type: z.string(), uploadedAt: instant });
+export const evidenceSchema = z.object({
+  id,
+  kind: costKind,
+  fileName: z.string(),
+  bytes: z.number().int(),
+  type: z.string(),
+  uploadedAt: instant,
+});
 export type Evidence = z.infer<typeof evidenceSchema>;
 
 export const awardLine = z.object({ kind: costKind, amountMinor: z.number().int() });
@@ -83,9 +90,21 @@ export const myGrant = z.object({
   coveredKinds: z.array(costKind),
   talks: z.array(z.object({ id, title: z.string() })),
   /** From the profile; needed for handing in. */
-  profile: z.object({ printedName: z.string(), affiliation: z.string(), country: z.string().nullable(), careerStage: careerStageSchema.nullable() }),
+  profile: z.object({
+    printedName: z.string(),
+    affiliation: z.string(),
+    country: z.string().nullable(),
+    careerStage: careerStageSchema.nullable(),
+  }),
   application: z
-    .object({ reference: z.string(), state: grantState, input: grantInput, evidence: z.array(evidenceSchema), submittedAt: instant.nullable(), savedAt: instant })
+    .object({
+      reference: z.string(),
+      state: grantState,
+      input: grantInput,
+      evidence: z.array(evidenceSchema),
+      submittedAt: instant.nullable(),
+      savedAt: instant,
+    })
     .nullable(),
   /** Null until the decision letters have been sent. */
   decision: z
@@ -97,16 +116,56 @@ export const myGrant = z.object({
       answerBy: instant.nullable(),
     })
     .nullable(),
-  can: z.object({ edit: z.boolean(), submit: z.boolean(), withdraw: z.boolean(), accept: z.boolean(), return: z.boolean() }),
+  can: z.object({
+    edit: z.boolean(),
+    submit: z.boolean(),
+    withdraw: z.boolean(),
+    accept: z.boolean(),
+    return: z.boolean(),
+  }),
   /** 0 before the first save. */
   version: z.number().int(),
 });
 export type MyGrant = z.infer<typeof myGrant>;
 
-export const readMyGrant = endpoint({ id: 'grants.mine', method: 'GET', path: '/api/events/:event/my-grant', summary: 'One’s own grant application and its decision.', params: inEvent, response: myGrant });
-export const saveMyGrant = endpoint({ id: 'grants.save', method: 'PUT', path: '/api/events/:event/my-grant', summary: 'Save the draft of one’s own grant application (version 0 for the first).', params: inEvent, body: grantInput, response: myGrant, versioned: true });
-export const submitMyGrant = endpoint({ id: 'grants.submit', method: 'POST', path: '/api/events/:event/my-grant/submission', summary: 'Hand in one’s own grant application as saved.', params: inEvent, body: z.strictObject({}), response: myGrant, versioned: true });
-export const withdrawMyGrant = endpoint({ id: 'grants.withdraw', method: 'POST', path: '/api/events/:event/my-grant/withdrawal', summary: 'Withdraw one’s own grant application before a decision.', params: inEvent, body: z.strictObject({}), response: myGrant, versioned: true });
+export const readMyGrant = endpoint({
+  id: 'grants.mine',
+  method: 'GET',
+  path: '/api/events/:event/my-grant',
+  summary: 'One’s own grant application and its decision.',
+  params: inEvent,
+  response: myGrant,
+});
+export const saveMyGrant = endpoint({
+  id: 'grants.save',
+  method: 'PUT',
+  path: '/api/events/:event/my-grant',
+  summary: 'Save the draft of one’s own grant application (version 0 for the first).',
+  params: inEvent,
+  body: grantInput,
+  response: myGrant,
+  versioned: true,
+});
+export const submitMyGrant = endpoint({
+  id: 'grants.submit',
+  method: 'POST',
+  path: '/api/events/:event/my-grant/submission',
+  summary: 'Hand in one’s own grant application as saved.',
+  params: inEvent,
+  body: z.strictObject({}),
+  response: myGrant,
+  versioned: true,
+});
+export const withdrawMyGrant = endpoint({
+  id: 'grants.withdraw',
+  method: 'POST',
+  path: '/api/events/:event/my-grant/withdrawal',
+  summary: 'Withdraw one’s own grant application before a decision.',
+  params: inEvent,
+  body: z.strictObject({}),
+  response: myGrant,
+  versioned: true,
+});
 export const addEvidence = endpoint({
   id: 'grants.add_evidence',
   method: 'POST',
@@ -117,9 +176,32 @@ export const addEvidence = endpoint({
   response: myGrant,
   upload: { field: 'file', maxBytes: MAX_EVIDENCE },
 });
-export const removeEvidence = endpoint({ id: 'grants.remove_evidence', method: 'DELETE', path: '/api/events/:event/my-grant/evidence/:evidence', summary: 'Remove a document from a draft.', params: z.object({ event: slug, evidence: id }), response: myGrant });
-export const answerAward = endpoint({ id: 'grants.answer', method: 'POST', path: '/api/events/:event/my-grant/answer', summary: 'Accept the offered grant, or give it back.', params: inEvent, body: z.strictObject({ answer: z.enum(['accepted', 'returned']) }), response: myGrant, versioned: true });
-export const downloadEvidence = endpoint({ id: 'grants.evidence', method: 'GET', path: '/api/events/:event/grant-evidence/:evidence', summary: 'A document: for its owner and the committee.', params: z.object({ event: slug, evidence: id }), response: 'file' });
+export const removeEvidence = endpoint({
+  id: 'grants.remove_evidence',
+  method: 'DELETE',
+  path: '/api/events/:event/my-grant/evidence/:evidence',
+  summary: 'Remove a document from a draft.',
+  params: z.object({ event: slug, evidence: id }),
+  response: myGrant,
+});
+export const answerAward = endpoint({
+  id: 'grants.answer',
+  method: 'POST',
+  path: '/api/events/:event/my-grant/answer',
+  summary: 'Accept the offered grant, or give it back.',
+  params: inEvent,
+  body: z.strictObject({ answer: z.enum(['accepted', 'returned']) }),
+  response: myGrant,
+  versioned: true,
+});
+export const downloadEvidence = endpoint({
+  id: 'grants.evidence',
+  method: 'GET',
+  path: '/api/events/:event/grant-evidence/:evidence',
+  summary: 'A document: for its owner and the committee.',
+  params: z.object({ event: slug, evidence: id }),
+  response: 'file',
+});
 
 export const eligibility = z.strictObject({
   /** Empty lists allow everybody. */
@@ -172,7 +254,35 @@ export const fundSchema = fundInput.extend({
 });
 export type Fund = z.infer<typeof fundSchema>;
 
-export const createFund = endpoint({ id: 'grants.create_fund', method: 'POST', path: '/api/events/:event/funds', summary: 'Add a fund.', params: inEvent, body: fundInput, response: fundSchema });
-export const updateFund = endpoint({ id: 'grants.update_fund', method: 'PUT', path: '/api/events/:event/funds/:fund', summary: 'Change a fund; never below what is awarded.', params: z.object({ event: slug, fund: id }), body: fundInput, response: fundSchema, versioned: true });
+export const createFund = endpoint({
+  id: 'grants.create_fund',
+  method: 'POST',
+  path: '/api/events/:event/funds',
+  summary: 'Add a fund.',
+  params: inEvent,
+  body: fundInput,
+  response: fundSchema,
+});
+export const updateFund = endpoint({
+  id: 'grants.update_fund',
+  method: 'PUT',
+  path: '/api/events/:event/funds/:fund',
+  summary: 'Change a fund; never below what is awarded.',
+  params: z.object({ event: slug, fund: id }),
+  body: fundInput,
+  response: fundSchema,
+  versioned: true,
+});
 
-export const grantsEndpoints = [readMyGrant, saveMyGrant, submitMyGrant, withdrawMyGrant, addEvidence, removeEvidence, answerAward, downloadEvidence, createFund, updateFund];
+export const grantsEndpoints = [
+  readMyGrant,
+  saveMyGrant,
+  submitMyGrant,
+  withdrawMyGrant,
+  addEvidence,
+  removeEvidence,
+  answerAward,
+  downloadEvidence,
+  createFund,
+  updateFund,
+];

@@ -30,7 +30,12 @@ const REGIONS: Record<string, string> = {
   Antarctica: 'AQ',
 };
 
-const BY_COUNTRY = new Map(Object.entries(REGIONS).flatMap(([region, codes]) => codes.split(' ').map((code) => [code, region] as const)));
+const BY_COUNTRY = new Map(
+  Object.entries(REGIONS).flatMap(([region, codes]) =>
+    codes.split(' ').map((code) => [code, region] as const),
+  ),
+);
 
 /** Region of an ISO 3166-1 alpha-2 code; `Not stated` for none. */
-export const regionOf = (country: string | null): string => (country && BY_COUNTRY.get(country)) || 'Not stated';
+export const regionOf = (country: string | null): string =>
+  (country && BY_COUNTRY.get(country)) || 'Not stated';

@@ -1,5 +1,12 @@
 /** To whom an organiser can write. */
-export const letterGroups = ['speakers', 'owing_abstract', 'chairs', 'participants', 'unpaid', 'committee'] as const;
+export const letterGroups = [
+  'speakers',
+  'owing_abstract',
+  'chairs',
+  'participants',
+  'unpaid',
+  'committee',
+] as const;
 export type LetterGroup = (typeof letterGroups)[number];
 export const groupNames: Record<LetterGroup, string> = {
   speakers: 'Speakers and lecturers',
@@ -11,7 +18,16 @@ export const groupNames: Record<LetterGroup, string> = {
 };
 
 /** What a letter can say of its reader, in the order of the list that is offered. */
-export const mergeFields = ['name', 'given_name', 'event', 'dates', 'place', 'talks', 'abstract_due', 'own_page'] as const;
+export const mergeFields = [
+  'name',
+  'given_name',
+  'event',
+  'dates',
+  'place',
+  'talks',
+  'abstract_due',
+  'own_page',
+] as const;
 export type MergeField = (typeof mergeFields)[number];
 export const fieldNames: Record<MergeField, string> = {
   name: 'Name as printed',
@@ -30,7 +46,9 @@ const isField = (name: string): name is MergeField => (mergeFields as readonly s
 const namesIn = (text: string): string[] => [...text.matchAll(FIELD)].map((match) => (match[1] ?? '').trim());
 
 /** Fields of a text that do not exist, each once, as they were written. */
-export const unknownFields = (text: string): string[] => [...new Set(namesIn(text).filter((name) => !isField(name)))];
+export const unknownFields = (text: string): string[] => [
+  ...new Set(namesIn(text).filter((name) => !isField(name))),
+];
 
 /** Fields that a text uses and for which this reader has no value. */
 export const missingFields = (text: string, values: MergeValues): MergeField[] =>

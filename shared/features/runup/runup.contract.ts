@@ -25,11 +25,19 @@ export const overviewSchema = z.object({
   places: placesSchema,
   /** Speakers, lecturers and tutors who need no place of their own. */
   speakers: z.number().int(),
-  money: z.object({ currency: z.string(), receivedMinor: z.number().int(), openMinor: z.number().int(), steps: z.array(z.object({ on: localDate, totalMinor: z.number().int() })) }),
+  money: z.object({
+    currency: z.string(),
+    receivedMinor: z.number().int(),
+    openMinor: z.number().int(),
+    steps: z.array(z.object({ on: localDate, totalMinor: z.number().int() })),
+  }),
   abstracts: z.array(z.object({ kind: talkKind, handedIn: z.number().int(), missing: z.number().int() })),
   arrivals: z.array(z.object({ on: localDate.nullable(), people: z.number().int() })),
   /** People who are expected to eat, by diet; how many allergies were noted. */
-  meals: z.object({ diets: z.array(z.object({ diet, people: z.number().int() })), allergies: z.number().int() }),
+  meals: z.object({
+    diets: z.array(z.object({ diet, people: z.number().int() })),
+    allergies: z.number().int(),
+  }),
   log: z.array(z.object({ id, at: instant, who: z.string(), what: z.string() })),
 });
 export type Overview = z.infer<typeof overviewSchema>;

@@ -13,15 +13,23 @@ export interface HalfRhomb {
 }
 
 const GOLDEN = (1 + Math.sqrt(5)) / 2;
-const towards = (from: Point, to: Point, share: number): Point => ({ x: from.x + (to.x - from.x) * share, y: from.y + (to.y - from.y) * share });
-const polar = (radius: number, angle: number): Point => ({ x: radius * Math.cos(angle), y: radius * Math.sin(angle) });
+const towards = (from: Point, to: Point, share: number): Point => ({
+  x: from.x + (to.x - from.x) * share,
+  y: from.y + (to.y - from.y) * share,
+});
+const polar = (radius: number, angle: number): Point => ({
+  x: radius * Math.cos(angle),
+  y: radius * Math.sin(angle),
+});
 
 /** Ten thin halves around a point: a decagon of the given radius. */
 export function decagon(radius: number): HalfRhomb[] {
   return Array.from({ length: 10 }, (_, i) => {
     const [b, c] = [polar(radius, ((2 * i - 1) * Math.PI) / 10), polar(radius, ((2 * i + 1) * Math.PI) / 10)];
     // Every second one is mirrored, so that halves meet in whole rhombs.
-    return i % 2 === 0 ? { thin: true, a: { x: 0, y: 0 }, b: c, c: b } : { thin: true, a: { x: 0, y: 0 }, b, c };
+    return i % 2 === 0
+      ? { thin: true, a: { x: 0, y: 0 }, b: c, c: b }
+      : { thin: true, a: { x: 0, y: 0 }, b, c };
   });
 }
 
@@ -74,7 +82,14 @@ export function torusKnot(p: number, q: number, steps: number): { x: number; y: 
 /** Path data of a torus knot drawn as a diagram: strands broken where another passes above. */
 export function torusKnotPath(p: number, q: number, scale: number, steps = 1440): string {
   const curve = torusKnot(p, q, steps);
-  const hidden = curve.map((point, i) => curve.some((other, j) => apart(i, j, steps) > steps / 40 && other.z > point.z + 0.2 && Math.hypot(other.x - point.x, other.y - point.y) < 0.14));
+  const hidden = curve.map((point, i) =>
+    curve.some(
+      (other, j) =>
+        apart(i, j, steps) > steps / 40 &&
+        other.z > point.z + 0.2 &&
+        Math.hypot(other.x - point.x, other.y - point.y) < 0.14,
+    ),
+  );
   let path = '';
   for (let i = 0; i <= steps; i++) {
     const [now, before] = [i % steps, (i + steps - 1) % steps];
@@ -85,7 +100,8 @@ export function torusKnotPath(p: number, q: number, scale: number, steps = 1440)
   return path;
 }
 
-const apart = (i: number, j: number, steps: number): number => Math.min(Math.abs(i - j), steps - Math.abs(i - j));
+const apart = (i: number, j: number, steps: number): number =>
+  Math.min(Math.abs(i - j), steps - Math.abs(i - j));
 
 const gcd = (a: number, b: number): number => (b === 0 ? a : gcd(b, a % b));
 

@@ -95,7 +95,9 @@ export const publicTalkPage = z.object({
 export type PublicTalkPage = z.infer<typeof publicTalkPage>;
 
 export const publicPersonRow = publicPerson.extend({
-  talks: z.array(z.object({ id, word: z.string(), title: z.string(), part: z.enum(['speaker', 'chair', 'tutor']) })),
+  talks: z.array(
+    z.object({ id, word: z.string(), title: z.string(), part: z.enum(['speaker', 'chair', 'tutor']) }),
+  ),
 });
 export const publicPeople = z.object({ event: publicEventSummary, items: z.array(publicPersonRow) });
 export type PublicPeople = z.infer<typeof publicPeople>;

@@ -1,4 +1,10 @@
-import { infiniteQueryOptions, queryOptions, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
+import {
+  infiniteQueryOptions,
+  queryOptions,
+  useMutation,
+  useQuery,
+  useQueryClient,
+} from '@tanstack/react-query';
 import * as contract from '@shared/features/accounts/accounts.contract';
 import type { Account, Role, Session } from '@shared/features/accounts/accounts.contract';
 import type { BodyOf } from '@shared/http/endpoint';
@@ -19,7 +25,9 @@ export function useAccount(): Account | null | undefined {
 export function holds(account: Account | null | undefined, role: Role, scopeId?: string): boolean {
   return (
     account?.grants.some(
-      (grant) => grant.role === 'administrator' || (grant.role === role && (grant.scope === 'institute' || grant.scopeId === scopeId)),
+      (grant) =>
+        grant.role === 'administrator' ||
+        (grant.role === role && (grant.scope === 'institute' || grant.scopeId === scopeId)),
     ) ?? false
   );
 }
@@ -33,16 +41,35 @@ export function useEnterSession() {
   };
 }
 
-export const useSignIn = () => useMutation({ mutationFn: (body: BodyOf<typeof contract.signIn>) => call(contract.signIn, { body }), onSuccess: useEnterSession() });
-export const useSignUp = () => useMutation({ mutationFn: (body: BodyOf<typeof contract.signUp>) => call(contract.signUp, { body }) });
-export const useVerify = () => useMutation({ mutationFn: (token: string) => call(contract.verifyEmail, { body: { token } }), onSuccess: useEnterSession() });
-export const useAskReset = () => useMutation({ mutationFn: (email: string) => call(contract.askReset, { body: { email } }) });
+export const useSignIn = () =>
+  useMutation({
+    mutationFn: (body: BodyOf<typeof contract.signIn>) => call(contract.signIn, { body }),
+    onSuccess: useEnterSession(),
+  });
+export const useSignUp = () =>
+  useMutation({ mutationFn: (body: BodyOf<typeof contract.signUp>) => call(contract.signUp, { body }) });
+export const useVerify = () =>
+  useMutation({
+    mutationFn: (token: string) => call(contract.verifyEmail, { body: { token } }),
+    onSuccess: useEnterSession(),
+  });
+export const useAskReset = () =>
+  useMutation({ mutationFn: (email: string) => call(contract.askReset, { body: { email } }) });
 export const useReset = () =>
-  useMutation({ mutationFn: (body: { token: string; password: string }) => call(contract.resetPassword, { body }), onSuccess: useEnterSession() });
+  useMutation({
+    mutationFn: (body: { token: string; password: string }) => call(contract.resetPassword, { body }),
+    onSuccess: useEnterSession(),
+  });
 export const useChangePassword = () =>
-  useMutation({ mutationFn: (body: { current: string; password: string }) => call(contract.changePassword, { body }) });
+  useMutation({
+    mutationFn: (body: { current: string; password: string }) => call(contract.changePassword, { body }),
+  });
 export const useAcceptInvitation = (token: string) =>
-  useMutation({ mutationFn: (password?: string) => call(contract.acceptInvitation, { params: { token }, body: { password } }), onSuccess: useEnterSession() });
+  useMutation({
+    mutationFn: (password?: string) =>
+      call(contract.acceptInvitation, { params: { token }, body: { password } }),
+    onSuccess: useEnterSession(),
+  });
 
 export function useSignOut() {
   const client = useQueryClient();
@@ -53,14 +80,22 @@ export function useSaveProfile(version: number) {
   const client = useQueryClient();
   return useMutation({
     mutationFn: (body: BodyOf<typeof contract.saveProfile>) => call(contract.saveProfile, { body, version }),
-    onSuccess: (account) => client.setQueryData(sessionQuery.queryKey, (session) => session && { ...session, account }),
+    onSuccess: (account) =>
+      client.setQueryData(sessionQuery.queryKey, (session) => session && { ...session, account }),
   });
 }
 
 export const invitationQuery = (token: string) =>
-  queryOptions({ queryKey: ['accounts', 'invitation', token], queryFn: () => call(contract.readInvitation, { params: { token } }), retry: false });
+  queryOptions({
+    queryKey: ['accounts', 'invitation', token],
+    queryFn: () => call(contract.readInvitation, { params: { token } }),
+    retry: false,
+  });
 
-export const sessionsQuery = queryOptions({ queryKey: ['accounts', 'sessions'], queryFn: () => call(contract.listSessions) });
+export const sessionsQuery = queryOptions({
+  queryKey: ['accounts', 'sessions'],
+  queryFn: () => call(contract.listSessions),
+});
 export function useEndSession() {
   const client = useQueryClient();
   return useMutation({
@@ -69,12 +104,17 @@ export function useEndSession() {
   });
 }
 
-export const demoAccountsQuery = queryOptions({ queryKey: ['accounts', 'demo'], queryFn: () => call(contract.listDemoAccounts), staleTime: Infinity });
+export const demoAccountsQuery = queryOptions({
+  queryKey: ['accounts', 'demo'],
+  queryFn: () => call(contract.listDemoAccounts),
+  staleTime: Infinity,
+});
 
 export const accountsQuery = (q: string, role?: Role) =>
   infiniteQueryOptions({
     queryKey: ['accounts', 'list', q, role],
-    queryFn: ({ pageParam, signal }) => call(contract.listAccounts, { query: { q, role, cursor: pageParam ?? undefined }, signal }),
+    queryFn: ({ pageParam, signal }) =>
+      call(contract.listAccounts, { query: { q, role, cursor: pageParam ?? undefined }, signal }),
     initialPageParam: null as string | null,
     getNextPageParam: (page) => page.next,
   });
@@ -82,7 +122,8 @@ export const accountsQuery = (q: string, role?: Role) =>
 export function useGrantRole() {
   const client = useQueryClient();
   return useMutation({
-    mutationFn: ({ account, ...body }: { account: string } & BodyOf<typeof contract.grantRole>) => call(contract.grantRole, { params: { account }, body }),
+    mutationFn: ({ account, ...body }: { account: string } & BodyOf<typeof contract.grantRole>) =>
+      call(contract.grantRole, { params: { account }, body }),
     onSuccess: () => client.invalidateQueries({ queryKey: ['accounts', 'list'] }),
   });
 }
@@ -93,12 +134,14 @@ export function useEndRole() {
     onSuccess: () => client.invalidateQueries({ queryKey: ['accounts', 'list'] }),
   });
 }
-export const useInvite = () => useMutation({ mutationFn: (body: BodyOf<typeof contract.invite>) => call(contract.invite, { body }) });
+export const useInvite = () =>
+  useMutation({ mutationFn: (body: BodyOf<typeof contract.invite>) => call(contract.invite, { body }) });
 
 export const auditQuery = (q: string) =>
   infiniteQueryOptions({
     queryKey: ['accounts', 'audit', q],
-    queryFn: ({ pageParam, signal }) => call(contract.listAudit, { query: { q, cursor: pageParam ?? undefined }, signal }),
+    queryFn: ({ pageParam, signal }) =>
+      call(contract.listAudit, { query: { q, cursor: pageParam ?? undefined }, signal }),
     initialPageParam: null as string | null,
     getNextPageParam: (page) => page.next,
   });

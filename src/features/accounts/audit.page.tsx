@@ -20,24 +20,63 @@ export function Component() {
   const rows = query.data?.pages.flatMap((page) => page.items) ?? [];
   return (
     <>
-      <PageBar title="Audit trail" facts="Every decision and every change of money, programme or role; nobody can edit it" />
+      <PageBar
+        title="Audit trail"
+        facts="Every decision and every change of money, programme or role; nobody can edit it"
+      />
       <div className="grid gap-4 p-6 max-sm:p-4">
-        <Input dense label="By whom" hideLabel placeholder="By whom" value={q} onChange={(e) => setSearch(e.target.value ? { q: e.target.value } : {}, { replace: true })} className="w-72" />
-        {query.error ? <ErrorState error={query.error} onRetry={() => void query.refetch()} /> : query.isPending ? <Loading what="the audit trail" /> : rows.length === 0 ? <EmptyState title="Nothing has been done yet." /> : (
+        <Input
+          dense
+          label="By whom"
+          hideLabel
+          placeholder="By whom"
+          value={q}
+          onChange={(e) => setSearch(e.target.value ? { q: e.target.value } : {}, { replace: true })}
+          className="w-72"
+        />
+        {query.error ? (
+          <ErrorState error={query.error} onRetry={() => void query.refetch()} />
+        ) : query.isPending ? (
+          <Loading what="the audit trail" />
+        ) : rows.length === 0 ? (
+          <EmptyState title="Nothing has been done yet." />
+        ) : (
           <DataTable
             caption="Audit trail, newest first"
             rows={rows}
             rowKey={(row) => row.id}
             columns={[
-              { key: 'at', head: 'When', cell: (row) => <span className="whitespace-nowrap">{ownTime(row.at)}</span> },
+              {
+                key: 'at',
+                head: 'When',
+                cell: (row) => <span className="whitespace-nowrap">{ownTime(row.at)}</span>,
+              },
               { key: 'who', head: 'Who', cell: (row) => <b className="font-semibold">{row.actorName}</b> },
-              { key: 'what', head: 'What', cell: (row) => row.action.replace('.', ': ').replaceAll('_', ' ') },
-              { key: 'before', head: 'Before', cell: (row) => <span className="break-all text-ink3">{short(row.before)}</span> },
-              { key: 'after', head: 'After', cell: (row) => <span className="break-all">{short(row.after)}</span> },
+              {
+                key: 'what',
+                head: 'What',
+                cell: (row) => row.action.replace('.', ': ').replaceAll('_', ' '),
+              },
+              {
+                key: 'before',
+                head: 'Before',
+                cell: (row) => <span className="break-all text-ink3">{short(row.before)}</span>,
+              },
+              {
+                key: 'after',
+                head: 'After',
+                cell: (row) => <span className="break-all">{short(row.after)}</span>,
+              },
             ]}
           />
         )}
-        {query.hasNextPage && <div><Button busy={query.isFetchingNextPage} onClick={() => void query.fetchNextPage()}>Show more</Button></div>}
+        {query.hasNextPage && (
+          <div>
+            <Button busy={query.isFetchingNextPage} onClick={() => void query.fetchNextPage()}>
+              Show more
+            </Button>
+          </div>
+        )}
       </div>
     </>
   );

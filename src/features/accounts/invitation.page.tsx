@@ -18,7 +18,9 @@ export function Component() {
   const [password, setPassword] = useState('');
   const submit = (event: FormEvent) => {
     event.preventDefault();
-    accept.mutate(query.data?.hasPassword ? undefined : password, { onSuccess: () => void navigate('/home', { replace: true }) });
+    accept.mutate(query.data?.hasPassword ? undefined : password, {
+      onSuccess: () => void navigate('/home', { replace: true }),
+    });
   };
   const errors = fieldErrors(accept.error);
   return (
@@ -32,13 +34,33 @@ export function Component() {
             </p>
             {offer.hasPassword && account?.email !== offer.email ? (
               <p>
-                This address has an account. <Link to={`/sign-in?to=/invitation/${token}`}>Sign in as {offer.email}</Link>, then this page takes the invitation.
+                This address has an account.{' '}
+                <Link to={`/sign-in?to=/invitation/${token}`}>Sign in as {offer.email}</Link>, then this page
+                takes the invitation.
               </p>
             ) : (
               <>
-                {!offer.hasPassword && <Input label="Choose a password" type="password" autoComplete="new-password" value={password} onChange={(e) => setPassword(e.target.value)} error={errors.password} hint="At least 12 characters." />}
-                {accept.error && !errors.password && <p role="alert" className="font-semibold text-alarm">{sentenceOf(accept.error)}</p>}
-                <div><Button type="submit" variant="primary" sizing="form" busy={accept.isPending}>Take the invitation</Button></div>
+                {!offer.hasPassword && (
+                  <Input
+                    label="Choose a password"
+                    type="password"
+                    autoComplete="new-password"
+                    value={password}
+                    onChange={(e) => setPassword(e.target.value)}
+                    error={errors.password}
+                    hint="At least 12 characters."
+                  />
+                )}
+                {accept.error && !errors.password && (
+                  <p role="alert" className="font-semibold text-alarm">
+                    {sentenceOf(accept.error)}
+                  </p>
+                )}
+                <div>
+                  <Button type="submit" variant="primary" sizing="form" busy={accept.isPending}>
+                    Take the invitation
+                  </Button>
+                </div>
               </>
             )}
           </form>

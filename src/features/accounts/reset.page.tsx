@@ -19,9 +19,25 @@ export function Component() {
   return (
     <Narrow title="Choose a new password" lead="All open sessions of the account end.">
       <form noValidate onSubmit={submit} className="grid gap-4">
-        <Input label="New password" type="password" autoComplete="new-password" value={password} onChange={(e) => setPassword(e.target.value)} error={errors.password} hint="At least 12 characters." />
-        {reset.error && !errors.password && <p role="alert" className="font-semibold text-alarm">{sentenceOf(reset.error)}</p>}
-        <div><Button type="submit" variant="primary" sizing="form" busy={reset.isPending}>Set the password</Button></div>
+        <Input
+          label="New password"
+          type="password"
+          autoComplete="new-password"
+          value={password}
+          onChange={(e) => setPassword(e.target.value)}
+          error={errors.password}
+          hint="At least 12 characters."
+        />
+        {reset.error && !errors.password && (
+          <p role="alert" className="font-semibold text-alarm">
+            {sentenceOf(reset.error)}
+          </p>
+        )}
+        <div>
+          <Button type="submit" variant="primary" sizing="form" busy={reset.isPending}>
+            Set the password
+          </Button>
+        </div>
       </form>
     </Narrow>
   );

@@ -11,10 +11,19 @@ export function Component() {
   const navigate = useNavigate();
   return (
     <Narrow title="Confirm your address" lead="This opens your account and signs you in.">
-      <Button variant="primary" sizing="form" busy={verify.isPending} onClick={() => verify.mutate(token, { onSuccess: () => void navigate('/home', { replace: true }) })}>
+      <Button
+        variant="primary"
+        sizing="form"
+        busy={verify.isPending}
+        onClick={() => verify.mutate(token, { onSuccess: () => void navigate('/home', { replace: true }) })}
+      >
         Confirm the address
       </Button>
-      {verify.error && <p role="alert" className="mt-4 font-semibold text-alarm">{sentenceOf(verify.error)}</p>}
+      {verify.error && (
+        <p role="alert" className="mt-4 font-semibold text-alarm">
+          {sentenceOf(verify.error)}
+        </p>
+      )}
     </Narrow>
   );
 }

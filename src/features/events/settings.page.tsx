@@ -37,7 +37,14 @@ export function Component() {
           <PageBar
             title="Settings"
             facts={eventStateNames[event.state]}
-            controls={<Segmented label="Part of the settings" options={parts} value={part} onChange={(value) => setSearch({ part: value })} />}
+            controls={
+              <Segmented
+                label="Part of the settings"
+                options={parts}
+                value={part}
+                onChange={(value) => setSearch({ part: value })}
+              />
+            }
             actions={
               <>
                 <LinkButton to={`/organise/${slug}/settings/fees`}>Fees and extras</LinkButton>
@@ -59,28 +66,71 @@ export function Component() {
 
 function Particulars({ event }: { event: EventDetail }) {
   const save = useUpdateEvent(event.slug);
-  const { kind, title, shortTitle, startsOn, endsOn, timeZone, currency, venue, town, capacity, admission, contactEmail, texts, admitsMinors } = event;
+  const {
+    kind,
+    title,
+    shortTitle,
+    startsOn,
+    endsOn,
+    timeZone,
+    currency,
+    venue,
+    town,
+    capacity,
+    admission,
+    contactEmail,
+    texts,
+    admitsMinors,
+  } = event;
   return (
     <>
       {save.error instanceof Problem && save.error.status === 412 && (
         <div className="mb-4 max-w-[760px]">
           <Note kind="must">
-            Somebody else has saved this event meanwhile. Your text is still in the form. <Link to={`/organise/${event.slug}/settings`} target="_blank">Open the present version beside it</Link>, compare, then load this page again.
+            Somebody else has saved this event meanwhile. Your text is still in the form.{' '}
+            <Link to={`/organise/${event.slug}/settings`} target="_blank">
+              Open the present version beside it
+            </Link>
+            , compare, then load this page again.
           </Note>
         </div>
       )}
       <EventForm
-        values={{ kind, title, shortTitle, startsOn, endsOn, timeZone, currency, venue, town, capacity, admission, contactEmail, texts, admitsMinors }}
+        values={{
+          kind,
+          title,
+          shortTitle,
+          startsOn,
+          endsOn,
+          timeZone,
+          currency,
+          venue,
+          town,
+          capacity,
+          admission,
+          contactEmail,
+          texts,
+          admitsMinors,
+        }}
         verb="Save the event"
         saving={save.isPending}
         error={save.error}
-        onSave={(body) => save.mutate({ version: event.version, body }, { onSuccess: () => toast('Event saved.') })}
+        onSave={(body) =>
+          save.mutate({ version: event.version, body }, { onSuccess: () => toast('Event saved.') })
+        }
       />
     </>
   );
 }
 
-const verbs: Record<EventState, string> = { draft: 'Back to draft', announced: 'Announce', open: 'Open registration', running: 'Start the event', finished: 'Close the event', archived: 'Archive' };
+const verbs: Record<EventState, string> = {
+  draft: 'Back to draft',
+  announced: 'Announce',
+  open: 'Open registration',
+  running: 'Start the event',
+  finished: 'Close the event',
+  archived: 'Archive',
+};
 
 /** The next steps in the life of an event, each with what is still missing. */
 function NextSteps({ event }: { event: EventDetail }) {
@@ -88,26 +138,62 @@ function NextSteps({ event }: { event: EventDetail }) {
   const change = useChangeEventState(event.slug);
   if (!event.can.announce) return null;
   const forward = event.nextStates[0];
-  const go = (to: EventState) => change.mutate({ version: event.version, to }, { onSuccess: () => { toast(`The event is ${eventStateNames[to].toLowerCase()} now.`); setAsked(undefined); }, onError: sayFailure });
+  const go = (to: EventState) =>
+    change.mutate(
+      { version: event.version, to },
+      {
+        onSuccess: () => {
+          toast(`The event is ${eventStateNames[to].toLowerCase()} now.`);
+          setAsked(undefined);
+        },
+        onError: sayFailure,
+      },
+    );
   return (
     <>
       {event.nextStates.slice(1).map((step) => (
-        <Button key={step.to} onClick={() => setAsked(step)}>{verbs[step.to]}…</Button>
+        <Button key={step.to} onClick={() => setAsked(step)}>
+          {verbs[step.to]}…
+        </Button>
       ))}
-      {forward && <Button variant={forward.missing.length === 0 ? 'primary' : 'secondary'} onClick={() => setAsked(forward)}>{verbs[forward.to]}…</Button>}
-      <Dialog open={asked !== undefined} onClose={() => setAsked(undefined)} title={asked ? verbs[asked.to] : ''}>
+      {forward && (
+        <Button
+          variant={forward.missing.length === 0 ? 'primary' : 'secondary'}
+          onClick={() => setAsked(forward)}
+        >
+          {verbs[forward.to]}…
+        </Button>
+      )}
+      <Dialog
+        open={asked !== undefined}
+        onClose={() => setAsked(undefined)}
+        title={asked ? verbs[asked.to] : ''}
+      >
         {asked && (
           <div className="grid gap-4">
             {asked.missing.length > 0 ? (
               <>
                 <p>Still missing:</p>
-                <ul className="list-disc pl-5">{asked.missing.map((line) => <li key={line}>{line}</li>)}</ul>
+                <ul className="list-disc pl-5">
+                  {asked.missing.map((line) => (
+                    <li key={line}>{line}</li>
+                  ))}
+                </ul>
               </>
             ) : (
-              <p>The event becomes {eventStateNames[asked.to].toLowerCase()}. {asked.to === 'announced' && event.state === 'draft' ? 'Its page is public from then on.' : ''}</p>
+              <p>
+                The event becomes {eventStateNames[asked.to].toLowerCase()}.{' '}
+                {asked.to === 'announced' && event.state === 'draft'
+                  ? 'Its page is public from then on.'
+                  : ''}
+              </p>
             )}
             <div className="flex gap-2">
-              {asked.missing.length === 0 && <Button variant="primary" busy={change.isPending} onClick={() => go(asked.to)}>{verbs[asked.to]}</Button>}
+              {asked.missing.length === 0 && (
+                <Button variant="primary" busy={change.isPending} onClick={() => go(asked.to)}>
+                  {verbs[asked.to]}
+                </Button>
+              )}
               <Button onClick={() => setAsked(undefined)}>Leave it</Button>
             </div>
           </div>

@@ -10,10 +10,18 @@ import { fieldErrors, sayFailure } from '@/lib/problem';
 import { FundRulesFields, type FundDraft } from './fund-rules-fields';
 import { useSaveFund } from './grants.queries';
 
-const codes = (text: string): string[] => [...new Set(text.toUpperCase().split(/[\s,;]+/).filter(Boolean))];
+const codes = (text: string): string[] => [
+  ...new Set(
+    text
+      .toUpperCase()
+      .split(/[\s,;]+/)
+      .filter(Boolean),
+  ),
+];
 
 function draftOf(fund: Fund | null): FundDraft {
-  const plain = (amount: number | null) => (amount === null || !fund ? '' : formatGrant(amount, fund.currency, false).replace(/,/g, ''));
+  const plain = (amount: number | null) =>
+    amount === null || !fund ? '' : formatGrant(amount, fund.currency, false).replace(/,/g, '');
   return {
     name: fund?.name ?? '',
     funder: fund?.funder ?? '',
@@ -40,16 +48,37 @@ function bodyOf(draft: FundDraft, currency: string): { body: FundInput; errors: 
   };
   const { name, funder, covers, stages, flagsAny, floors, showScores } = draft;
   const body: FundInput = {
-    name, funder, covers, floors, showScores, currency,
+    name,
+    funder,
+    covers,
+    floors,
+    showScores,
+    currency,
     budgetMinor: amount(draft.budget, 'budgetMinor') ?? 0,
     capPerPersonMinor: draft.cap.trim() ? (amount(draft.cap, 'capPerPersonMinor') ?? 0) : null,
-    eligibility: { stages, flagsAny, countries: codes(draft.countries), notCountries: codes(draft.notCountries), minScore: draft.minScore ? Number(draft.minScore) : null },
+    eligibility: {
+      stages,
+      flagsAny,
+      countries: codes(draft.countries),
+      notCountries: codes(draft.notCountries),
+      minScore: draft.minScore ? Number(draft.minScore) : null,
+    },
   };
   return { body, errors };
 }
 
 /** Adds or changes a fund: budget, what it pays, for whom. */
-export function FundDialog({ event, currency, fund, onClose }: { event: string; currency: string; fund: Fund | null; onClose: () => void }) {
+export function FundDialog({
+  event,
+  currency,
+  fund,
+  onClose,
+}: {
+  event: string;
+  currency: string;
+  fund: Fund | null;
+  onClose: () => void;
+}) {
   const [draft, setDraft] = useState(() => draftOf(fund));
   const [own, setOwn] = useState<Record<string, string>>({});
   const save = useSaveFund(event);
@@ -60,21 +89,61 @@ export function FundDialog({ event, currency, fund, onClose }: { event: string; 
     const { body, errors: found } = bodyOf(draft, currency);
     setOwn(found);
     if (Object.keys(found).length > 0) return;
-    save.mutate({ fund: fund?.id ?? null, version: fund?.version ?? 0, body }, { onSuccess: () => { toast('Fund saved.'); onClose(); }, onError: (error) => Object.keys(fieldErrors(error)).length === 0 && sayFailure(error) });
+    save.mutate(
+      { fund: fund?.id ?? null, version: fund?.version ?? 0, body },
+      {
+        onSuccess: () => {
+          toast('Fund saved.');
+          onClose();
+        },
+        onError: (error) => Object.keys(fieldErrors(error)).length === 0 && sayFailure(error),
+      },
+    );
   };
   return (
     <Dialog open onClose={onClose} title={fund ? `Change fund ${fund.letter}` : 'Add a fund'} width={640}>
       <form className="grid gap-3" onSubmit={submit}>
         <div className="grid grid-cols-2 gap-3 max-sm:grid-cols-1">
-          <Input label="Name" value={draft.name} maxLength={80} onChange={(change) => set({ name: change.target.value })} error={errors.name} />
-          <Input label="Given by" value={draft.funder} maxLength={120} onChange={(change) => set({ funder: change.target.value })} error={errors.funder} />
-          <Input label={`Budget, ${currency}`} inputMode="decimal" value={draft.budget} onChange={(change) => set({ budget: change.target.value })} error={errors.budgetMinor ?? errors.currency} />
-          <Input label={`At most to one person, ${currency}`} optional inputMode="decimal" value={draft.cap} onChange={(change) => set({ cap: change.target.value })} error={errors.capPerPersonMinor} />
+          <Input
+            label="Name"
+            value={draft.name}
+            maxLength={80}
+            onChange={(change) => set({ name: change.target.value })}
+            error={errors.name}
+          />
+          <Input
+            label="Given by"
+            value={draft.funder}
+            maxLength={120}
+            onChange={(change) => set({ funder: change.target.value })}
+            error={errors.funder}
+          />
+          <Input
+            label={`Budget, ${currency}`}
+            inputMode="decimal"
+            value={draft.budget}
+            onChange={(change) => set({ budget: change.target.value })}
+            error={errors.budgetMinor ?? errors.currency}
+          />
+          <Input
+            label={`At most to one person, ${currency}`}
+            optional
+            inputMode="decimal"
+            value={draft.cap}
+            onChange={(change) => set({ cap: change.target.value })}
+            error={errors.capPerPersonMinor}
+          />
         </div>
         <FundRulesFields draft={draft} onChange={set} errors={errors} />
-        <Checkbox label="The funder sees the committee’s mean scores" checked={draft.showScores} onChange={(change) => set({ showScores: change.target.checked })} />
+        <Checkbox
+          label="The funder sees the committee’s mean scores"
+          checked={draft.showScores}
+          onChange={(change) => set({ showScores: change.target.checked })}
+        />
         <div className="flex gap-2">
-          <Button type="submit" variant="primary" busy={save.isPending}>Save the fund</Button>
+          <Button type="submit" variant="primary" busy={save.isPending}>
+            Save the fund
+          </Button>
           <Button onClick={onClose}>Leave it</Button>
         </div>
       </form>

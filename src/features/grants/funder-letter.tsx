@@ -11,7 +11,10 @@ export function FunderLetter({ fund }: { fund: FunderView }) {
   const held = fund.awards.filter((award) => award.state !== 'returned').length;
   const left = fund.budgetMinor - fund.awardedMinor;
   return (
-    <section aria-label="Letter" className="border-rule bg-paper px-12 py-9 lg:min-h-full lg:border-r max-sm:px-4 max-sm:py-6">
+    <section
+      aria-label="Letter"
+      className="border-rule bg-paper px-12 py-9 lg:min-h-full lg:border-r max-sm:px-4 max-sm:py-6"
+    >
       <p className="text-ink3">
         {fund.instituteName}
         <br />
@@ -22,17 +25,26 @@ export function FunderLetter({ fund }: { fund: FunderView }) {
         {fund.eventTitle}, {formatDateSpan(fund.startsOn, fund.endsOn)}.
       </p>
       <p className="mt-4 text-form">
-        The committee proposes <b>{count(held, 'award')}</b>, together <b>{money(fund.awardedMinor)}</b> of the {money(fund.budgetMinor)} you granted.{' '}
+        The committee proposes <b>{count(held, 'award')}</b>, together <b>{money(fund.awardedMinor)}</b> of
+        the {money(fund.budgetMinor)} you granted.{' '}
         {fund.decideBy ? (
           <>
-            Please approve or query each by <b>{formatInstant(fund.decideBy, fund.timeZone, false)} ({fund.town})</b>.
+            Please approve or query each by{' '}
+            <b>
+              {formatInstant(fund.decideBy, fund.timeZone, false)} ({fund.town})
+            </b>
+            .
           </>
         ) : (
           'Please approve or query each.'
         )}
       </p>
       <div className="mt-3">
-        <FundBar givenMinor={fund.awardedMinor} budgetMinor={fund.budgetMinor} label={`${money(fund.awardedMinor)} proposed of ${money(fund.budgetMinor)}`} />
+        <FundBar
+          givenMinor={fund.awardedMinor}
+          budgetMinor={fund.budgetMinor}
+          label={`${money(fund.awardedMinor)} proposed of ${money(fund.budgetMinor)}`}
+        />
         <p className="mt-1 flex justify-between">
           <span>
             <b>{money(fund.awardedMinor, false)}</b> proposed
@@ -55,7 +67,10 @@ export function FunderLetter({ fund }: { fund: FunderView }) {
           </li>
         ))}
       </ul>
-      <p className="mt-5 text-dense text-ink3">You see references, career stages and regions (United Nations M49). Names, institutes and documents stay with the committee.</p>
+      <p className="mt-5 text-dense text-ink3">
+        You see references, career stages and regions (United Nations M49). Names, institutes and documents
+        stay with the committee.
+      </p>
       <p className="mt-3 text-dense text-ink3">
         Questions: <a href={`mailto:${fund.contactEmail}`}>{fund.contactEmail}</a>
       </p>

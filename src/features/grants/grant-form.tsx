@@ -23,7 +23,8 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
   const submit = useSubmitMyGrant(mine.eventSlug);
   // Not while a draft is being saved: leaving a field by pressing a button starts a save, and the press must count.
   const set = (change: Partial<GrantFields>) => setFields({ ...fields, ...change });
-  const setCost = (kind: CostKind) => (change: Partial<CostFields>) => set({ costs: { ...fields.costs, [kind]: { ...fields.costs[kind], ...change } } });
+  const setCost = (kind: CostKind) => (change: Partial<CostFields>) =>
+    set({ costs: { ...fields.costs, [kind]: { ...fields.costs[kind], ...change } } });
   const { input, order, errors: unread } = inputOf(fields, mine.currency);
 
   const failed = (error: unknown) => {
@@ -36,7 +37,12 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
       setErrors(unread);
       return undefined;
     }
-    if (version.current > 0 && JSON.stringify(input) === saved.current && mine.application?.state !== 'withdrawn') return version.current;
+    if (
+      version.current > 0 &&
+      JSON.stringify(input) === saved.current &&
+      mine.application?.state !== 'withdrawn'
+    )
+      return version.current;
     try {
       const now = await save.mutateAsync({ version: version.current, body: input });
       version.current = now.version;
@@ -56,7 +62,17 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
   };
   const handIn = async () => {
     const stored = await store();
-    if (stored !== undefined) submit.mutate({ version: stored }, { onSuccess: () => { toast('Your grant application is handed in.'); window.scrollTo({ top: 0 }); }, onError: failed });
+    if (stored !== undefined)
+      submit.mutate(
+        { version: stored },
+        {
+          onSuccess: () => {
+            toast('Your grant application is handed in.');
+            window.scrollTo({ top: 0 });
+          },
+          onError: failed,
+        },
+      );
   };
   const leave = () => {
     if (JSON.stringify(input) !== saved.current) void store();
@@ -74,27 +90,104 @@ export function GrantForm({ mine }: { mine: MyGrant }) {
     >
       <fieldset>
         <legend className="mb-1 font-serif text-title">What you ask for</legend>
-        <p className="mb-2 text-ink3">In {mine.currency}. Leave out what you do not need. A document for each cost helps: an offer for the ticket, a price of the room.</p>
+        <p className="mb-2 text-ink3">
+          In {mine.currency}. Leave out what you do not need. A document for each cost helps: an offer for the
+          ticket, a price of the room.
+        </p>
         {costKinds.map((kind) => (
-          <CostRow key={kind} kind={kind} mine={mine} fields={fields.costs[kind]} errors={errors} onChange={setCost(kind)} beforeUpload={store} />
+          <CostRow
+            key={kind}
+            kind={kind}
+            mine={mine}
+            fields={fields.costs[kind]}
+            errors={errors}
+            onChange={setCost(kind)}
+            beforeUpload={store}
+          />
         ))}
-        <p className="mt-3 flex justify-between border-t border-ink pt-2 font-semibold"><span>Together</span><span>{formatGrant(sumOf(input.items), mine.currency)}</span></p>
-        {errors.items && <p role="alert" className="font-semibold text-alarm">{errors.items}</p>}
+        <p className="mt-3 flex justify-between border-t border-ink pt-2 font-semibold">
+          <span>Together</span>
+          <span>{formatGrant(sumOf(input.items), mine.currency)}</span>
+        </p>
+        {errors.items && (
+          <p role="alert" className="font-semibold text-alarm">
+            {errors.items}
+          </p>
+        )}
       </fieldset>
-      <Input className="max-w-[240px]" label={`The least sum with which you can come, ${mine.currency}`} optional inputMode="decimal" hint="Empty when anything helps. The committee sees it when it proposes a sum." value={fields.least} onChange={(event) => set({ least: event.target.value })} error={errors.least} />
-      <Textarea label="Why this event, and why a grant" rows={7} maxLength={4000} hint={`${fields.motivation.length} of 4,000 characters`} value={fields.motivation} onChange={(event) => set({ motivation: event.target.value })} error={errors.motivation} />
-      {mine.talks.length > 0 && <Select label="The talk that you give" optional placeholder="None" options={mine.talks.map((talk) => ({ value: talk.id, label: talk.title }))} value={fields.talkId} onChange={(event) => set({ talkId: event.target.value })} error={errors.talkId} />}
+      <Input
+        className="max-w-[240px]"
+        label={`The least sum with which you can come, ${mine.currency}`}
+        optional
+        inputMode="decimal"
+        hint="Empty when anything helps. The committee sees it when it proposes a sum."
+        value={fields.least}
+        onChange={(event) => set({ least: event.target.value })}
+        error={errors.least}
+      />
+      <Textarea
+        label="Why this event, and why a grant"
+        rows={7}
+        maxLength={4000}
+        hint={`${fields.motivation.length} of 4,000 characters`}
+        value={fields.motivation}
+        onChange={(event) => set({ motivation: event.target.value })}
+        error={errors.motivation}
+      />
+      {mine.talks.length > 0 && (
+        <Select
+          label="The talk that you give"
+          optional
+          placeholder="None"
+          options={mine.talks.map((talk) => ({ value: talk.id, label: talk.title }))}
+          value={fields.talkId}
+          onChange={(event) => set({ talkId: event.target.value })}
+          error={errors.talkId}
+        />
+      )}
       <div className="grid gap-1">
-        <Checkbox label="This is my first meeting of this kind" checked={fields.firstMeeting} onChange={(event) => set({ firstMeeting: event.target.checked })} />
-        <Checkbox label="I have no other money for the journey" checked={fields.noOtherMoney} onChange={(event) => set({ noOtherMoney: event.target.checked })} />
+        <Checkbox
+          label="This is my first meeting of this kind"
+          checked={fields.firstMeeting}
+          onChange={(event) => set({ firstMeeting: event.target.checked })}
+        />
+        <Checkbox
+          label="I have no other money for the journey"
+          checked={fields.noOtherMoney}
+          onChange={(event) => set({ noOtherMoney: event.target.checked })}
+        />
       </div>
       {(errors.country ?? errors.careerStage ?? (!mine.profile.country || !mine.profile.careerStage)) && (
-        <Note kind={errors.country || errors.careerStage ? 'must' : 'wish'}>Funds ask for the country of your institution and your career stage. <Link to="/profile">Complete your profile</Link>, then hand in.</Note>
+        <Note kind={errors.country || errors.careerStage ? 'must' : 'wish'}>
+          Funds ask for the country of your institution and your career stage.{' '}
+          <Link to="/profile">Complete your profile</Link>, then hand in.
+        </Note>
       )}
       <div className="flex flex-wrap items-center gap-3">
-        <Button type="submit" variant="primary" sizing="form" className="max-sm:w-full" busy={submit.isPending}>Hand in the application</Button>
-        <Button sizing="form" className="max-sm:w-full" disabled={submit.isPending} onClick={() => void store().then((stored) => stored !== undefined && toast('Draft saved.'))}>Save the draft</Button>
-        <p aria-live="polite" className="text-dense text-ink3">{save.isPending ? 'Saving …' : mine.application ? `Saved ${ownTime(mine.application.savedAt)}` : 'Not saved yet'}</p>
+        <Button
+          type="submit"
+          variant="primary"
+          sizing="form"
+          className="max-sm:w-full"
+          busy={submit.isPending}
+        >
+          Hand in the application
+        </Button>
+        <Button
+          sizing="form"
+          className="max-sm:w-full"
+          disabled={submit.isPending}
+          onClick={() => void store().then((stored) => stored !== undefined && toast('Draft saved.'))}
+        >
+          Save the draft
+        </Button>
+        <p aria-live="polite" className="text-dense text-ink3">
+          {save.isPending
+            ? 'Saving …'
+            : mine.application
+              ? `Saved ${ownTime(mine.application.savedAt)}`
+              : 'Not saved yet'}
+        </p>
       </div>
     </form>
   );

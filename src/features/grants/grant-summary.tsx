@@ -15,7 +15,10 @@ export function GrantSummary({ mine }: { mine: MyGrant }) {
         <tbody>
           {items.map((item) => (
             <tr key={item.kind}>
-              <th scope="row">{costKindNames[item.kind]}{item.note && <span className="block font-normal text-ink3">{item.note}</span>}</th>
+              <th scope="row">
+                {costKindNames[item.kind]}
+                {item.note && <span className="block font-normal text-ink3">{item.note}</span>}
+              </th>
               <td className="num">{formatGrant(item.amountMinor, currency)}</td>
             </tr>
           ))}
@@ -29,7 +32,16 @@ export function GrantSummary({ mine }: { mine: MyGrant }) {
       {application.evidence.length > 0 && (
         <ul className="mt-3">
           {application.evidence.map((file) => (
-            <li key={file.id}><a href={fileAddress(downloadEvidence, { event: mine.eventSlug, evidence: file.id })} target="_blank" rel="noreferrer">{file.fileName}</a> <span className="text-ink3">{costKindNames[file.kind]}</span></li>
+            <li key={file.id}>
+              <a
+                href={fileAddress(downloadEvidence, { event: mine.eventSlug, evidence: file.id })}
+                target="_blank"
+                rel="noreferrer"
+              >
+                {file.fileName}
+              </a>{' '}
+              <span className="text-ink3">{costKindNames[file.kind]}</span>
+            </li>
           ))}
         </ul>
       )}

@@ -15,11 +15,30 @@ export function QueryAnswer({ event, award }: { event: string; award: BoardAward
       className="mt-2 grid gap-2 bg-cautionwash p-2"
       onSubmit={(submit) => {
         submit.preventDefault();
-        answer.mutate({ award: award.id, version: award.version, text }, { onSuccess: () => toast('The answer is sent to the funder.'), onError: (error) => !fieldErrors(error).text && sayFailure(error) });
+        answer.mutate(
+          { award: award.id, version: award.version, text },
+          {
+            onSuccess: () => toast('The answer is sent to the funder.'),
+            onError: (error) => !fieldErrors(error).text && sayFailure(error),
+          },
+        );
       }}
     >
-      <Textarea dense rows={2} label="Your answer to the funder" hint="The funder knows no name: do not write one." maxLength={1000} value={text} onChange={(change) => setText(change.target.value)} error={fieldErrors(answer.error).text} />
-      <div><Button type="submit" busy={answer.isPending}>Send the answer</Button></div>
+      <Textarea
+        dense
+        rows={2}
+        label="Your answer to the funder"
+        hint="The funder knows no name: do not write one."
+        maxLength={1000}
+        value={text}
+        onChange={(change) => setText(change.target.value)}
+        error={fieldErrors(answer.error).text}
+      />
+      <div>
+        <Button type="submit" busy={answer.isPending}>
+          Send the answer
+        </Button>
+      </div>
     </form>
   );
 }

@@ -19,14 +19,23 @@ export function Component() {
         controls={
           <Segmented
             label="What is shown"
-            options={[{ value: 'sent', label: 'What was sent' }, { value: 'answers', label: 'Answers to invitations' }]}
+            options={[
+              { value: 'sent', label: 'What was sent' },
+              { value: 'answers', label: 'Answers to invitations' },
+            ]}
             value={view}
             onChange={(next) => setSearch(next === 'answers' ? { view: next } : {}, { replace: true })}
           />
         }
-        actions={<Button variant="primary" onClick={() => setWriting(true)}>Write a letter…</Button>}
+        actions={
+          <Button variant="primary" onClick={() => setWriting(true)}>
+            Write a letter…
+          </Button>
+        }
       />
-      <div className="p-6 max-sm:p-4">{view === 'answers' ? <AnswersTable event={event} /> : <MessageList event={event} />}</div>
+      <div className="p-6 max-sm:p-4">
+        {view === 'answers' ? <AnswersTable event={event} /> : <MessageList event={event} />}
+      </div>
       {writing && <LetterDialog event={event} onClose={() => setWriting(false)} />}
     </>
   );

@@ -17,15 +17,40 @@ export function ApplyForm({ view, waiting }: { view: DoorView; waiting: boolean 
   const errors = fieldErrors(apply.error);
   const submit = (event: FormEvent) => {
     event.preventDefault();
-    apply.mutate({ motivation, background }, { onSuccess: () => toast(waiting ? 'You are on the waiting list.' : 'Application sent.') });
+    apply.mutate(
+      { motivation, background },
+      { onSuccess: () => toast(waiting ? 'You are on the waiting list.' : 'Application sent.') },
+    );
   };
   return (
     <form noValidate onSubmit={submit} className="mt-6 grid gap-4">
-      <Input label="Your studies or position" value={background} onChange={(e) => setBackground(e.target.value)} error={errors.background} hint="In a line, e.g. second year of a doctorate" />
-      <Textarea label="Why you would like to come" rows={6} value={motivation} onChange={(e) => setMotivation(e.target.value)} error={errors.motivation} />
-      <p className="text-ui text-ink3">Read by the organisers and the reviewers of this event; kept until a year after it.</p>
-      {apply.error && Object.keys(errors).length === 0 && <p role="alert" className="font-semibold text-alarm">{sentenceOf(apply.error)}</p>}
-      <div><Button type="submit" variant="primary" sizing="form" busy={apply.isPending}>{waiting ? 'Go on the waiting list' : 'Send the application'}</Button></div>
+      <Input
+        label="Your studies or position"
+        value={background}
+        onChange={(e) => setBackground(e.target.value)}
+        error={errors.background}
+        hint="In a line, e.g. second year of a doctorate"
+      />
+      <Textarea
+        label="Why you would like to come"
+        rows={6}
+        value={motivation}
+        onChange={(e) => setMotivation(e.target.value)}
+        error={errors.motivation}
+      />
+      <p className="text-ui text-ink3">
+        Read by the organisers and the reviewers of this event; kept until a year after it.
+      </p>
+      {apply.error && Object.keys(errors).length === 0 && (
+        <p role="alert" className="font-semibold text-alarm">
+          {sentenceOf(apply.error)}
+        </p>
+      )}
+      <div>
+        <Button type="submit" variant="primary" sizing="form" busy={apply.isPending}>
+          {waiting ? 'Go on the waiting list' : 'Send the application'}
+        </Button>
+      </div>
     </form>
   );
 }
@@ -45,7 +70,18 @@ ApplyForm.State = function State({ view }: { view: DoorView }) {
         ]}
       />
       {['received', 'waiting'].includes(application.state) && (
-        <Button variant="link" className="mt-2" onClick={() => withdraw.mutate(application.version, { onSuccess: () => toast('Application withdrawn.'), onError: sayFailure })}>Withdraw the application</Button>
+        <Button
+          variant="link"
+          className="mt-2"
+          onClick={() =>
+            withdraw.mutate(application.version, {
+              onSuccess: () => toast('Application withdrawn.'),
+              onError: sayFailure,
+            })
+          }
+        >
+          Withdraw the application
+        </Button>
       )}
     </section>
   );

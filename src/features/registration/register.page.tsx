@@ -18,7 +18,14 @@ import { StepList } from './step-list';
 
 const steps = ['You', 'Stay and extras', 'Invoice', 'Pay'] as const;
 /** Which step shows a field that the server refused. */
-const stepOf = (path: string): number => (path.startsWith('invoice') ? 2 : ['categoryId', 'badgeName'].includes(path) ? 0 : path === 'consent' ? 3 : 1);
+const stepOf = (path: string): number =>
+  path.startsWith('invoice')
+    ? 2
+    : ['categoryId', 'badgeName'].includes(path)
+      ? 0
+      : path === 'consent'
+        ? 3
+        : 1;
 
 export function Component() {
   const { event = '' } = useParams();
@@ -37,7 +44,10 @@ export function Component() {
 
 function Registered({ view }: { view: DoorView }) {
   const navigate = useNavigate();
-  useEffect(() => void navigate(`/events/${view.eventSlug}/registration`, { replace: true }), [navigate, view.eventSlug]);
+  useEffect(
+    () => void navigate(`/events/${view.eventSlug}/registration`, { replace: true }),
+    [navigate, view.eventSlug],
+  );
   return null;
 }
 
@@ -47,17 +57,34 @@ function Closed({ view, full }: { view: DoorView; full: boolean }) {
   return (
     <div className="mx-auto max-w-[620px] px-4 py-10 text-form">
       <p className="text-ui text-ink3">{view.eventTitle}</p>
-      <h1 className="font-serif text-page">{full ? 'All places are taken' : view.admission === 'application' ? 'Apply for a place' : 'Registration'}</h1>
-      <p className="mt-2 text-ink2">{full ? 'You can put yourself on the waiting list. When a place becomes free, we write to the next on it.' : view.closedBecause}</p>
+      <h1 className="font-serif text-page">
+        {full
+          ? 'All places are taken'
+          : view.admission === 'application'
+            ? 'Apply for a place'
+            : 'Registration'}
+      </h1>
+      <p className="mt-2 text-ink2">
+        {full
+          ? 'You can put yourself on the waiting list. When a place becomes free, we write to the next on it.'
+          : view.closedBecause}
+      </p>
       {view.application && <ApplyForm.State view={view} />}
       {canApply && <ApplyForm view={view} waiting={full} />}
-      <p className="mt-8"><Link to={`/events/${view.eventSlug}`}>Back to the event</Link></p>
+      <p className="mt-8">
+        <Link to={`/events/${view.eventSlug}`}>Back to the event</Link>
+      </p>
     </div>
   );
 }
 
-function emptyInput(view: DoorView, account: { printedName: string; careerStage: string | null; country: string | null } | null | undefined): RegistrationInput {
-  const category = categoriesFor(view.fees, account?.careerStage ?? null).sort((a, b) => a.stages.length === 0 ? 1 : b.stages.length === 0 ? -1 : 0)[0];
+function emptyInput(
+  view: DoorView,
+  account: { printedName: string; careerStage: string | null; country: string | null } | null | undefined,
+): RegistrationInput {
+  const category = categoriesFor(view.fees, account?.careerStage ?? null).sort((a, b) =>
+    a.stages.length === 0 ? 1 : b.stages.length === 0 ? -1 : 0,
+  )[0];
   return {
     categoryId: category?.id ?? '',
     extras: [],
@@ -67,7 +94,16 @@ function emptyInput(view: DoorView, account: { printedName: string; careerStage:
     diet: 'any',
     allergies: '',
     needs: '',
-    invoice: { payer: 'self', name: account?.printedName ?? '', street: '', postcode: '', town: '', country: account?.country ?? null, vatNumber: '', orderNumber: '' },
+    invoice: {
+      payer: 'self',
+      name: account?.printedName ?? '',
+      street: '',
+      postcode: '',
+      town: '',
+      country: account?.country ?? null,
+      vatNumber: '',
+      orderNumber: '',
+    },
     consent: false as unknown as true,
   };
 }
@@ -75,12 +111,20 @@ function emptyInput(view: DoorView, account: { printedName: string; careerStage:
 function Wizard({ view }: { view: DoorView }) {
   const account = useAccount();
   const key = `registration ${view.eventSlug}`;
-  const [input, setInput] = useState<RegistrationInput>(() => ({ ...emptyInput(view, account), ...(JSON.parse(sessionStorage.getItem(key) ?? '{}') as Partial<RegistrationInput>) }));
+  const [input, setInput] = useState<RegistrationInput>(() => ({
+    ...emptyInput(view, account),
+    ...(JSON.parse(sessionStorage.getItem(key) ?? '{}') as Partial<RegistrationInput>),
+  }));
   const [step, setStep] = useState(0);
   const [savedAt, setSavedAt] = useState<string>();
   const register = useRegister(view.eventSlug);
   const pay = usePay(view.eventSlug);
-  const price = useQuery(quoteQuery(view.eventSlug, { categoryId: input.categoryId, extras: input.extras.filter((extra) => extra.quantity > 0) }));
+  const price = useQuery(
+    quoteQuery(view.eventSlug, {
+      categoryId: input.categoryId,
+      extras: input.extras.filter((extra) => extra.quantity > 0),
+    }),
+  );
   const change = (next: Partial<RegistrationInput>) => {
     const merged = { ...input, ...next };
     setInput(merged);
@@ -92,7 +136,10 @@ function Wizard({ view }: { view: DoorView }) {
   // Awaited, not as callbacks of mutate: this page is left as soon as the place is taken.
   const finish = async () => {
     try {
-      const made = await register.mutateAsync({ ...input, extras: input.extras.filter((extra) => extra.quantity > 0) });
+      const made = await register.mutateAsync({
+        ...input,
+        extras: input.extras.filter((extra) => extra.quantity > 0),
+      });
       sessionStorage.removeItem(key);
       if (made.order?.state !== 'paid') window.location.assign((await pay.mutateAsync(undefined)).url);
     } catch (error) {
@@ -107,19 +154,36 @@ function Wizard({ view }: { view: DoorView }) {
       <aside className="bg-paper px-12 py-10 max-lg:px-4 max-lg:py-5">
         <p className="text-ui text-ink3">Registration</p>
         <p className="font-serif text-[18px] leading-6">{view.eventTitle}</p>
-        <p className="mt-1 text-ui text-ink3">{formatDateSpan(view.startsOn, view.endsOn)}, {view.town}</p>
+        <p className="mt-1 text-ui text-ink3">
+          {formatDateSpan(view.startsOn, view.endsOn)}, {view.town}
+        </p>
         <StepList steps={steps} present={step} onChoose={setStep} />
         {savedAt && <p className="mt-6 text-dense text-ink3">Kept in this tab at {savedAt}.</p>}
       </aside>
       <div className="border-x border-rule bg-sheet px-14 py-9 text-form max-lg:px-4">
         <Step {...props} />
-        {register.error instanceof Problem && Object.keys(errors).length === 0 && <div className="mt-5"><Note kind="must">{sentenceOf(register.error)}</Note></div>}
+        {register.error instanceof Problem && Object.keys(errors).length === 0 && (
+          <div className="mt-5">
+            <Note kind="must">{sentenceOf(register.error)}</Note>
+          </div>
+        )}
         <div className="mt-7 flex items-center gap-3">
-          {step > 0 && <Button sizing="form" onClick={() => setStep(step - 1)}>Back</Button>}
+          {step > 0 && (
+            <Button sizing="form" onClick={() => setStep(step - 1)}>
+              Back
+            </Button>
+          )}
           {step < 3 ? (
-            <Button variant="primary" sizing="form" onClick={() => setStep(step + 1)}>Continue</Button>
+            <Button variant="primary" sizing="form" onClick={() => setStep(step + 1)}>
+              Continue
+            </Button>
           ) : (
-            <Button variant="primary" sizing="form" busy={register.isPending || pay.isPending} onClick={() => void finish()}>
+            <Button
+              variant="primary"
+              sizing="form"
+              busy={register.isPending || pay.isPending}
+              onClick={() => void finish()}
+            >
               {price.data?.totalMinor === 0 ? 'Take the place' : 'Take the place and pay'}
             </Button>
           )}
@@ -142,8 +206,14 @@ function EarlyNote({ view, categoryId }: { view: DoorView; categoryId: string })
   const own = ownZone();
   return (
     <p className="mt-5 bg-cautionwash px-3 py-2.5 text-ui">
-      <b className="font-semibold">Early fee until {formatInstant(until, view.timeZone)}</b> in {view.town} ({zoneName(until, view.timeZone)}).
-      {own !== view.timeZone && <> Where you are ({zoneName(until, own)}) that is {formatInstant(until, own, false)}.</>}
+      <b className="font-semibold">Early fee until {formatInstant(until, view.timeZone)}</b> in {view.town} (
+      {zoneName(until, view.timeZone)}).
+      {own !== view.timeZone && (
+        <>
+          {' '}
+          Where you are ({zoneName(until, own)}) that is {formatInstant(until, own, false)}.
+        </>
+      )}
     </p>
   );
 }

@@ -1,6 +1,10 @@
 import { useInfiniteQuery, useQuery } from '@tanstack/react-query';
 import { useParams, useSearchParams } from 'react-router-dom';
-import { exportRegistrations, registrationStates, type RegistrationState } from '@shared/features/registration/registration.contract';
+import {
+  exportRegistrations,
+  registrationStates,
+  type RegistrationState,
+} from '@shared/features/registration/registration.contract';
 import { dietNames, registrationStateNames } from '@shared/features/registration/registration.rules';
 import { formatMoney } from '@shared/lib/money';
 import { formatDate } from '@shared/lib/time';
@@ -29,31 +33,96 @@ export function Component() {
     <>
       <PageBar
         title={view === 'applications' ? 'Applications' : 'Registrations'}
-        facts={places && <>{places.paid + places.reserved} of {places.capacity} places taken, {places.reserved} not paid{places.offered > 0 && <>, {places.offered} offered</>}, {places.waiting} waiting</>}
-        controls={<Segmented label="View" options={views} value={view} onChange={(value) => setSearch({ view: value })} />}
-        actions={view === 'registrations' && <a className={buttonClass()} href={fileAddress(exportRegistrations, { event })} download>Export as CSV</a>}
+        facts={
+          places && (
+            <>
+              {places.paid + places.reserved} of {places.capacity} places taken, {places.reserved} not paid
+              {places.offered > 0 && <>, {places.offered} offered</>}, {places.waiting} waiting
+            </>
+          )
+        }
+        controls={
+          <Segmented
+            label="View"
+            options={views}
+            value={view}
+            onChange={(value) => setSearch({ view: value })}
+          />
+        }
+        actions={
+          view === 'registrations' && (
+            <a className={buttonClass()} href={fileAddress(exportRegistrations, { event })} download>
+              Export as CSV
+            </a>
+          )
+        }
       />
-      {view === 'applications' ? <Applications event={event} /> : <Registrations event={event} search={search} setSearch={setSearch} />}
+      {view === 'applications' ? (
+        <Applications event={event} />
+      ) : (
+        <Registrations event={event} search={search} setSearch={setSearch} />
+      )}
     </>
   );
 }
 
-function Registrations({ event, search, setSearch }: { event: string; search: URLSearchParams; setSearch: ReturnType<typeof useSearchParams>[1] }) {
+function Registrations({
+  event,
+  search,
+  setSearch,
+}: {
+  event: string;
+  search: URLSearchParams;
+  setSearch: ReturnType<typeof useSearchParams>[1];
+}) {
   const q = search.get('q') ?? '';
-  const state = (registrationStates.find((value) => value === search.get('state')) ?? '') as RegistrationState | '';
+  const state = (registrationStates.find((value) => value === search.get('state')) ?? '') as
+    RegistrationState | '';
   const chosen = search.get('registration') ?? undefined;
   const query = useInfiniteQuery(registrationsQuery(event, { q: q || undefined, state: state || undefined }));
   const rows = query.data?.pages.flatMap((page) => page.items) ?? [];
-  const set = (key: string, value: string) => setSearch((before) => { const next = new URLSearchParams(before); if (value) next.set(key, value); else next.delete(key); return next; }, { replace: true });
+  const set = (key: string, value: string) =>
+    setSearch(
+      (before) => {
+        const next = new URLSearchParams(before);
+        if (value) next.set(key, value);
+        else next.delete(key);
+        return next;
+      },
+      { replace: true },
+    );
   return (
     <div className="grid min-h-0 grow lg:grid-cols-[1fr_372px]">
       <div className="min-w-0 p-6 max-sm:p-4">
         <div className="mb-3 flex flex-wrap gap-3">
-          <Input dense hideLabel label="Find" placeholder="Name or address" value={q} onChange={(e) => set('q', e.target.value)} className="w-60" />
-          <Select dense hideLabel label="State" placeholder="Any state" value={state} onChange={(e) => set('state', e.target.value)} options={registrationStates.map((value) => ({ value, label: registrationStateNames[value] }))} />
+          <Input
+            dense
+            hideLabel
+            label="Find"
+            placeholder="Name or address"
+            value={q}
+            onChange={(e) => set('q', e.target.value)}
+            className="w-60"
+          />
+          <Select
+            dense
+            hideLabel
+            label="State"
+            placeholder="Any state"
+            value={state}
+            onChange={(e) => set('state', e.target.value)}
+            options={registrationStates.map((value) => ({ value, label: registrationStateNames[value] }))}
+          />
         </div>
-        {query.error ? <ErrorState error={query.error} onRetry={() => void query.refetch()} /> : query.isPending ? <Loading what="registrations" /> : rows.length === 0 ? (
-          <EmptyState title={q || state ? 'Nobody like that.' : 'Nobody has registered yet.'} fact={q || state ? 'The filters stand in the address of this page.' : undefined} />
+        {query.error ? (
+          <ErrorState error={query.error} onRetry={() => void query.refetch()} />
+        ) : query.isPending ? (
+          <Loading what="registrations" />
+        ) : rows.length === 0 ? (
+          <EmptyState
+            title={q || state ? 'Nobody like that.' : 'Nobody has registered yet.'}
+            fact={q || state ? 'The filters stand in the address of this page.' : undefined}
+          />
         ) : (
           <DataTable
             caption="Registrations, the latest first"
@@ -62,19 +131,57 @@ function Registrations({ event, search, setSearch }: { event: string; search: UR
             chosen={chosen}
             onOpen={(row) => set('registration', row.id)}
             columns={[
-              { key: 'name', head: 'Name', cell: (row) => <><b className="font-semibold">{row.printedName}</b> <span className="text-ink3">{row.affiliation}</span></> },
+              {
+                key: 'name',
+                head: 'Name',
+                cell: (row) => (
+                  <>
+                    <b className="font-semibold">{row.printedName}</b>{' '}
+                    <span className="text-ink3">{row.affiliation}</span>
+                  </>
+                ),
+              },
               { key: 'country', head: 'From', cell: (row) => row.country ?? '·' },
               { key: 'category', head: 'Category', cell: (row) => row.category },
-              { key: 'state', head: 'State', cell: (row) => <>{registrationStateNames[row.state]}{row.oddity && <span className="font-semibold text-alarm"> to be settled</span>}</> },
-              { key: 'stay', head: 'Stay', cell: (row) => (row.arrivesOn && row.leavesOn ? `${formatDate(row.arrivesOn, { short: true, weekday: false })} – ${formatDate(row.leavesOn, { short: true, weekday: false })}` : '·') },
-              { key: 'total', head: 'Total', numeric: true, cell: (row) => formatMoney(row.totalMinor, row.currency) },
+              {
+                key: 'state',
+                head: 'State',
+                cell: (row) => (
+                  <>
+                    {registrationStateNames[row.state]}
+                    {row.oddity && <span className="font-semibold text-alarm"> to be settled</span>}
+                  </>
+                ),
+              },
+              {
+                key: 'stay',
+                head: 'Stay',
+                cell: (row) =>
+                  row.arrivesOn && row.leavesOn
+                    ? `${formatDate(row.arrivesOn, { short: true, weekday: false })} – ${formatDate(row.leavesOn, { short: true, weekday: false })}`
+                    : '·',
+              },
+              {
+                key: 'total',
+                head: 'Total',
+                numeric: true,
+                cell: (row) => formatMoney(row.totalMinor, row.currency),
+              },
             ]}
           />
         )}
-        {query.hasNextPage && <Button className="mt-3" busy={query.isFetchingNextPage} onClick={() => void query.fetchNextPage()}>Show more</Button>}
+        {query.hasNextPage && (
+          <Button className="mt-3" busy={query.isFetchingNextPage} onClick={() => void query.fetchNextPage()}>
+            Show more
+          </Button>
+        )}
       </div>
       <aside aria-label="Chosen registration" className="border-l border-rule bg-paper p-6 max-sm:p-4">
-        {chosen ? <Chosen event={event} id={chosen} /> : <p className="text-ink3">Choose a registration to see its stay, needs and order.</p>}
+        {chosen ? (
+          <Chosen event={event} id={chosen} />
+        ) : (
+          <p className="text-ink3">Choose a registration to see its stay, needs and order.</p>
+        )}
       </aside>
     </div>
   );
@@ -94,8 +201,18 @@ function Chosen({ event, id }: { event: string; id: string }) {
           <Facts
             items={[
               ['State', registrationStateNames[view.state]],
-              ['Code', <span key="code" className="font-mono">{view.code}</span>],
-              ['E-mail', <a key="mail" href={`mailto:${view.row.email}`}>{view.row.email}</a>],
+              [
+                'Code',
+                <span key="code" className="font-mono">
+                  {view.code}
+                </span>,
+              ],
+              [
+                'E-mail',
+                <a key="mail" href={`mailto:${view.row.email}`}>
+                  {view.row.email}
+                </a>,
+              ],
               ['Badge', view.badgeName],
               ['Arrives', view.arrivesOn ? formatDate(view.arrivesOn) : 'not said'],
               ['Leaves', view.leavesOn ? formatDate(view.leavesOn) : 'not said'],
@@ -105,10 +222,19 @@ function Chosen({ event, id }: { event: string; id: string }) {
               view.checkedInAt ? ['Checked in', ownTime(view.checkedInAt)] : null,
             ]}
           />
-          {view.allergies && <Note>The kitchen confirms allergens with the person; this entry is not a safety measure.</Note>}
+          {view.allergies && (
+            <Note>The kitchen confirms allergens with the person; this entry is not a safety measure.</Note>
+          )}
           {view.order && (
             <div>
-              <SectionHead title={`Order ${view.order.number}`} aside={{ placed: 'not paid', paid: 'paid', expired: 'run out', cancelled: 'cancelled' }[view.order.state]} />
+              <SectionHead
+                title={`Order ${view.order.number}`}
+                aside={
+                  { placed: 'not paid', paid: 'paid', expired: 'run out', cancelled: 'cancelled' }[
+                    view.order.state
+                  ]
+                }
+              />
               <Account price={view.order.price} title="Lines" total="Together" />
             </div>
           )}

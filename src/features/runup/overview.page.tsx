@@ -48,22 +48,42 @@ function Attention({ duties }: { duties: Duty[] }) {
   return (
     <section aria-labelledby="attention">
       <div className="flex items-baseline gap-4 border-b-[1.75px] border-ink pb-2.5">
-        <h1 id="attention" className="font-serif text-title">What needs attention</h1>
-        {duties.length > 0 && <p className="text-ink2">{soon} this week, {duties.length - soon} later</p>}
+        <h1 id="attention" className="font-serif text-title">
+          What needs attention
+        </h1>
+        {duties.length > 0 && (
+          <p className="text-ink2">
+            {soon} this week, {duties.length - soon} later
+          </p>
+        )}
       </div>
       {duties.length === 0 ? (
-        <EmptyState title="Nothing is due." fact={`Looked at ${new Date().toTimeString().slice(0, 5)}: talks, programme, registrations, payments, grants, letters.`} />
+        <EmptyState
+          title="Nothing is due."
+          fact={`Looked at ${new Date().toTimeString().slice(0, 5)}: talks, programme, registrations, payments, grants, letters.`}
+        />
       ) : (
         <ol className="border-b-[1.75px] border-ink">
           {duties.map((duty, index) => (
-            <li key={duty.key} className="grid min-h-[54px] grid-cols-[20px_92px_1fr_auto] items-center gap-x-3 border-b border-rule py-1.5 last:border-b-0 max-sm:grid-cols-[20px_1fr]">
+            <li
+              key={duty.key}
+              className="grid min-h-[54px] grid-cols-[20px_92px_1fr_auto] items-center gap-x-3 border-b border-rule py-1.5 last:border-b-0 max-sm:grid-cols-[20px_1fr]"
+            >
               <span className="font-serif text-[16px]">{index + 1}</span>
-              <span className={duty.soon ? 'font-semibold text-alarm' : 'text-ink3'}>{duty.by ? formatDate(duty.by, { short: true }) : 'No date'}</span>
+              <span className={duty.soon ? 'font-semibold text-alarm' : 'text-ink3'}>
+                {duty.by ? formatDate(duty.by, { short: true }) : 'No date'}
+              </span>
               <span className="min-w-0 max-sm:col-start-2">
                 <b className="block font-semibold">{duty.title}</b>
                 <span className="text-dense text-ink2">{duty.detail}</span>
               </span>
-              <LinkButton to={duty.href} variant={index === 0 && duty.soon ? 'primary' : 'secondary'} className="min-w-[104px] max-sm:col-start-2 max-sm:justify-self-start">{duty.action}</LinkButton>
+              <LinkButton
+                to={duty.href}
+                variant={index === 0 && duty.soon ? 'primary' : 'secondary'}
+                className="min-w-[104px] max-sm:col-start-2 max-sm:justify-self-start"
+              >
+                {duty.action}
+              </LinkButton>
             </li>
           ))}
         </ol>
@@ -90,7 +110,9 @@ function Log({ log }: { log: Overview['log'] }) {
             {log.map((row) => (
               <tr key={row.id}>
                 <td className="w-28 whitespace-nowrap text-ink3">{ownTime(row.at)}</td>
-                <td><b className="font-semibold">{row.who}</b> {spoken(row.what)}</td>
+                <td>
+                  <b className="font-semibold">{row.who}</b> {spoken(row.what)}
+                </td>
               </tr>
             ))}
           </tbody>
@@ -101,16 +123,23 @@ function Log({ log }: { log: Overview['log'] }) {
 }
 
 function Abstracts({ abstracts }: { abstracts: Overview['abstracts'] }) {
-  const sum = (pick: 'handedIn' | 'missing'): number => abstracts.reduce((total, row) => total + row[pick], 0);
+  const sum = (pick: 'handedIn' | 'missing'): number =>
+    abstracts.reduce((total, row) => total + row[pick], 0);
   return (
     <section>
       <SectionHead title="Abstracts" />
       <table className="ruled text-dense">
         <thead>
           <tr>
-            <th scope="col"><span className="sr-only">Kind</span></th>
-            <th scope="col" className="num">In</th>
-            <th scope="col" className="num">Missing</th>
+            <th scope="col">
+              <span className="sr-only">Kind</span>
+            </th>
+            <th scope="col" className="num">
+              In
+            </th>
+            <th scope="col" className="num">
+              Missing
+            </th>
           </tr>
         </thead>
         <tbody>
@@ -151,8 +180,9 @@ function Meals({ meals }: { meals: Overview['meals'] }) {
           </tr>
         </tbody>
       </table>
-      <p className="mt-1 text-tile text-ink3">Counts are not a safety measure: the kitchen confirms allergens with the person.</p>
+      <p className="mt-1 text-tile text-ink3">
+        Counts are not a safety measure: the kitchen confirms allergens with the person.
+      </p>
     </section>
   );
 }
-

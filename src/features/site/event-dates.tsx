@@ -19,11 +19,16 @@ export function EventDates({ event }: { event: PublicEvent }) {
             <td className="w-24 whitespace-nowrap">
               {row.today ? (
                 <>
-                  <span aria-hidden="true" className="mr-1.5 inline-block h-[11px] w-[11px] rounded-full bg-sun" />
+                  <span
+                    aria-hidden="true"
+                    className="mr-1.5 inline-block h-[11px] w-[11px] rounded-full bg-sun"
+                  />
                   Today
                 </>
               ) : (
-                <span className={row.date < today ? '' : 'font-semibold'}>{formatDate(row.date, { short: true, weekday: false })}</span>
+                <span className={row.date < today ? '' : 'font-semibold'}>
+                  {formatDate(row.date, { short: true, weekday: false })}
+                </span>
               )}
             </td>
             <td>{row.text}</td>

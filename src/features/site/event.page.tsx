@@ -47,7 +47,9 @@ function Cover({ event }: { event: PublicEvent }) {
         <p className="m-0 mb-2 text-[17px] leading-6 text-ink2">
           {eventKindNames[event.kind]}, {formatDateSpan(event.startsOn, event.endsOn)}, {event.town}
         </p>
-        <h1 className="m-0 max-w-[15em] font-serif text-cover font-medium tracking-[-0.01em] max-md:text-[36px] max-md:leading-[40px]">{event.title}</h1>
+        <h1 className="m-0 max-w-[15em] font-serif text-cover font-medium tracking-[-0.01em] max-md:text-[36px] max-md:leading-[40px]">
+          {event.title}
+        </h1>
         <Paragraphs text={event.lead} className="my-6 max-w-[40em] font-serif text-[19px] leading-7" />
         <RegisterAction event={event} />
       </div>
@@ -97,7 +99,11 @@ function Courses({ event }: { event: PublicEvent }) {
               <td className="w-6 pr-2 font-serif text-[18px] text-ecourse">{course.letter}</td>
               <td className="pr-0">
                 <div className="font-serif text-[17px] leading-6 font-medium">{course.title}</div>
-                <div className="text-ui text-ink2">{course.lecturers.map((person) => `${person.printedName}, ${person.affiliation}`).join('; ')}</div>
+                <div className="text-ui text-ink2">
+                  {course.lecturers
+                    .map((person) => `${person.printedName}, ${person.affiliation}`)
+                    .join('; ')}
+                </div>
               </td>
             </tr>
           ))}
@@ -127,20 +133,32 @@ function OneDay({ event }: { event: PublicEvent }) {
       <QueryView query={programme} what="the programme">
         {({ talks, revision }) => {
           const day = dayToShow(talks, today);
-          if (!day || !revision) return <EmptyState title="The programme is not published yet" fact="It stands here as soon as it is." />;
+          if (!day || !revision)
+            return (
+              <EmptyState
+                title="The programme is not published yet"
+                fact="It stands here as soon as it is."
+              />
+            );
           const shown = talks.filter((talk) => talk.day === day);
           return (
             <>
               <div className="mb-2 flex flex-wrap items-baseline gap-x-4">
                 <h2 className="m-0 text-form font-semibold">{formatDate(day)}</h2>
                 <span className="text-[14px] text-ink2">
-                  revision {revision.number}, of {formatDate(instantToLocal(revision.publishedAt, event.timeZone).date, { weekday: false })}
+                  revision {revision.number}, of{' '}
+                  {formatDate(instantToLocal(revision.publishedAt, event.timeZone).date, { weekday: false })}
                 </span>
                 <Link className="ml-auto text-[14px]" to={`/events/${event.slug}/programme`}>
                   Whole programme
                 </Link>
               </div>
-              <DayProgramme slug={event.slug} talks={shown} zone={event.timeZone} label={`Programme of ${formatDate(day)}`} />
+              <DayProgramme
+                slug={event.slug}
+                talks={shown}
+                zone={event.timeZone}
+                label={`Programme of ${formatDate(day)}`}
+              />
             </>
           );
         }}
@@ -156,7 +174,10 @@ function Practical({ event }: { event: PublicEvent }) {
     ['Safeguarding', event.safeguarding],
   ];
   return (
-    <div id="practical" className="grid grid-cols-3 gap-11 border-t border-rule px-12 py-7 max-lg:grid-cols-1 max-md:px-4">
+    <div
+      id="practical"
+      className="grid grid-cols-3 gap-11 border-t border-rule px-12 py-7 max-lg:grid-cols-1 max-md:px-4"
+    >
       {items
         .filter(([, text]) => text.trim() !== '')
         .map(([title, text]) => (
@@ -170,12 +191,14 @@ function Practical({ event }: { event: PublicEvent }) {
         <ul className="m-0 list-none p-0 text-form leading-7">
           {event.callUntil && (
             <li>
-              <Link to={`/events/${event.slug}/submit`}>Submit an abstract</Link> until {formatInstant(event.callUntil, event.timeZone)}
+              <Link to={`/events/${event.slug}/submit`}>Submit an abstract</Link> until{' '}
+              {formatInstant(event.callUntil, event.timeZone)}
             </li>
           )}
           {event.grantsUntil && (
             <li>
-              <Link to={`/events/${event.slug}/grant`}>Ask for a travel grant</Link> until {formatInstant(event.grantsUntil, event.timeZone)}
+              <Link to={`/events/${event.slug}/grant`}>Ask for a travel grant</Link> until{' '}
+              {formatInstant(event.grantsUntil, event.timeZone)}
             </li>
           )}
           {event.revision !== null && (

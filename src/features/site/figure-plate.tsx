@@ -1,5 +1,12 @@
 import { useMemo } from 'react';
-import { chordPath, figureOf, penrosePaths, torusKnotPath, visiblePoints, type Figure } from '@shared/features/site/figures.rules';
+import {
+  chordPath,
+  figureOf,
+  penrosePaths,
+  torusKnotPath,
+  visiblePoints,
+  type Figure,
+} from '@shared/features/site/figures.rules';
 
 const CHALK = '#9DABA3';
 const TINT = '#1D2B26';
@@ -16,10 +23,18 @@ export function FigurePlate({ title, className = '' }: { title: string; classNam
   const figure = figureOf(title);
   return (
     <figure className={`relative m-0 overflow-hidden bg-[#101A17] ${className}`}>
-      <svg viewBox="-300 -226 600 452" preserveAspectRatio="xMidYMid slice" className="absolute inset-0 h-full w-full" role="img" aria-label={captions[figure]}>
+      <svg
+        viewBox="-300 -226 600 452"
+        preserveAspectRatio="xMidYMid slice"
+        className="absolute inset-0 h-full w-full"
+        role="img"
+        aria-label={captions[figure]}
+      >
         <Drawing figure={figure} />
       </svg>
-      <figcaption className="absolute bottom-0 left-0 bg-[#101A17] px-3.5 py-1.5 font-serif text-[14px] text-[#C6D0C8] italic">{captions[figure]}</figcaption>
+      <figcaption className="absolute bottom-0 left-0 bg-[#101A17] px-3.5 py-1.5 font-serif text-[14px] text-[#C6D0C8] italic">
+        {captions[figure]}
+      </figcaption>
     </figure>
   );
 }
@@ -44,8 +59,19 @@ function Curve({ d }: { d: 'knot' | 'chords' }) {
   const path = useMemo(() => (d === 'knot' ? torusKnotPath(3, 7, 66) : chordPath(180, 2, 200)), [d]);
   return (
     <>
-      {d === 'knot' ? <circle r="198" fill="none" stroke={TINT} strokeWidth="40" /> : <circle r="200" fill={TINT} />}
-      <path d={path} fill="none" stroke={CHALK} strokeWidth={d === 'knot' ? 2.2 : 0.8} strokeLinecap="round" strokeLinejoin="round" />
+      {d === 'knot' ? (
+        <circle r="198" fill="none" stroke={TINT} strokeWidth="40" />
+      ) : (
+        <circle r="200" fill={TINT} />
+      )}
+      <path
+        d={path}
+        fill="none"
+        stroke={CHALK}
+        strokeWidth={d === 'knot' ? 2.2 : 0.8}
+        strokeLinecap="round"
+        strokeLinejoin="round"
+      />
     </>
   );
 }
@@ -59,7 +85,15 @@ function Lattice() {
       {points
         .filter(([x, y]) => x * y < 60)
         .map(([x, y]) => (
-          <line key={`${x}/${y}`} x1={left} y1={bottom} x2={left + x * size} y2={bottom - y * size} stroke="#32433C" strokeWidth="0.8" />
+          <line
+            key={`${x}/${y}`}
+            x1={left}
+            y1={bottom}
+            x2={left + x * size}
+            y2={bottom - y * size}
+            stroke="#32433C"
+            strokeWidth="0.8"
+          />
         ))}
       {points.map(([x, y]) => (
         <circle key={`${x},${y}`} cx={left + x * size} cy={bottom - y * size} r="2" fill={CHALK} />

@@ -60,7 +60,8 @@ const row = 'flex flex-wrap items-baseline gap-x-4 border-b border-rule py-2.5';
 
 /** The desk helper starts at the desk, the reviewer at the grants, everybody else at the overview. */
 function startOf(slug: string, roles: string[]): string {
-  if (roles.some((role) => ['administrator', 'organiser', 'finance'].includes(role))) return `/organise/${slug}`;
+  if (roles.some((role) => ['administrator', 'organiser', 'finance'].includes(role)))
+    return `/organise/${slug}`;
   return `/organise/${slug}/${roles.includes('reviewer') ? 'grants' : 'desk'}`;
 }
 
@@ -77,7 +78,8 @@ function Work() {
                   {event.title}
                 </Link>
                 <span className={facts}>
-                  {eventKindNames[event.kind]}, {formatDateSpan(event.startsOn, event.endsOn)}, {eventStateNames[event.state].toLowerCase()}
+                  {eventKindNames[event.kind]}, {formatDateSpan(event.startsOn, event.endsOn)},{' '}
+                  {eventStateNames[event.state].toLowerCase()}
                 </span>
               </li>
             ))}
@@ -103,7 +105,9 @@ function Talks() {
                 </Link>
                 <span className={facts}>
                   {talk.eventTitle}, {talk.state}
-                  {talk.part === 'speaker' && talk.state !== 'withdrawn' && !talk.abstractAt && <strong className="ml-2 font-semibold text-alarm">abstract missing</strong>}
+                  {talk.part === 'speaker' && talk.state !== 'withdrawn' && !talk.abstractAt && (
+                    <strong className="ml-2 font-semibold text-alarm">abstract missing</strong>
+                  )}
                 </span>
               </li>
             ))}

@@ -17,7 +17,9 @@ export function Component() {
           <>
             <PageTitle text={`People: ${event.title}`} />
             <h1 className="m-0 mb-5 font-serif text-page font-medium">Speakers and lecturers</h1>
-            {items.length === 0 && <EmptyState title="Nobody stands here yet" fact="Names follow with the published programme." />}
+            {items.length === 0 && (
+              <EmptyState title="Nobody stands here yet" fact="Names follow with the published programme." />
+            )}
             {items.length > 0 && (
               <table className="ruled text-form">
                 <thead className="max-md:sr-only">
@@ -28,7 +30,10 @@ export function Component() {
                 </thead>
                 <tbody>
                   {items.map((person) => (
-                    <tr key={person.printedName + person.affiliation} className="max-md:block max-md:border-b max-md:border-rule max-md:[&>td]:block max-md:[&>td]:border-0">
+                    <tr
+                      key={person.printedName + person.affiliation}
+                      className="max-md:block max-md:border-b max-md:border-rule max-md:[&>td]:block max-md:[&>td]:border-0"
+                    >
                       <td className="w-[320px]">
                         <div className="font-semibold">{person.printedName}</div>
                         <div className="text-ui text-ink2">{person.affiliation}</div>
@@ -36,7 +41,9 @@ export function Component() {
                       <td>
                         {person.talks.map((talk) => (
                           <div key={talk.id + talk.part}>
-                            <span className="mr-2 text-ui text-ink2">{talk.part === 'chair' ? `Chair, ${talk.word}` : talk.word}</span>
+                            <span className="mr-2 text-ui text-ink2">
+                              {talk.part === 'chair' ? `Chair, ${talk.word}` : talk.word}
+                            </span>
                             <Link className="font-serif text-[16px]" to={`/events/${slug}/talks/${talk.id}`}>
                               <MathLine source={talk.title || talk.word} />
                             </Link>

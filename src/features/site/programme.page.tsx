@@ -46,7 +46,8 @@ function Programme({ event, programme }: { event: PublicEvent; programme: Public
       <h1 className="m-0 font-serif text-page font-medium">{event.title}</h1>
       {programme.revision ? (
         <p className="mt-1 mb-5 text-form text-ink2">
-          Programme, revision {programme.revision.number} of {formatInstant(programme.revision.publishedAt, event.timeZone)}.{' '}
+          Programme, revision {programme.revision.number} of{' '}
+          {formatInstant(programme.revision.publishedAt, event.timeZone)}.{' '}
           {choice === 'own' ? `Times in your zone, ${zone.replace(/_/g, ' ')}.` : `Times of ${event.town}.`}
         </p>
       ) : (
@@ -55,17 +56,42 @@ function Programme({ event, programme }: { event: PublicEvent; programme: Public
       {programme.revision && (
         <div className="no-print mb-6 flex flex-wrap items-end gap-5">
           {ownZone() !== event.timeZone && (
-            <Segmented<Zone> label="Times" options={[{ value: 'event', label: `${event.town} time` }, { value: 'own', label: 'My time' }]} value={choice} onChange={setChoice} />
+            <Segmented<Zone>
+              label="Times"
+              options={[
+                { value: 'event', label: `${event.town} time` },
+                { value: 'own', label: 'My time' },
+              ]}
+              value={choice}
+              onChange={setChoice}
+            />
           )}
-          <Select label="Room" value={room} onChange={(change) => setRoom(change.target.value)} options={[{ value: '', label: 'All rooms' }, ...programme.rooms.map(({ id, name }) => ({ value: id, label: name }))]} />
-          <a href={`/calendars/events/${event.slug}${room ? `/rooms/${room}` : ''}.ics`}>Subscribe in your calendar</a>
+          <Select
+            label="Room"
+            value={room}
+            onChange={(change) => setRoom(change.target.value)}
+            options={[
+              { value: '', label: 'All rooms' },
+              ...programme.rooms.map(({ id, name }) => ({ value: id, label: name })),
+            ]}
+          />
+          <a href={`/calendars/events/${event.slug}${room ? `/rooms/${room}` : ''}.ics`}>
+            Subscribe in your calendar
+          </a>
         </div>
       )}
-      {programme.revision && days.length === 0 && <EmptyState title="Nothing is placed in this room" fact="Choose another room." />}
+      {programme.revision && days.length === 0 && (
+        <EmptyState title="Nothing is placed in this room" fact="Choose another room." />
+      )}
       {days.map((day) => (
         <section key={day} id={day} className="mb-9 break-inside-avoid">
           <h2 className="m-0 mb-2 text-form font-semibold">{formatDate(day)}</h2>
-          <DayProgramme slug={event.slug} talks={talks.filter((talk) => dayIn(talk.startsAt) === day)} zone={zone} label={`Programme of ${formatDate(day)}`} />
+          <DayProgramme
+            slug={event.slug}
+            talks={talks.filter((talk) => dayIn(talk.startsAt) === day)}
+            zone={zone}
+            label={`Programme of ${formatDate(day)}`}
+          />
         </section>
       ))}
     </>

@@ -49,9 +49,20 @@ function Talk({ talk }: { talk: PublicTalkPage }) {
             {partWords[person.part] && <span className="text-ink3"> ({partWords[person.part]})</span>}
           </li>
         ))}
-        {talk.coAuthors.length > 0 && <li className="text-ink2">with {talk.coAuthors.map((person) => [person.name, person.affiliation].filter(Boolean).join(', ')).join('; ')}</li>}
+        {talk.coAuthors.length > 0 && (
+          <li className="text-ink2">
+            with{' '}
+            {talk.coAuthors
+              .map((person) => [person.name, person.affiliation].filter(Boolean).join(', '))
+              .join('; ')}
+          </li>
+        )}
       </ul>
-      {talk.abstract ? <MathText source={talk.abstract} /> : <p className="text-ink2">The abstract is not in yet.</p>}
+      {talk.abstract ? (
+        <MathText source={talk.abstract} />
+      ) : (
+        <p className="text-ink2">The abstract is not in yet.</p>
+      )}
       {talk.msc.length > 0 && <p className="mt-4 text-ui text-ink2">MSC 2020: {talk.msc.join(', ')}</p>}
       {talk.references.length > 0 && (
         <>

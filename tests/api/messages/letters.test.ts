@@ -23,35 +23,72 @@ beforeEach(async () => {
   at = { params: { event: scene.event.slug } };
 });
 
-const letter = (over: Partial<letters.FreeLetter> = {}): letters.FreeLetter => ({ letterId: randomUUID(), group: 'speakers', subject: 'About {{event}}', text: 'Dear {{name}},\n\nyou give {{talks}}.\n\n<b>Bold</b> & so on', ...over });
-const fields = (answer: { body: unknown }) => (answer.body as { fields?: Record<string, string> }).fields ?? {};
+const letter = (over: Partial<letters.FreeLetter> = {}): letters.FreeLetter => ({
+  letterId: randomUUID(),
+  group: 'speakers',
+  subject: 'About {{event}}',
+  text: 'Dear {{name}},\n\nyou give {{talks}}.\n\n<b>Bold</b> & so on',
+  ...over,
+});
+const fields = (answer: { body: unknown }) =>
+  (answer.body as { fields?: Record<string, string> }).fields ?? {};
 
 describe('E4 a letter to a group', () => {
   it('is previewed with a real reader’s data, tried on oneself, and sent once to each', async () => {
     const groups = (await organiser.call(letters.listLetterGroups, at)).body.items;
-    expect(groups.find(({ group }) => group === 'speakers')).toEqual({ group: 'speakers', people: 2, refused: 0 });
+    expect(groups.find(({ group }) => group === 'speakers')).toEqual({
+      group: 'speakers',
+      people: 2,
+      refused: 0,
+    });
     const body = letter();
     const preview = (await organiser.call(letters.previewLetter, { ...at, body })).body;
     expect(preview).toMatchObject({ people: 2, sample: { subject: 'About Conference on Lattices' } });
     expect(preview.sample?.html).toContain('&lt;b&gt;Bold&lt;/b&gt; &amp; so on');
     expect((await organiser.call(letters.testLetter, { ...at, body })).status).toBe(204);
     await t.runJobs();
-    expect(t.mail.map(({ to, subject }) => `${to} ${subject}`)).toEqual([`${scene.organiser.email} Test: About Conference on Lattices`]);
+    expect(t.mail.map(({ to, subject }) => `${to} ${subject}`)).toEqual([
+      `${scene.organiser.email} Test: About Conference on Lattices`,
+    ]);
     t.mail.length = 0;
     expect((await organiser.call(letters.sendLetter, { ...at, body })).body).toEqual({ people: 2 });
     expect((await organiser.call(letters.sendLetter, { ...at, body })).body).toEqual({ people: 2 });
     await t.runJobs();
     expect(t.mail).toHaveLength(2);
-    expect(t.mail.find(({ to }) => to === scene.speaker.email)?.text).toContain(`Dear ${scene.speaker.printedName},\n\nyou give “Cubes”.`);
+    expect(t.mail.find(({ to }) => to === scene.speaker.email)?.text).toContain(
+      `Dear ${scene.speaker.printedName},\n\nyou give “Cubes”.`,
+    );
   });
 
   it('writes to nobody when a field does not exist or has no value for somebody', async () => {
-    expect(fields(await organiser.call(letters.sendLetter, { ...at, body: letter({ text: 'Dear {{nickname}}' }) })).text).toBe('There is no field {{nickname}}. Choose one from the list.');
-    const committee = await organiser.call(letters.sendLetter, { ...at, body: letter({ group: 'committee' }) });
+    expect(
+      fields(await organiser.call(letters.sendLetter, { ...at, body: letter({ text: 'Dear {{nickname}}' }) }))
+        .text,
+    ).toBe('There is no field {{nickname}}. Choose one from the list.');
+    const committee = await organiser.call(letters.sendLetter, {
+      ...at,
+      body: letter({ group: 'committee' }),
+    });
     expect(committee.status).toBe(422);
-    expect(fields(committee).text).toBe(`{{talks}} (Titles of their talks) is not known for ${scene.organiser.printedName}.`);
-    expect((await organiser.call(letters.sendLetter, { ...at, body: letter({ subject: 'Two\r\nBcc: x@example.org' }) })).status).toBe(422);
-    expect((await organiser.call(letters.sendLetter, { ...at, body: letter({ group: 'participants', text: 'Hello' }) })).status).toBe(409);
+    expect(fields(committee).text).toBe(
+      `{{talks}} (Titles of their talks) is not known for ${scene.organiser.printedName}.`,
+    );
+    expect(
+      (
+        await organiser.call(letters.sendLetter, {
+          ...at,
+          body: letter({ subject: 'Two\r\nBcc: x@example.org' }),
+        })
+      ).status,
+    ).toBe(422);
+    expect(
+      (
+        await organiser.call(letters.sendLetter, {
+          ...at,
+          body: letter({ group: 'participants', text: 'Hello' }),
+        })
+      ).status,
+    ).toBe(409);
     expect(await MessageRow.count()).toBe(0);
   });
 
@@ -62,11 +99,17 @@ describe('E4 a letter to a group', () => {
     expect((await request(t.app).get(path)).text).toContain('Stop these letters');
     expect((await organiser.call(letters.previewLetter, { ...at, body: letter() })).body.people).toBe(2);
     // RFC 8058 section 3.2: a POST without cookies.
-    expect((await request(t.app).post(path).type('form').send('List-Unsubscribe=One-Click')).status).toBe(200);
+    expect((await request(t.app).post(path).type('form').send('List-Unsubscribe=One-Click')).status).toBe(
+      200,
+    );
     expect((await request(t.app).post(path)).status).toBe(200);
     expect((await request(t.app).post(`/unsubscribe/${'x'.repeat(43)}`)).status).toBe(404);
     const groups = (await organiser.call(letters.listLetterGroups, at)).body.items;
-    expect(groups.find(({ group }) => group === 'speakers')).toEqual({ group: 'speakers', people: 1, refused: 1 });
+    expect(groups.find(({ group }) => group === 'speakers')).toEqual({
+      group: 'speakers',
+      people: 1,
+      refused: 1,
+    });
     expect((await organiser.call(letters.sendLetter, { ...at, body: letter() })).body.people).toBe(1);
   });
 
@@ -82,19 +125,35 @@ describe('E4 a letter to a group', () => {
 
 describe('E7 the history', () => {
   it('shows what each person was sent, finds, and hides the secrets of links', async () => {
-    await organiser.call(letters.sendLetter, { ...at, body: letter({ text: `Open http://x.example/verify/${'s'.repeat(43)} {{name}}` }) });
+    await organiser.call(letters.sendLetter, {
+      ...at,
+      body: letter({ text: `Open http://x.example/verify/${'s'.repeat(43)} {{name}}` }),
+    });
     await t.runJobs();
     const all = (await organiser.call(contract.listEventMessages, { ...at })).body;
     expect(all.items.map(({ state }) => state)).toEqual(['sent', 'sent']);
-    const mine = (await organiser.call(contract.listEventMessages, { ...at, query: { account: scene.speaker.id } })).body.items;
+    const mine = (
+      await organiser.call(contract.listEventMessages, { ...at, query: { account: scene.speaker.id } })
+    ).body.items;
     expect(mine.map(({ toAddress }) => toAddress)).toEqual([scene.speaker.email]);
-    expect((await organiser.call(contract.listEventMessages, { ...at, query: { q: '%' } })).body.items).toHaveLength(0);
-    expect((await organiser.call(contract.listEventMessages, { ...at, query: { q: 'ABOUT conf' } })).body.items).toHaveLength(2);
-    const one = await organiser.call(contract.readEventMessage, { params: { ...at.params, message: mine[0]?.id ?? '' } });
+    expect(
+      (await organiser.call(contract.listEventMessages, { ...at, query: { q: '%' } })).body.items,
+    ).toHaveLength(0);
+    expect(
+      (await organiser.call(contract.listEventMessages, { ...at, query: { q: 'ABOUT conf' } })).body.items,
+    ).toHaveLength(2);
+    const one = await organiser.call(contract.readEventMessage, {
+      params: { ...at.params, message: mine[0]?.id ?? '' },
+    });
     expect(one.body.text).toContain('verify/…');
     expect(one.body.text).not.toContain('sss');
     const first = (await organiser.call(contract.listEventMessages, { ...at, query: { limit: 1 } })).body;
-    const rest = (await organiser.call(contract.listEventMessages, { ...at, query: { limit: 1, cursor: first.next ?? '' } })).body;
+    const rest = (
+      await organiser.call(contract.listEventMessages, {
+        ...at,
+        query: { limit: 1, cursor: first.next ?? '' },
+      })
+    ).body;
     expect([...first.items, ...rest.items].map(({ id }) => id)).toEqual(all.items.map(({ id }) => id));
     expect(rest.next).toBeNull();
   });
@@ -105,18 +164,29 @@ describe('E7 the history', () => {
     const message = { params: { ...at.params, message: row.id } };
     expect((await organiser.call(contract.retryEventMessage, message)).status).toBe(409);
     await transaction(() => row.update({ state: 'failed', lastError: '550 no such mailbox here' }));
-    const listed = (await organiser.call(contract.listEventMessages, { ...at, query: { state: 'failed' } })).body.items;
-    expect(listed).toMatchObject([{ id: row.id, lastError: '550 no such mailbox here', can: { retry: true } }]);
+    const listed = (await organiser.call(contract.listEventMessages, { ...at, query: { state: 'failed' } }))
+      .body.items;
+    expect(listed).toMatchObject([
+      { id: row.id, lastError: '550 no such mailbox here', can: { retry: true } },
+    ]);
     const other = await buildProgramme();
     const stranger = await t.signIn(other.organiser);
-    expect((await stranger.call(contract.retryEventMessage, { params: { event: other.event.slug, message: row.id } })).status).toBe(404);
+    expect(
+      (
+        await stranger.call(contract.retryEventMessage, {
+          params: { event: other.event.slug, message: row.id },
+        })
+      ).status,
+    ).toBe(404);
     expect((await organiser.call(contract.retryMessage, { params: { message: row.id } })).status).toBe(403);
     expect((await organiser.call(contract.retryEventMessage, message)).status).toBe(204);
     await t.runJobs();
     expect((await MessageRow.findByPk(row.id))?.state).toBe('sent');
     const office = await t.signIn(await buildAccount({}, [administrator]));
     expect((await office.call(contract.listAllMessages)).body.items).toHaveLength(2);
-    expect((await office.call(contract.readAnyMessage, { params: { message: row.id } })).body.id).toBe(row.id);
+    expect((await office.call(contract.readAnyMessage, { params: { message: row.id } })).body.id).toBe(
+      row.id,
+    );
     expect((await organiser.call(contract.listAllMessages)).status).toBe(403);
   });
 });

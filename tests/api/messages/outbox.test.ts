@@ -2,7 +2,13 @@ import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from
 import '../../../server/db/models';
 import { transaction } from '../../../server/db/transaction';
 import { startLocalMailbox, type LocalMailbox } from '../../../server/fakes/smtp/local-mailbox';
-import { backOffSeconds, dispatchMail, isPermanent, recoverInterrupted, retryMessage } from '../../../server/mail/dispatch';
+import {
+  backOffSeconds,
+  dispatchMail,
+  isPermanent,
+  recoverInterrupted,
+  retryMessage,
+} from '../../../server/mail/dispatch';
 import { MessageRow } from '../../../server/mail/message.model';
 import { messageIdOf, queueMessage, type OutgoingMessage } from '../../../server/mail/outbox';
 import { freshDatabase } from '../../support/database';
@@ -39,7 +45,12 @@ describe('E5 queueing', () => {
   });
 
   it('queues nothing when the transaction around it fails', async () => {
-    await expect(transaction(async () => { await queueMessage(letter()); throw new Error('undone'); })).rejects.toThrow('undone');
+    await expect(
+      transaction(async () => {
+        await queueMessage(letter());
+        throw new Error('undone');
+      }),
+    ).rejects.toThrow('undone');
     expect(await MessageRow.count()).toBe(0);
   });
 
@@ -58,7 +69,11 @@ describe('E5 queueing', () => {
   });
 
   it('sends a title that holds the word undefined', async () => {
-    await queueMessage(letter({ mail: { subject: `Đề tài ${subject}: is 0/0 undefined`, text: 'undefined', html: 'undefined' } }));
+    await queueMessage(
+      letter({
+        mail: { subject: `Đề tài ${subject}: is 0/0 undefined`, text: 'undefined', html: 'undefined' },
+      }),
+    );
     await dispatchMail();
     expect(mine()).toHaveLength(1);
   });
@@ -66,21 +81,46 @@ describe('E5 queueing', () => {
 
 describe('E5 sending', () => {
   it('sends once, with the server’s reply kept and every character in place', async () => {
-    await queueMessage(letter({ replyTo: 'office@tarnholt.example.org', unsubscribeUrl: 'http://analemma.test/unsubscribe/x' }));
+    await queueMessage(
+      letter({
+        replyTo: 'office@tarnholt.example.org',
+        unsubscribeUrl: 'http://analemma.test/unsubscribe/x',
+      }),
+    );
     expect(await dispatchMail()).toBe(1);
     expect(await dispatchMail(later(90_000))).toBe(0);
     const [mail] = mine();
     expect(mine()).toHaveLength(1);
-    expect(mail).toMatchObject({ subject: `Đề tài ${subject}: ζ(3) ∉ ℚ`, recipients: ['hang@example.org'], messageId: messageIdOf(`test:${subject}`), calendar: null });
+    expect(mail).toMatchObject({
+      subject: `Đề tài ${subject}: ζ(3) ∉ ℚ`,
+      recipients: ['hang@example.org'],
+      messageId: messageIdOf(`test:${subject}`),
+      calendar: null,
+    });
     expect(mail?.text.trim()).toBe('Dear Hằng');
     const head = new Map(mail?.headers.map(({ name, value }) => [name, value]));
     expect(head.get('list-unsubscribe')).toContain('<http://analemma.test/unsubscribe/x>');
     expect(head.get('list-unsubscribe-post')).toBe('List-Unsubscribe=One-Click');
-    expect(await only()).toMatchObject({ state: 'sent', attempts: 1, lastError: null, serverReply: expect.stringContaining('250') });
+    expect(await only()).toMatchObject({
+      state: 'sent',
+      attempts: 1,
+      lastError: null,
+      serverReply: expect.stringContaining('250'),
+    });
   });
 
   it('carries a calendar part as RFC 6047 asks: method and charset in the type, in the alternative and as a file', async () => {
-    const content = ['BEGIN:VCALENDAR', 'VERSION:2.0', 'PRODID:x', 'METHOD:REQUEST', 'BEGIN:VEVENT', 'SUMMARY:ζ', 'END:VEVENT', 'END:VCALENDAR', ''].join('\r\n');
+    const content = [
+      'BEGIN:VCALENDAR',
+      'VERSION:2.0',
+      'PRODID:x',
+      'METHOD:REQUEST',
+      'BEGIN:VEVENT',
+      'SUMMARY:ζ',
+      'END:VEVENT',
+      'END:VCALENDAR',
+      '',
+    ].join('\r\n');
     await queueMessage(letter({ calendar: { method: 'REQUEST', content } }));
     await dispatchMail();
     const [mail] = mine();
@@ -92,7 +132,11 @@ describe('E5 sending', () => {
     await queueMessage(letter());
     mailbox.misbehave({ code: 451, message: 'greylisted, try later', times: 2 });
     expect(await dispatchMail()).toBe(1);
-    expect(await only()).toMatchObject({ state: 'queued', attempts: 1, lastError: expect.stringContaining('greylisted') });
+    expect(await only()).toMatchObject({
+      state: 'queued',
+      attempts: 1,
+      lastError: expect.stringContaining('greylisted'),
+    });
     expect(await dispatchMail(later(29))).toBe(0);
     expect(await dispatchMail(later(40))).toBe(1);
     expect(await dispatchMail(later(120))).toBe(1);
@@ -105,7 +149,11 @@ describe('E5 sending', () => {
     mailbox.misbehave({ code: 550, message: 'no such mailbox here' });
     await dispatchMail();
     const failed = await only();
-    expect(failed).toMatchObject({ state: 'failed', attempts: 1, lastError: expect.stringContaining('no such mailbox here') });
+    expect(failed).toMatchObject({
+      state: 'failed',
+      attempts: 1,
+      lastError: expect.stringContaining('no such mailbox here'),
+    });
     expect(await dispatchMail(later(90_000))).toBe(0);
     expect(await retryMessage(failed.id)).toBe(true);
     expect(await retryMessage(failed.id)).toBe(false);
@@ -132,7 +180,10 @@ describe('E5 sending', () => {
     await dispatchMail();
     expect(await only()).toMatchObject({ state: 'queued' });
     await dispatchMail(later(60));
-    expect(await only()).toMatchObject({ state: 'sent', serverReply: expect.stringContaining('had it already') });
+    expect(await only()).toMatchObject({
+      state: 'sent',
+      serverReply: expect.stringContaining('had it already'),
+    });
     expect(mine()).toHaveLength(1);
   });
 
@@ -141,7 +192,9 @@ describe('E5 sending', () => {
     await dispatchMail();
     const row = await only();
     // What SIGKILL leaves behind after the server had taken the letter and before the row was marked.
-    await transaction(() => row.update({ state: 'sending', serverReply: null, sentAt: null, nextAt: later(600)() }));
+    await transaction(() =>
+      row.update({ state: 'sending', serverReply: null, sentAt: null, nextAt: later(600)() }),
+    );
     expect(await dispatchMail()).toBe(0);
     expect(await recoverInterrupted()).toBe(1);
     expect(await dispatchMail(later(1))).toBe(1);
@@ -152,7 +205,9 @@ describe('E5 sending', () => {
 
 describe('E5 rules of sending', () => {
   it('waits 30 s, then twice as long each time, at most two hours, plus up to a fifth', () => {
-    expect([1, 2, 3, 8, 20].map((attempts) => backOffSeconds(attempts, () => 0))).toEqual([30, 60, 120, 3840, 7200]);
+    expect([1, 2, 3, 8, 20].map((attempts) => backOffSeconds(attempts, () => 0))).toEqual([
+      30, 60, 120, 3840, 7200,
+    ]);
     expect(backOffSeconds(1, () => 1)).toBe(36);
   });
 

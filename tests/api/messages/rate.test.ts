@@ -16,7 +16,13 @@ it('E5 sends at most 600 letters a minute, and the rest in the next', async () =
   let sent = 0;
   useTransport({ send: async () => `250 taken ${++sent}` });
   await transaction(async () => {
-    for (let n = 0; n < 605; n++) await queueMessage({ letter: 'test', to: { name: 'A', address: 'a@example.org' }, dedupKey: `rate:${n}`, mail: { subject: 's', text: 't', html: 'h' } });
+    for (let n = 0; n < 605; n++)
+      await queueMessage({
+        letter: 'test',
+        to: { name: 'A', address: 'a@example.org' },
+        dedupKey: `rate:${n}`,
+        mail: { subject: 's', text: 't', html: 'h' },
+      });
   });
   const start = Date.now();
   expect(await dispatchMail(() => new Date(start))).toBe(600);

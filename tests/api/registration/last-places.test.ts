@@ -29,7 +29,15 @@ async function people(count: number): Promise<string[]> {
       const secret = newSessionSecret();
       await AccountRow.create({ ...template.get({ plain: true }), id, email: `crowd${i}@example.org` });
       const now = new Date();
-      await SessionRow.create({ id: hashSecret(secret), accountId: id, device: 'test', startedAt: now, lastSeenAt: now, idleSeconds: 3600, expiresAt: new Date(now.getTime() + 3_600_000) });
+      await SessionRow.create({
+        id: hashSecret(secret),
+        accountId: id,
+        device: 'test',
+        startedAt: now,
+        lastSeenAt: now,
+        idleSeconds: 3600,
+        expiresAt: new Date(now.getTime() + 3_600_000),
+      });
       secrets.push(secret);
     }
   });
@@ -54,7 +62,9 @@ it('gives the last 10 places to 10 of 200 people who try at once, and a clear an
   expect(register.path).toBe('/api/events/:event/registrations');
   expect(count(200)).toBe(10);
   expect(count(409)).toBe(190);
-  const refused = answers.filter((answer) => answer.status === 409).map((answer) => JSON.parse(answer.text) as { code: string; detail: string });
+  const refused = answers
+    .filter((answer) => answer.status === 409)
+    .map((answer) => JSON.parse(answer.text) as { code: string; detail: string });
   expect(new Set(refused.map((problem) => problem.code))).toEqual(new Set(['registration.full']));
   expect(refused[0]?.detail).toBe('All places are taken. You can put yourself on the waiting list.');
   expect(await RegistrationRow.count({ where: { eventId: event.id } })).toBe(10);

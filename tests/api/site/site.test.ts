@@ -15,13 +15,22 @@ beforeAll(async () => {
 });
 beforeEach(() => t.reset());
 
-const text = { title: 'Cubes of $\\mathbb{Z}$', abstract: 'Let $x^3=y$. A secret of draft quality.', coAuthors: [{ name: 'Ö. Ek', affiliation: 'Lule' }], msc: ['11P05'], references: [], needs: [] };
+const text = {
+  title: 'Cubes of $\\mathbb{Z}$',
+  abstract: 'Let $x^3=y$. A secret of draft quality.',
+  coAuthors: [{ name: 'Ö. Ek', affiliation: 'Lule' }],
+  msc: ['11P05'],
+  references: [],
+  needs: [],
+};
 
 /** The first talk is published, the second not. */
 async function published() {
   const made = await buildProgramme();
   const { event, hall, first } = made;
-  await placeTalks(systemActor, event.slug, [{ talkId: first.id, roomId: hall.id, day: event.startsOn, startMinute: 540, minutes: 60 }]);
+  await placeTalks(systemActor, event.slug, [
+    { talkId: first.id, roomId: hall.id, day: event.startsOn, startMinute: 540, minutes: 60 },
+  ]);
   await publishRevision(systemActor, event.slug, { note: '', withClashes: true });
   return made;
 }
@@ -47,17 +56,23 @@ describe('the public site', () => {
     expect(page.status).toBe(200);
     const people = await t.stranger.call(contract.listPublicPeople, { params: { event: event.slug } });
     expect(people.body.items.map((one) => one.printedName)).toEqual([speaker.printedName]);
-    for (const answer of [page, people]) expect(JSON.stringify(answer.body)).not.toMatch(/person\d+@example\.org|accountId|"settings"|"version"/);
+    for (const answer of [page, people])
+      expect(JSON.stringify(answer.body)).not.toMatch(
+        /person\d+@example\.org|accountId|"settings"|"version"/,
+      );
   });
 
   it('shows a talk only as published, and its abstract only once it is handed in', async () => {
     const { event, first, second } = await published();
-    const read = (talk: string) => t.stranger.call(contract.readPublicTalk, { params: { event: event.slug, talk } });
+    const read = (talk: string) =>
+      t.stranger.call(contract.readPublicTalk, { params: { event: event.slug, talk } });
     expect((await read(second.id)).status).toBe(404);
     const saved = await saveAbstract(systemActor, event.id, first.id, first.version, text);
     const before = await read(first.id);
     expect(before.body).toMatchObject({ title: 'Cubes', abstract: '', coAuthors: [], msc: [] });
-    expect(JSON.stringify(await readingPage(`/events/${event.slug}/talks/${first.id}`, new Date()))).not.toContain('secret');
+    expect(
+      JSON.stringify(await readingPage(`/events/${event.slug}/talks/${first.id}`, new Date())),
+    ).not.toContain('secret');
     await handInAbstract(systemActor, event.id, first.id, saved.version);
     expect((await read(first.id)).body).toMatchObject({ abstract: text.abstract, msc: ['11P05'] });
     const reading = await readingPage(`/events/${event.slug}/talks/${first.id}`, new Date());
@@ -71,8 +86,15 @@ describe('the public site', () => {
     const page = await readingPage(`/events/${event.slug}`, new Date());
     expect(page).toMatchObject({ status: 200, title: event.title });
     expect(page?.html).toContain('Cubes');
-    const data = JSON.parse(/<script type="application\/ld\+json">(.*?)<\/script>/.exec(page?.head ?? '')?.[1] ?? 'null') as Record<string, unknown>;
-    expect(data).toMatchObject({ '@type': 'Event', name: event.title, startDate: event.startsOn, endDate: event.endsOn });
+    const data = JSON.parse(
+      /<script type="application\/ld\+json">(.*?)<\/script>/.exec(page?.head ?? '')?.[1] ?? 'null',
+    ) as Record<string, unknown>;
+    expect(data).toMatchObject({
+      '@type': 'Event',
+      name: event.title,
+      startDate: event.startsOn,
+      endDate: event.endsOn,
+    });
     const hostile = await buildEvent({ title: '</script><script>alert(1)</script>' });
     const bad = await readingPage(`/events/${hostile.slug}`, new Date());
     expect(`${bad?.head}${bad?.html}`).not.toContain('<script>alert');

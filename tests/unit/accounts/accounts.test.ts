@@ -6,18 +6,40 @@ import { growingDelay } from '../../../server/http/rate-limit';
 
 // ISO 7064 MOD 11-2 as ORCID publishes it (spreadsheet of the ORCID registry); the last two from memory, recomputed.
 describe('ORCID iD', () => {
-  it.each(['0000-0002-1825-0097', '0000-0002-1694-233X', '0000-0002-8205-121X', '0000-0001-5109-3700', '0000-0001-2345-6789'])('%s is valid', (orcid) => {
+  it.each([
+    '0000-0002-1825-0097',
+    '0000-0002-1694-233X',
+    '0000-0002-8205-121X',
+    '0000-0001-5109-3700',
+    '0000-0001-2345-6789',
+  ])('%s is valid', (orcid) => {
     expect(parseOrcid(orcid)).toBe(orcid);
     expect(parseOrcid(`https://orcid.org/${orcid}`)).toBe(orcid);
     expect(orcidCheckDigit(orcid.replace(/-/g, '').slice(0, 15))).toBe(orcid.slice(-1));
   });
-  it.each(['0009-0000-0000-0001', '0000-0002-1825-0098', '0000-0002-1694-2330', '0000-0002-1825', 'X000-0002-1825-0097', ''])('%s is not', (orcid) => expect(parseOrcid(orcid)).toBeUndefined());
+  it.each([
+    '0009-0000-0000-0001',
+    '0000-0002-1825-0098',
+    '0000-0002-1694-2330',
+    '0000-0002-1825',
+    'X000-0002-1825-0097',
+    '',
+  ])('%s is not', (orcid) => expect(parseOrcid(orcid)).toBeUndefined());
 });
 
 describe('passwords', () => {
   const person = { email: 'mira.aas@example.org', name: 'Mira Ås' };
-  it.each(['walnuts under the snow', 'Zq7!rT0#kLm2xy', 'трава у дома зелёная'])('takes %s', (password) => expect(passwordRefusal(password, person)).toBeUndefined());
-  it.each(['password1234', 'aaaaaaaaaaaaaa', 'abcdefghijklm', '987654321098', 'mira.aas@example.org', 'mira.aas1234'])('refuses %s', (password) => expect(passwordRefusal(password, person)).toBeTruthy());
+  it.each(['walnuts under the snow', 'Zq7!rT0#kLm2xy', 'трава у дома зелёная'])('takes %s', (password) =>
+    expect(passwordRefusal(password, person)).toBeUndefined(),
+  );
+  it.each([
+    'password1234',
+    'aaaaaaaaaaaaaa',
+    'abcdefghijklm',
+    '987654321098',
+    'mira.aas@example.org',
+    'mira.aas1234',
+  ])('refuses %s', (password) => expect(passwordRefusal(password, person)).toBeTruthy());
 });
 
 it('roles fit their scope', () => {
@@ -28,11 +50,25 @@ it('roles fit their scope', () => {
 });
 
 describe('the environment', () => {
-  it('has defaults for the demo', () => expect(parseEnv({})).toMatchObject({ PORT: 3000, DEMO: true, BASE_URL: 'http://localhost:3000' }));
-  it('stops with one sentence per wrong value', () => expect(() => parseEnv({ PORT: 'x', SESSION_SECRET: 'short' })).toThrow(/PORT[\s\S]*SESSION_SECRET/));
+  it('has defaults for the demo', () =>
+    expect(parseEnv({})).toMatchObject({ PORT: 3000, DEMO: true, BASE_URL: 'http://localhost:3000' }));
+  it('stops with one sentence per wrong value', () =>
+    expect(() => parseEnv({ PORT: 'x', SESSION_SECRET: 'short' })).toThrow(/PORT[\s\S]*SESSION_SECRET/));
   it('refuses production with demo values', () => {
-    expect(() => parseEnv({ NODE_ENV: 'production' })).toThrow(/SESSION_SECRET must be set[\s\S]*BASE_URL[\s\S]*SMTP_URL[\s\S]*STRIPE/);
-    expect(() => parseEnv({ NODE_ENV: 'production', DEMO: 'true', SESSION_SECRET: 'x'.repeat(40), BASE_URL: 'https://a.example.org', SMTP_URL: 'smtp://m.example.org', STRIPE_SECRET_KEY: 'sk_live_12345', STRIPE_WEBHOOK_SECRET: 'whsec_12345' })).toThrow(/DEMO/);
+    expect(() => parseEnv({ NODE_ENV: 'production' })).toThrow(
+      /SESSION_SECRET must be set[\s\S]*BASE_URL[\s\S]*SMTP_URL[\s\S]*STRIPE/,
+    );
+    expect(() =>
+      parseEnv({
+        NODE_ENV: 'production',
+        DEMO: 'true',
+        SESSION_SECRET: 'x'.repeat(40),
+        BASE_URL: 'https://a.example.org',
+        SMTP_URL: 'smtp://m.example.org',
+        STRIPE_SECRET_KEY: 'sk_live_12345',
+        STRIPE_WEBHOOK_SECRET: 'whsec_12345',
+      }),
+    ).toThrow(/DEMO/);
   });
 });
 

@@ -1,10 +1,24 @@
 import currencyCodes from 'currency-codes';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { add, allocate, divideRounded, exponentOf, formatMoney, fromStripeAmount, money, parseMinor, stripeAmount } from '../../../shared/lib/money';
+import {
+  add,
+  allocate,
+  divideRounded,
+  exponentOf,
+  formatMoney,
+  fromStripeAmount,
+  money,
+  parseMinor,
+  stripeAmount,
+} from '../../../shared/lib/money';
 
 describe('exponents (ISO 4217, as in npm currency-codes 2.2.0)', () => {
-  it.each(currencyCodes.data.filter((entry) => !/^X(?!AF|OF|PF|CD|CG)/.test(entry.code)).map((entry) => [entry.code, entry.digits] as const))('%s has %d', (code, digits) => {
+  it.each(
+    currencyCodes.data
+      .filter((entry) => !/^X(?!AF|OF|PF|CD|CG)/.test(entry.code))
+      .map((entry) => [entry.code, entry.digits] as const),
+  )('%s has %d', (code, digits) => {
     expect(exponentOf(code)).toBe(digits);
   });
 });
@@ -21,11 +35,25 @@ describe('reading and writing amounts', () => {
     expect(parseMinor(text, currency)).toBe(minor);
     expect(formatMoney(minor, currency)).toBe(written);
   });
-  it.each([['12.505', 'EUR'], ['1.5', 'JPY'], ['5.1234', 'KWD'], ['', 'EUR'], ['12,50', 'EUR'], ['1e3', 'EUR'], ['12.', 'EUR']] as const)('refuses %j in %s', (text, currency) => {
+  it.each([
+    ['12.505', 'EUR'],
+    ['1.5', 'JPY'],
+    ['5.1234', 'KWD'],
+    ['', 'EUR'],
+    ['12,50', 'EUR'],
+    ['1e3', 'EUR'],
+    ['12.', 'EUR'],
+  ] as const)('refuses %j in %s', (text, currency) => {
     expect(parseMinor(text, currency)).toBeUndefined();
   });
   it('reads back what it writes', () => {
-    fc.assert(fc.property(fc.integer({ min: 0, max: 10 ** 11 }), fc.constantFrom('EUR', 'JPY', 'KWD'), (minor, currency) => parseMinor(formatMoney(minor, currency, false), currency) === minor));
+    fc.assert(
+      fc.property(
+        fc.integer({ min: 0, max: 10 ** 11 }),
+        fc.constantFrom('EUR', 'JPY', 'KWD'),
+        (minor, currency) => parseMinor(formatMoney(minor, currency, false), currency) === minor,
+      ),
+    );
   });
 });
 
@@ -37,16 +65,30 @@ describe('arithmetic', () => {
     expect(() => money(0.5, 'EUR')).toThrow(RangeError);
   });
   // Half away from zero; 2.5 -> 3 is the case 0.50 at 5 % of EN 16931 (half up, BR-CO-17).
-  it.each([[5, 2, 3], [-5, 2, -3], [4, 3, 1], [1, 3, 0], [2, 3, 1], [250, 100, 3], [0, 7, 0]])('%d / %d is %d', (a, b, quotient) => expect(divideRounded(a, b)).toBe(quotient));
+  it.each([
+    [5, 2, 3],
+    [-5, 2, -3],
+    [4, 3, 1],
+    [1, 3, 0],
+    [2, 3, 1],
+    [250, 100, 3],
+    [0, 7, 0],
+  ])('%d / %d is %d', (a, b, quotient) => expect(divideRounded(a, b)).toBe(quotient));
   it('allocates without loss, each part within one unit of its share', () => {
     fc.assert(
-      fc.property(fc.integer({ min: -(10 ** 9), max: 10 ** 9 }), fc.array(fc.integer({ min: 0, max: 1000 }), { minLength: 1, maxLength: 20 }), (amount, weights) => {
-        fc.pre(weights.some((weight) => weight > 0));
-        const parts = allocate(amount, weights);
-        const total = weights.reduce((sum, weight) => sum + weight, 0);
-        expect(parts.reduce((sum, part) => sum + part, 0)).toBe(amount);
-        parts.forEach((part, index) => expect(Math.abs(part - (amount * (weights[index] as number)) / total)).toBeLessThan(1.001));
-      }),
+      fc.property(
+        fc.integer({ min: -(10 ** 9), max: 10 ** 9 }),
+        fc.array(fc.integer({ min: 0, max: 1000 }), { minLength: 1, maxLength: 20 }),
+        (amount, weights) => {
+          fc.pre(weights.some((weight) => weight > 0));
+          const parts = allocate(amount, weights);
+          const total = weights.reduce((sum, weight) => sum + weight, 0);
+          expect(parts.reduce((sum, part) => sum + part, 0)).toBe(amount);
+          parts.forEach((part, index) =>
+            expect(Math.abs(part - (amount * (weights[index] as number)) / total)).toBeLessThan(1.001),
+          );
+        },
+      ),
     );
     expect(allocate(100, [1, 1, 1])).toEqual([34, 33, 33]);
   });
@@ -65,5 +107,12 @@ describe('amounts for Stripe', () => {
     expect(stripeAmount(minor, currency)).toBe(sent);
     expect(fromStripeAmount(sent, currency)).toBe(minor);
   });
-  it.each([[5124, 'KWD'], [150, 'MGA'], [100, 'UGX'], [10_000, 'CLF']] as const)('refuses %d %s', (minor, currency) => expect(() => stripeAmount(minor, currency)).toThrow(RangeError));
+  it.each([
+    [5124, 'KWD'],
+    [150, 'MGA'],
+    [100, 'UGX'],
+    [10_000, 'CLF'],
+  ] as const)('refuses %d %s', (minor, currency) =>
+    expect(() => stripeAmount(minor, currency)).toThrow(RangeError),
+  );
 });

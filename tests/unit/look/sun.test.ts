@@ -29,7 +29,9 @@ it('the mark is 0.56 times as wide as high, closed, with the disc on the curve',
   const mark = markGeometry(150, 9.6, new Date('2026-07-06T12:00:00Z'));
   expect((mark.width - 19.2) / (150 - 19.2)).toBeCloseTo(0.56, 6);
   expect(mark.path.startsWith('M') && mark.path.endsWith('Z')).toBe(true);
-  const points = [...mark.path.matchAll(/[ML]([\d.]+) ([\d.]+)/g)].map((match) => [Number(match[1]), Number(match[2])] as const);
+  const points = [...mark.path.matchAll(/[ML]([\d.]+) ([\d.]+)/g)].map(
+    (match) => [Number(match[1]), Number(match[2])] as const,
+  );
   expect(points).toHaveLength(146);
   const nearest = Math.min(...points.map(([x, y]) => Math.hypot(x - mark.disc[0], y - mark.disc[1])));
   expect(nearest).toBeLessThan(2);

@@ -1,14 +1,46 @@
 import fc from 'fast-check';
 import ICAL from 'ical.js';
 import { describe, expect, it } from 'vitest';
-import { feedText, fold, invitationText, type CalendarItem } from '../../../server/features/messages/calendar-text';
+import {
+  feedText,
+  fold,
+  invitationText,
+  type CalendarItem,
+} from '../../../server/features/messages/calendar-text';
 
 const organizer = { name: 'Tarnholt "Institute"; of, Maths', email: 'office@tarnholt.example.org' };
 const octets = (line: string): number => Buffer.byteLength(line, 'utf8');
 
 /** Pieces that break calendar text: quotes, semicolons, commas, backslashes, line breaks, long UTF-8, look-alikes of syntax. */
 const hostile = fc
-  .array(fc.constantFrom('"', ';', ',', '\\', '\n', '\r\n', ':', '^', "^'", '\\n', 'é', 'Đ', 'Ngô Thị Hằng', '𝔽₂', '👩🏽‍🔬', '漢字漢字漢字', 'BEGIN:VEVENT', 'a', ' ', '\t', 'x'.repeat(90), '\u0000', '\u2028'), { minLength: 1, maxLength: 25 })
+  .array(
+    fc.constantFrom(
+      '"',
+      ';',
+      ',',
+      '\\',
+      '\n',
+      '\r\n',
+      ':',
+      '^',
+      "^'",
+      '\\n',
+      'é',
+      'Đ',
+      'Ngô Thị Hằng',
+      '𝔽₂',
+      '👩🏽‍🔬',
+      '漢字漢字漢字',
+      'BEGIN:VEVENT',
+      'a',
+      ' ',
+      '\t',
+      'x'.repeat(90),
+      '\u0000',
+      '\u2028',
+    ),
+    { minLength: 1, maxLength: 25 },
+  )
   .map((parts) => parts.join(''));
 const item = fc.record({
   uid: fc.uuid(),
@@ -20,7 +52,16 @@ const item = fc.record({
   location: hostile,
   name: hostile,
 });
-const build = (raw: { uid: string; sequence: number; start: number; minutes: number; summary: string; description: string; location: string; name: string }): CalendarItem => ({
+const build = (raw: {
+  uid: string;
+  sequence: number;
+  start: number;
+  minutes: number;
+  summary: string;
+  description: string;
+  location: string;
+  name: string;
+}): CalendarItem => ({
   uid: raw.uid,
   sequence: raw.sequence,
   startsAt: new Date(raw.start * 60_000).toISOString(),
@@ -34,10 +75,16 @@ const build = (raw: { uid: string; sequence: number; start: number; minutes: num
   attendee: { name: raw.name, email: 'person@example.org' },
 });
 const control = /[\u0000-\u0008\u000B\u000C\u000E-\u001F\u007F]/g;
-const asLine = (text: string): string => text.replace(/\r\n?/g, '\n').replace(control, '').replace(/[\n\t]+/g, ' ').trim();
+const asLine = (text: string): string =>
+  text
+    .replace(/\r\n?/g, '\n')
+    .replace(control, '')
+    .replace(/[\n\t]+/g, ' ')
+    .trim();
 const asText = (text: string): string => text.replace(/\r\n?/g, '\n').replace(control, '');
 /** ical.js does not know NAME of RFC 7986 and leaves its TEXT escaped: undone here by RFC 5545 section 3.3.11. */
-const unescapeText = (text: string): string => text.replace(/\\([\\;,nN])/g, (_m, c: string) => (c.toLowerCase() === 'n' ? '\n' : c));
+const unescapeText = (text: string): string =>
+  text.replace(/\\([\\;,nN])/g, (_m, c: string) => (c.toLowerCase() === 'n' ? '\n' : c));
 
 function read(text: string): ICAL.Component {
   const calendar = new ICAL.Component(ICAL.parse(text) as never);
@@ -65,7 +112,17 @@ describe('invitations as text', () => {
         expect(events).toHaveLength(1);
         const event = events[0] as ICAL.Component;
         // RFC 5546 section 3.2.2 (REQUEST) and 3.2.5 (CANCEL): exactly one of each.
-        for (const name of ['uid', 'dtstamp', 'dtstart', 'organizer', 'sequence', 'summary', 'dtend', 'status']) expect(event.getAllProperties(name), name).toHaveLength(1);
+        for (const name of [
+          'uid',
+          'dtstamp',
+          'dtstart',
+          'organizer',
+          'sequence',
+          'summary',
+          'dtend',
+          'status',
+        ])
+          expect(event.getAllProperties(name), name).toHaveLength(1);
         expect(event.getAllProperties('attendee')).toHaveLength(1);
         expect(event.getAllProperties('request-status')).toHaveLength(0);
         expect(event.getFirstPropertyValue('status')).toBe(method === 'CANCEL' ? 'CANCELLED' : 'CONFIRMED');
@@ -74,8 +131,12 @@ describe('invitations as text', () => {
         expect(event.getFirstPropertyValue('summary')).toBe(asLine(raw.summary) || 'Talk');
         expect(event.getFirstPropertyValue('location') ?? '').toBe(asLine(raw.location));
         expect(event.getFirstPropertyValue('description') ?? '').toBe(asText(raw.description));
-        expect((event.getFirstPropertyValue('dtstart') as ICAL.Time).toJSDate().getTime()).toBe(raw.start * 60_000);
-        expect((event.getFirstPropertyValue('dtend') as ICAL.Time).toJSDate().getTime()).toBe((raw.start + raw.minutes) * 60_000);
+        expect((event.getFirstPropertyValue('dtstart') as ICAL.Time).toJSDate().getTime()).toBe(
+          raw.start * 60_000,
+        );
+        expect((event.getFirstPropertyValue('dtend') as ICAL.Time).toJSDate().getTime()).toBe(
+          (raw.start + raw.minutes) * 60_000,
+        );
         const attendee = event.getFirstProperty('attendee');
         expect(String(attendee?.getFirstValue()).toLowerCase()).toBe('mailto:person@example.org');
         const name = asLine(raw.name).replace(/\\/g, '/');
@@ -90,9 +151,21 @@ describe('invitations as text', () => {
 
   // Golden lengths worked out by hand from RFC 5545 section 3.1 (75 octets, no character cut).
   it('folds by octets', () => {
-    expect(fold(`SUMMARY:${'é'.repeat(40)}`).split('\r\n').map(octets)).toEqual([74, 15]);
-    expect(fold(`DESCRIPTION:${'x'.repeat(63)}`).split('\r\n').map(octets)).toEqual([75]);
-    expect(fold(`DESCRIPTION:${'x'.repeat(64)}`).split('\r\n').map(octets)).toEqual([75, 2]);
+    expect(
+      fold(`SUMMARY:${'é'.repeat(40)}`)
+        .split('\r\n')
+        .map(octets),
+    ).toEqual([74, 15]);
+    expect(
+      fold(`DESCRIPTION:${'x'.repeat(63)}`)
+        .split('\r\n')
+        .map(octets),
+    ).toEqual([75]);
+    expect(
+      fold(`DESCRIPTION:${'x'.repeat(64)}`)
+        .split('\r\n')
+        .map(octets),
+    ).toEqual([75, 2]);
   });
 
   it('writes an empty feed and a feed with a hostile name that ical.js reads', () => {

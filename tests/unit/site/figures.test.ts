@@ -1,9 +1,21 @@
 import { describe, expect, it } from 'vitest';
-import { chordPath, decagon, figureOf, penrosePaths, subdivide, torusKnot, torusKnotPath, visiblePoints, type HalfRhomb } from '../../../shared/features/site/figures.rules';
+import {
+  chordPath,
+  decagon,
+  figureOf,
+  penrosePaths,
+  subdivide,
+  torusKnot,
+  torusKnotPath,
+  visiblePoints,
+  type HalfRhomb,
+} from '../../../shared/features/site/figures.rules';
 
 const GOLDEN = (1 + Math.sqrt(5)) / 2;
-const length = (p: { x: number; y: number }, q: { x: number; y: number }): number => Math.hypot(p.x - q.x, p.y - q.y);
-const area = ({ a, b, c }: HalfRhomb): number => Math.abs((b.x - a.x) * (c.y - a.y) - (c.x - a.x) * (b.y - a.y)) / 2;
+const length = (p: { x: number; y: number }, q: { x: number; y: number }): number =>
+  Math.hypot(p.x - q.x, p.y - q.y);
+const area = ({ a, b, c }: HalfRhomb): number =>
+  Math.abs((b.x - a.x) * (c.y - a.y) - (c.x - a.x) * (b.y - a.y)) / 2;
 const sum = (halves: HalfRhomb[]): number => halves.reduce((total, half) => total + area(half), 0);
 
 describe('Penrose rhombs', () => {
@@ -44,7 +56,9 @@ describe('Penrose rhombs', () => {
     expect(edges.length).toBeGreaterThan(50);
     expect(new Set(edges).size).toBe(edges.length);
     const turned = edges.map((edge) => edge.split('L').reverse().join('L'));
-    expect(edges.filter((edge) => turned.includes(edge) && edge.split('L')[0] !== edge.split('L')[1])).toEqual([]);
+    expect(
+      edges.filter((edge) => turned.includes(edge) && edge.split('L')[0] !== edge.split('L')[1]),
+    ).toEqual([]);
   });
 });
 
@@ -72,7 +86,9 @@ describe('other figures', () => {
 
   it('joins each of the points to its multiple', () => {
     expect(chordPath(180, 2, 200).match(/M/g)).toHaveLength(180);
-    expect(chordPath(4, 2, 10)).toBe('M0.0 -10.0L0.0 -10.0M10.0 0.0L0.0 10.0M0.0 10.0L0.0 -10.0M-10.0 0.0L0.0 10.0');
+    expect(chordPath(4, 2, 10)).toBe(
+      'M0.0 -10.0L0.0 -10.0M10.0 0.0L0.0 10.0M0.0 10.0L0.0 -10.0M-10.0 0.0L0.0 10.0',
+    );
   });
 
   it('finds a figure for every title', () => {
