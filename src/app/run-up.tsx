@@ -1,6 +1,6 @@
 import { useLocation } from 'react-router-dom';
 import type { DeadlineKind, EventDetail } from '@shared/features/events/events.contract';
-import { deadlineNames } from '@shared/features/events/events.rules';
+import { deadlineNames, eventKindNames } from '@shared/features/events/events.rules';
 import { count } from '@shared/lib/text';
 import {
   addDays,
@@ -37,21 +37,40 @@ export function RunUp({ event }: { event: EventDetail }) {
     own: section === SECTION[deadline.kind],
   }));
   return (
-    <RunUpLine
-      from={addDays(dates[0] as string, -7)}
-      to={addDays(dates[dates.length - 1] as string, 7)}
-      today={now.date}
-      tall={section === ''}
-      marks={marks}
-      event={{
-        startsOn: event.startsOn,
-        endsOn: event.endsOn,
-        label: `${event.shortTitle.slice(0, 24)}, ${formatDateSpan(event.startsOn, event.endsOn, false)}`,
-        href: `/organise/${event.slug}`,
-      }}
-      sentence={sentence(event, now, section)}
-    />
+    <>
+      <p className="no-print border-b border-rule bg-paper px-4 py-1.5 text-dense md:hidden">
+        {nextDate(event, now.date)}
+      </p>
+      <RunUpLine
+        from={addDays(dates[0] as string, -7)}
+        to={addDays(dates[dates.length - 1] as string, 7)}
+        today={now.date}
+        tall={section === ''}
+        marks={marks}
+        event={{
+          startsOn: event.startsOn,
+          endsOn: event.endsOn,
+          label: `${eventKindNames[event.kind]}, ${formatDateSpan(event.startsOn, event.endsOn, false)}`,
+          href: `/organise/${event.slug}`,
+        }}
+        sentence={sentence(event, now, section)}
+      />
+    </>
   );
+}
+
+/** The phone has no line: what is due next, and when. */
+function nextDate(event: EventDetail, today: string): string {
+  const starts = { date: event.startsOn, label: eventKindNames[event.kind] };
+  const next = [
+    ...event.deadlines.map((deadline) => ({ date: deadline.date, label: deadlineNames[deadline.kind] })),
+    starts,
+  ]
+    .filter((item) => item.date >= today)
+    .sort((a, b) => a.date.localeCompare(b.date))[0];
+  if (!next) return 'Nothing more is due.';
+  const away = daysBetween(today, next.date);
+  return `${formatDate(next.date, { short: true })}: ${next.label}, ${away === 0 ? 'today' : `in ${count(away, 'day')}`}.`;
 }
 
 function sentence(event: EventDetail, now: { date: string; time: string }, section: string): string {

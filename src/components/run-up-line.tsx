@@ -46,7 +46,7 @@ export function RunUpLine({ from, to, today, event, marks, sentence, tall = fals
   ];
   const past = today > from ? curve(between(from, today < to ? today : to)) : '';
   const future = today < to ? curve(between(today > from ? today : from, to)) : '';
-  const labels = placeLabels({ marks, event, x, tall, sentence });
+  const labels = placeLabels({ marks, event, today, x, tall, sentence });
   return (
     <nav
       aria-label="Run-up: what is due until the event"
@@ -57,7 +57,7 @@ export function RunUpLine({ from, to, today, event, marks, sentence, tall = fals
         width="100%"
         height={height}
         preserveAspectRatio="none"
-        role="list"
+        aria-hidden="true"
         className="block overflow-visible"
       >
         <line
@@ -147,7 +147,7 @@ interface MarksProps {
 
 function Marks({ marks, today, x, y, height, base, tall }: MarksProps) {
   return (
-    <>
+    <div role="list">
       {marks.map((mark) => {
         const ink = mark.own || tall ? 'bg-ink border-ink' : 'bg-field border-field';
         const away = daysBetween(today, mark.date);
@@ -158,25 +158,34 @@ function Marks({ marks, today, x, y, height, base, tall }: MarksProps) {
               ? `in ${away} ${away === 1 ? 'day' : 'days'}`
               : `${-away} ${away === -1 ? 'day' : 'days'} ago`;
         return (
-          <Link
-            key={`${mark.date}${mark.label}`}
-            to={mark.href}
-            title={`${formatDate(mark.date, { weekday: false })}: ${mark.label}`}
-            aria-label={`${formatDate(mark.date, { weekday: false })}: ${mark.label}, ${when}`}
-            className="absolute size-6"
-            style={{ left: `calc(${(x(mark.date) / WIDTH) * 100}% - 12px)`, top: y(mark.date) - height - 12 }}
-          >
-            <span
-              className={`absolute top-[9px] left-[9px] size-[6px] rounded-full border ${ink} ${mark.date < today ? '' : 'bg-paper!'}`}
-            />
-            <span
-              className={`absolute top-[15px] left-[11.5px] w-px ${ink.split(' ')[0]}`}
-              style={{ height: Math.max(2, base - y(mark.date) - 3) }}
-            />
-          </Link>
+          <span role="listitem" key={`${mark.date}${mark.label}`}>
+            <Link
+              to={mark.href}
+              aria-label={`${formatDate(mark.date, { weekday: false })}: ${mark.label}, ${when}`}
+              className="group quiet absolute size-6 hover:z-20 focus-visible:z-20"
+              style={{
+                left: `calc(${(x(mark.date) / WIDTH) * 100}% - 12px)`,
+                top: y(mark.date) - height - 12,
+              }}
+            >
+              <span
+                className={`absolute top-[9px] left-[9px] size-[6px] rounded-full border ${ink} ${mark.date < today ? '' : 'bg-paper!'}`}
+              />
+              <span
+                className={`absolute top-[15px] left-[11.5px] w-px ${ink.split(' ')[0]}`}
+                style={{ height: Math.max(2, base - y(mark.date) - 3) }}
+              />
+              <span
+                aria-hidden="true"
+                className={`absolute top-6 hidden border border-ink bg-sheet px-1.5 text-tile whitespace-nowrap text-ink group-hover:block group-focus-visible:block ${x(mark.date) > WIDTH / 2 ? 'right-0' : 'left-0'}`}
+              >
+                {formatDate(mark.date, { weekday: false, short: true })} {mark.label}, {when}
+              </span>
+            </Link>
+          </span>
         );
       })}
-    </>
+    </div>
   );
 }
 
@@ -190,18 +199,18 @@ interface PlacedLabel {
   anchor: string;
 }
 
-/** Labels that would collide: own beats other, earlier beats later; the loser shows on focus (its title). */
+/** Labels that would collide: own beats other, earlier beats later; the loser shows on hover and on focus. */
 function placeLabels({
   marks,
   event,
+  today,
   x,
   tall,
   sentence,
-}: Pick<Props, 'marks' | 'event' | 'sentence'> & {
+}: Pick<Props, 'marks' | 'event' | 'today' | 'sentence'> & {
   x: (date: string) => number;
   tall: boolean;
 }): PlacedLabel[] {
-  const today = new Date().toISOString().slice(0, 10);
   const wanted = [
     ...marks.filter((mark) => tall || mark.own).map((mark) => ({ ...mark, priority: mark.own ? 0 : 2 })),
     { date: event.startsOn, label: event.label, href: event.href, own: true, priority: 1 },

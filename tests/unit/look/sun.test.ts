@@ -9,8 +9,8 @@ describe('the sun in 2026', () => {
     ['2026-04-28', 2.5, 14.2],
   ])('%s', (day, minutes, degrees) => {
     const s = sun(new Date(`${day}T12:00:00Z`));
-    expect(s.equationOfTime).toBeCloseTo(minutes, 0);
-    if (degrees !== undefined) expect(s.declination).toBeCloseTo(degrees, 0);
+    expect(s.equationOfTime).toBeCloseTo(minutes, 1);
+    if (degrees !== undefined) expect(s.declination).toBeCloseTo(degrees, 1);
   });
   it('stands at 23.4 degrees at the solstices', () => {
     expect(sun(new Date('2026-06-21T12:00:00Z')).declination).toBeCloseTo(23.44, 1);
