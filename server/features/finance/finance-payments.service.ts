@@ -3,6 +3,7 @@ import { sessionOutcome } from '@shared/features/finance/finance.rules';
 import { conflict } from '@shared/http/problem';
 import { newId } from '@server/db/id';
 import { transaction } from '@server/db/transaction';
+import { log } from '@server/http/request-log';
 import { announce } from '@server/jobs/job';
 import { recordAudit } from '@server/features/accounts/accounts.service';
 import {
@@ -17,6 +18,7 @@ import { OrderRow, PaymentRow, ProviderEventRow } from './finance.model';
 import { bookCardPayment } from './finance.service';
 
 const HALF_HOUR = 30 * 60_000;
+const TEN_MINUTES = 10 * 60_000;
 
 /**
  * Opens a payment page for an order and returns its address. Amount and currency come from the order, never from the
@@ -39,14 +41,11 @@ export async function startCheckout(
     if (sessionOutcome(session) === 'open' && session.url) return { url: session.url };
     await settle(session, now);
   }
-  const expiresAt = new Date(
-    Math.max(
-      now.getTime() + HALF_HOUR + 60_000,
-      order.reservedUntil?.getTime() ?? 0,
-      now.getTime() + HALF_HOUR + 60_000,
-    ),
-  );
-  const dayAhead = new Date(Math.min(expiresAt.getTime(), now.getTime() + 23 * 3_600_000));
+  const reserved = order.reservedUntil?.getTime() ?? 0;
+  const least = now.getTime() + HALF_HOUR + TEN_MINUTES + 60_000;
+  const wanted = Math.min(Math.max(least, reserved), now.getTime() + 23 * 3_600_000);
+  // Whole ten minutes: two clicks send the same request, and a try after a crash is not refused as another one.
+  const expiresAt = new Date(Math.floor(wanted / TEN_MINUTES) * TEN_MINUTES);
   const tries = await PaymentRow.count({ where: { orderId } });
   const { amountMinor, currency } = { amountMinor: order.totalMinor, currency: order.currency };
   const session = await createCheckout({
@@ -55,8 +54,8 @@ export async function startCheckout(
     ...input,
     amountMinor,
     currency,
-    expiresAt: dayAhead,
-    idempotencyKey: `checkout-${orderId}-${tries}`,
+    expiresAt,
+    idempotencyKey: `checkout-${orderId}-${tries}-${expiresAt.getTime()}`,
   });
   await transaction(async () => {
     if (!(await PaymentRow.findOne({ where: { provider: 'stripe', providerId: session.id } }))) {
@@ -70,7 +69,8 @@ export async function startCheckout(
         state: 'pending',
       });
     }
-    await OrderRow.update({ reservedUntil: dayAhead }, { where: { id: orderId, state: 'placed' } });
+    if (expiresAt.getTime() > reserved)
+      await OrderRow.update({ reservedUntil: expiresAt }, { where: { id: orderId, state: 'placed' } });
   });
   return { url: session.url as string };
 }
@@ -151,20 +151,28 @@ const settle = (session: CheckoutSession, now: Date): Promise<void> =>
     if (payment) await applySession(payment.id, session, null, now);
   });
 
-/** Asks the provider about every payment that is open with us: heals what a lost notice left behind. Returns how many were asked. */
+/**
+ * Asks the provider about every payment that is open with us: heals what a lost notice left behind. One that can't be
+ * read does not keep the others waiting. Returns how many were asked.
+ */
 export async function reconcile(now: Date): Promise<number> {
   const open = await PaymentRow.findAll({
     where: { state: 'pending', createdAt: { [Op.lt]: new Date(now.getTime() - 20_000) } },
-    limit: 100,
+    order: ['id'],
   });
-  for (const payment of open) {
-    const session = await readCheckout(payment.providerId);
-    await settle(session, now);
-    const order = (await OrderRow.findByPk(payment.orderId)) as OrderRow;
-    if (sessionOutcome(session) === 'open' && order.state !== 'placed')
-      await expireCheckout(payment.providerId);
-  }
+  for (const payment of open)
+    await reconcileOne(payment, now).catch((error: unknown) =>
+      log.error({ err: error, payment: payment.id }, 'reconcile'),
+    );
   return open.length;
+}
+
+async function reconcileOne(payment: PaymentRow, now: Date): Promise<void> {
+  const session = await readCheckout(payment.providerId);
+  await settle(session, now);
+  const order = (await OrderRow.findByPk(payment.orderId)) as OrderRow;
+  if (sessionOutcome(session) === 'open' && order.state !== 'placed')
+    await expireCheckout(payment.providerId);
 }
 
 /** Asks the provider about one order now, when its owner comes back from the payment page. */

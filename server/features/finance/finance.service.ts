@@ -2,19 +2,21 @@ import { Op } from 'sequelize';
 import type { FeeTable, Order, Price } from '@shared/features/finance/finance.contract';
 import {
   cardPaymentEntry,
+  categoriesFor,
   feeTableErrors,
   orderEntry,
   price,
   reversed,
   type PriceInput,
 } from '@shared/features/finance/finance.rules';
+import { formatMoney, stripeAmount } from '@shared/lib/money';
 import { instantToLocal } from '@shared/lib/time';
 import { conflict, forbidden, invalid } from '@shared/http/problem';
 import { newId } from '@server/db/id';
 import { transaction } from '@server/db/transaction';
 import { holds, type Actor } from '@server/http/authorize';
 import { announce } from '@server/jobs/job';
-import { recordAudit } from '@server/features/accounts/accounts.service';
+import { accountById, recordAudit } from '@server/features/accounts/accounts.service';
 import { eventById, requireEvent } from '@server/features/events/events.service';
 import { postJournalEntry } from './finance-ledger.service';
 import { orderExpired, orderPaid } from './finance.jobs';
@@ -130,6 +132,8 @@ export async function priceOf(eventId: string, input: PriceInput, now: Date): Pr
   for (const [index, wish] of input.extras.entries()) {
     const extra = table.extras.find((candidate) => candidate.id === wish.extraId);
     if (!extra) throw invalid({ [`extras.${index}.extraId`]: 'This is not offered.' });
+    if (input.extras.findIndex((other) => other.extraId === wish.extraId) < index)
+      throw invalid({ [`extras.${index}.extraId`]: 'This is named twice.' });
     if (wish.quantity > 0 && extra.until && extra.until < today)
       throw conflict('finance.extra_closed', `${extra.name} could be taken until ${extra.until}.`);
     if (extra.left !== null && wish.quantity > extra.left)
@@ -152,7 +156,11 @@ export async function placeOrder(input: {
 }): Promise<OrderRow> {
   return transaction(async () => {
     const { registrationId, eventId, accountId, reservedUntil, now } = input;
+    const stage = (await accountById(accountId))?.careerStage ?? null;
+    if (!categoriesFor(await feeTableOf(eventId), stage).some(({ id }) => id === input.wish.categoryId))
+      throw invalid({ categoryId: 'This fee is for another career stage. Your profile says yours.' });
     const priced = await priceOf(eventId, input.wish, now);
+    refuseUnchargeable(priced);
     const order = await OrderRow.create({
       id: newId(),
       number: await nextNumber(now),
@@ -185,6 +193,18 @@ export async function placeOrder(input: {
     if (priced.totalMinor === 0) await markPaid(order, now);
     return order;
   });
+}
+
+/** An order that no card can pay is not placed (three-decimal currencies end in 0). @throws 409. */
+function refuseUnchargeable({ totalMinor, currency }: Price): void {
+  try {
+    stripeAmount(totalMinor, currency);
+  } catch {
+    throw conflict(
+      'finance.not_chargeable',
+      `${formatMoney(totalMinor, currency)} can’t be paid by card. Write to the event’s office.`,
+    );
+  }
 }
 
 async function nextNumber(now: Date): Promise<string> {

@@ -43,8 +43,11 @@ export async function applyForPlace(
   const row = await transaction(async () => {
     if (await registrationOf(event.id, actor.accountId))
       throw conflict('registration.exists', 'You are registered already.');
-    if (await applicationOf(event.id, actor.accountId))
-      throw conflict('registration.applied', 'You have applied already.');
+    const before = await applicationOf(event.id, actor.accountId);
+    // Who let an offer lapse may stand at the end of the waiting list again.
+    if (before && event.admission === 'open' && before.state === 'declined')
+      await before.update({ state: 'withdrawn' });
+    else if (before) throw conflict('registration.applied', 'You have applied already.');
     if (event.admission === 'open' && (await placesOf(event.id, now)).free > 0)
       throw conflict('registration.free', 'There are places: register directly.');
     const state: ApplicationState = event.admission === 'open' ? 'waiting' : 'received';

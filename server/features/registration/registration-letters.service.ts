@@ -25,6 +25,7 @@ import {
   receiptLetter,
 } from './registration.mail';
 import { ApplicationRow, RegistrationRow } from './registration.model';
+import { useUpOffer } from './registration.service';
 
 async function partsOf(registrationId: string) {
   const row = (await RegistrationRow.findByPk(registrationId)) as RegistrationRow;
@@ -111,6 +112,7 @@ export const registrationReactions: readonly Reaction[] = [
       const row = (await RegistrationRow.findByPk(registrationId)) as RegistrationRow;
       if (row.state === 'reserved') {
         await row.update({ state: 'cancelled' });
+        await useUpOffer(row);
         await recordAudit({
           actor: systemActor,
           action: 'registration.lapsed',

@@ -271,6 +271,12 @@ export async function changeRegistration(
   return presentRegistration(row);
 }
 
+/** The offer that led to a registration ends with it; else it would go on keeping a place. In the ambient transaction. */
+export async function useUpOffer(row: RegistrationRow): Promise<void> {
+  const { eventId, accountId } = row;
+  await ApplicationRow.update({ state: 'withdrawn' }, { where: { eventId, accountId, state: 'offered' } });
+}
+
 /** Gives the place back. An unpaid order is closed; money that was paid is refunded by the finance office. */
 export async function cancelRegistration(
   actor: Actor,
@@ -285,6 +291,7 @@ export async function cancelRegistration(
     if (!['reserved', 'registered'].includes(row.state))
       throw conflict('registration.step', `The registration is ${row.state}.`);
     await row.update({ state: 'cancelled' });
+    await useUpOffer(row);
     const order = await orderOf(row.id);
     if (order?.state === 'placed') await closeUnpaidOrder(order, 'cancelled', now);
     if (order?.state === 'paid' && order.totalMinor > 0)

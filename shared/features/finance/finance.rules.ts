@@ -1,6 +1,6 @@
 import type { FeeCategory, FeeTable, Price, PriceLine } from './finance.contract';
 import { divideRounded, formatMoney } from '../../lib/money';
-import { formatInstant, localToInstant } from '../../lib/time';
+import { addDays, formatInstant, localToInstant } from '../../lib/time';
 
 export interface PriceInput {
   categoryId: string;
@@ -8,11 +8,14 @@ export interface PriceInput {
   extras: readonly { extraId: string; quantity: number }[];
 }
 
-/** The last minute of the early fee, as an instant: the end of that day in the event's zone. */
+/**
+ * The last moment of the early fee: a millisecond before the next day begins in the event's zone, so that a day whose
+ * last hour comes twice counts to its real end.
+ */
 export const earlyUntil = (category: { earlyUntil: string | null }, zone: string): string | null =>
   category.earlyUntil === null
     ? null
-    : localToInstant(category.earlyUntil, '23:59', zone).replace('00.000Z', '59.999Z');
+    : new Date(Date.parse(localToInstant(addDays(category.earlyUntil, 1), '00:00', zone)) - 1).toISOString();
 
 /** The early fee holds until the end of its last day in the event's zone. */
 export function isEarly(category: { earlyUntil: string | null }, zone: string, now: Date): boolean {
