@@ -38,9 +38,12 @@ export function RunUp({ event }: { event: EventDetail }) {
   }));
   return (
     <>
-      <p className="no-print border-b border-rule bg-paper px-4 py-1.5 text-dense md:hidden">
+      <section
+        aria-label="Next date"
+        className="no-print border-b border-rule bg-paper px-4 py-1.5 text-dense md:hidden"
+      >
         {nextDate(event, now.date)}
-      </p>
+      </section>
       <RunUpLine
         from={addDays(dates[0] as string, -7)}
         to={addDays(dates[dates.length - 1] as string, 7)}
